@@ -1,0 +1,65 @@
+"""Cautions: what every report says, and what this list gives cause to say."""
+
+from __future__ import annotations
+
+import numpy as np
+
+from checker.evaluation.values import Values
+from checker.model import Phase
+from checker.review_model import CautionItem
+
+__all__ = ["USUAL_CAUTION", "cautions_of"]
+
+USUAL_CAUTION = (
+    "A screening check of a line list. It does not replace the codes in force, hazard studies, detailed calculation or "
+    "the judgement of a licensed engineer. Local codes prevail."
+)
+LARGEST_TESTED_BORE = 0.0384
+COMMON_PRACTICE = "common practice"
+
+
+def _counted(where: np.ndarray, values: Values) -> str:
+    lines = np.unique(values.line_list.line[where])
+    first = ", ".join(values.line_list.line_number[int(line)] for line in lines[:5])
+    more = f" and {lines.size - 5} more" if lines.size > 5 else ""
+    return f"{lines.size} line{'' if lines.size == 1 else 's'}: {first}{more}"
+
+
+def _jurisdiction(name: str) -> CautionItem:
+    text = (
+        f"{name}: which local codes bind these lines, and in what category, is for the authority and licensed practice "
+        "to say. Nothing here rules on it: confirm before use."
+    )
+    return CautionItem(name, text, "project criteria, jurisdictions")
+
+
+def cautions_of(values: Values) -> tuple[CautionItem, ...]:
+    """Return the usual caution, one for each jurisdiction of the criteria, and those of method and data."""
+    items = [CautionItem("whole list", USUAL_CAUTION, COMMON_PRACTICE)]
+    items += [_jurisdiction(name) for name in values.criteria.jurisdictions]
+    two_phase = values["phase"] == Phase.TWO_PHASE
+    large = two_phase & (values["inside_diameter"] > LARGEST_TESTED_BORE)
+    notes = (
+        (
+            large & (values.criteria.two_phase_method == "beggs-brill"),
+            "Beggs and Brill rests on tests in 25 mm and 38 mm pipe: treat its pressure drop in larger bores with care.",
+            "Beggs and Brill, Journal of Petroleum Technology, May 1973",
+        ),
+        (
+            values["transitional"],
+            "Reynolds number between 2 000 and 4 000: the friction factor is the larger of the laminar and turbulent ones.",
+            "Crane TP-410, critical zone",
+        ),
+        (
+            values["choked"],
+            "The flow is sonic at the outlet plane: its pressure floats above that of the receiver, or the flow cannot pass.",
+            "isothermal flow of a gas",
+        ),
+        (
+            values.line_list.composite,
+            "Composite cases: the case's own flow stands beside pressure, temperature or properties that name no case.",
+            COMMON_PRACTICE,
+        ),
+    )
+    items += [CautionItem(_counted(where, values), text, source) for where, text, source in notes if where.any()]
+    return tuple(items)

@@ -1,0 +1,170 @@
+"""Providers: outside diameter, wall, bore and roughness of each line, from the list, the class or the tables."""
+
+from __future__ import annotations
+
+from typing import Any
+
+import numpy as np
+from numpy.typing import NDArray
+
+from checker.criteria.classes import Classes, ClassValues, no_classes
+from checker.criteria.criteria import Criteria
+from checker.evaluation.provider import provider
+from checker.model import Coded, Gap
+from checker.pipe.roughness import roughness_by_material
+from checker.pipe.sizes import look_up
+
+__all__ = ["PROVIDERS", "SCHEDULE_CLASS", "SCHEDULE_LISTED", "SCHEDULE_NONE", "SCHEDULE_NOT_KNOWN"]
+
+FloatArray = NDArray[np.float64]
+BoolArray = NDArray[np.bool_]
+CodeArray = NDArray[np.int8]
+Named = dict[str, Any]
+
+SCHEDULE_LISTED, SCHEDULE_CLASS, SCHEDULE_NONE, SCHEDULE_NOT_KNOWN = 0, 1, 2, -1
+STANDARD_WALL = "STD"
+STAINLESS_WALL = "40S"
+STAINLESS_WORDS = ("stainless", "ss", "a312", "304", "316", "duplex")
+
+
+def _open(gap: CodeArray) -> BoolArray:
+    """Return True where a cell is on HOLD or could not be read: then no other value may stand in."""
+    return (gap == Gap.HOLD) | (gap == Gap.REFUSED)
+
+
+def _asked(gap: CodeArray) -> BoolArray:
+    """Return True where the list has the column: a value from elsewhere is then an assumption."""
+    return gap != Gap.NO_COLUMN
+
+
+def class_values(*, classes: Classes | None, piping_class_listed: Coded, size: FloatArray) -> ClassValues:
+    """Return what the class file says of each line case."""
+    used = no_classes() if classes is None else classes
+    return used.look_up(piping_class=piping_class_listed, size=size)
+
+
+def merged(first: Coded, second: Coded) -> Coded:
+    """Return the first text where there is one, else the second."""
+    texts = first.texts + second.texts
+    codes = np.where(first.codes >= 0, first.codes, np.where(second.codes >= 0, second.codes + len(first.texts), -1))
+    return Coded(codes.astype(np.int32), texts)
+
+
+def _blank_where(coded: Coded, where: BoolArray) -> Coded:
+    return Coded(np.where(where, -1, coded.codes).astype(np.int32), coded.texts)
+
+
+def material_used(
+    *, material_listed: Coded, material_gap: CodeArray, piping_class_gap: CodeArray, class_values: ClassValues
+) -> Named:
+    """Return the material: the list's, else the class's (assumed where the list leaves its own column blank)."""
+    from_class = _blank_where(class_values.material, _open(material_gap) | _open(piping_class_gap))
+    material = merged(material_listed, from_class)
+    assumed = (material_listed.codes < 0) & (material.codes >= 0) & _asked(material_gap)
+    return {"material_used": material, "material_used_assumed": assumed}
+
+
+def _is_stainless(coded: Coded) -> BoolArray:
+    def says(text: str) -> bool:
+        words = text.casefold().replace("-", " ").split()
+        return any(word.startswith(mark) for word in words for mark in STAINLESS_WORDS)
+
+    return coded.where([says(text) for text in coded.texts])
+
+
+def schedule_used(
+    *,
+    schedule_listed: Coded,
+    schedule_gap: CodeArray,
+    piping_class_gap: CodeArray,
+    wall_thickness_gap: CodeArray,
+    class_values: ClassValues,
+    material_used: Coded,
+) -> Named:
+    """Return the schedule to look up: the list's, else the class's, else STD (40S for stainless) as an assumption.
+
+    The class serves as of right where the list has no schedule column; where it has one and leaves the cell blank the
+    class's schedule is an assumption. A HOLD or unreadable schedule, class or wall lets nothing stand in.
+    """
+    barred = _open(schedule_gap) | _open(piping_class_gap)
+    from_class = _blank_where(class_values.schedule, barred)
+    listed_or_class = merged(schedule_listed, from_class)
+    wall_by_class = np.isfinite(class_values.wall_thickness) & (schedule_listed.codes < 0) & ~barred
+    nothing = (listed_or_class.codes < 0) & ~barred & ~wall_by_class & (wall_thickness_gap != Gap.GIVEN)
+    default = Coded(np.where(_is_stainless(material_used), 1, 0).astype(np.int32), (STANDARD_WALL, STAINLESS_WALL))
+    schedule = merged(listed_or_class, _blank_where(default, ~nothing))
+    by_class = (schedule_listed.codes < 0) & ((from_class.codes >= 0) | wall_by_class)
+    listed = schedule_listed.codes >= 0
+    choices = [listed, from_class.codes >= 0, wall_by_class | (wall_thickness_gap == Gap.GIVEN)]
+    state = np.select(choices, [SCHEDULE_LISTED, SCHEDULE_CLASS, SCHEDULE_NONE], SCHEDULE_NOT_KNOWN)
+    return {
+        "schedule_used": schedule,
+        "schedule_used_assumed": nothing | (by_class & _asked(schedule_gap)),
+        "schedule_state": state.astype(np.int8),
+        "wall_by_class": np.where(wall_by_class, class_values.wall_thickness, np.nan),
+    }
+
+
+def pipe(
+    *,
+    size: FloatArray,
+    outside_diameter_listed: FloatArray,
+    outside_diameter_gap: CodeArray,
+    wall_thickness_listed: FloatArray,
+    wall_thickness_gap: CodeArray,
+    inside_diameter_listed: FloatArray,
+    inside_diameter_gap: CodeArray,
+    schedule_used: Coded,
+    schedule_used_assumed: BoolArray,
+    wall_by_class: FloatArray,
+) -> Named:
+    """Return outside diameter, wall and bore; an explicit bore or wall wins over the schedule."""
+    found = look_up(nps=size, schedule_code=schedule_used.codes, schedule_names=list(schedule_used.texts))
+    no_diameter = _open(outside_diameter_gap)
+    outside = np.where(np.isfinite(outside_diameter_listed), outside_diameter_listed, found.outside_diameter)
+    outside = np.where(no_diameter, np.nan, outside)
+    wall = np.where(np.isfinite(wall_by_class), wall_by_class, found.wall_thickness)
+    wall = np.where(np.isfinite(wall_thickness_listed), wall_thickness_listed, wall)
+    wall = np.where(_open(wall_thickness_gap), np.nan, wall)
+    bore = outside - 2.0 * wall
+    bore = np.where(bore > 0.0, bore, np.nan)
+    inside = np.where(np.isfinite(inside_diameter_listed), inside_diameter_listed, bore)
+    inside = np.where(_open(inside_diameter_gap), np.nan, inside)
+    by_schedule = np.isnan(inside_diameter_listed) & np.isnan(wall_thickness_listed) & np.isfinite(inside)
+    return {
+        "outside_diameter": outside,
+        "wall_thickness": wall,
+        "inside_diameter": inside,
+        "inside_diameter_assumed": by_schedule & schedule_used_assumed,
+        "schedule_exists": np.where(np.isfinite(size) & (schedule_used.codes >= 0), found.exists, -1).astype(np.int8),
+    }
+
+
+def roughness(
+    *,
+    criteria: Criteria,
+    roughness_listed: FloatArray,
+    roughness_gap: CodeArray,
+    class_values: ClassValues,
+    piping_class_gap: CodeArray,
+    material_used: Coded,
+    material_used_assumed: BoolArray,
+) -> Named:
+    """Return the roughness: the list's, else the class's, else the adopted value of the material."""
+    from_class = np.where(_open(piping_class_gap), np.nan, class_values.roughness)
+    adopted = roughness_by_material(material=material_used, adopted=criteria.roughness)
+    other = np.where(np.isfinite(from_class), from_class, adopted)
+    value = np.where(np.isfinite(roughness_listed), roughness_listed, np.where(_open(roughness_gap), np.nan, other))
+    from_elsewhere = np.isnan(roughness_listed) & np.isfinite(value)
+    by_material = from_elsewhere & np.isnan(from_class)
+    assumed = from_elsewhere & _asked(roughness_gap) | by_material & material_used_assumed
+    return {"roughness": value, "roughness_assumed": assumed}
+
+
+PROVIDERS = (
+    provider(class_values),
+    provider(material_used, "material_used", "material_used_assumed"),
+    provider(schedule_used, "schedule_used", "schedule_used_assumed", "schedule_state", "wall_by_class"),
+    provider(pipe, "outside_diameter", "wall_thickness", "inside_diameter", "inside_diameter_assumed", "schedule_exists"),
+    provider(roughness, "roughness", "roughness_assumed"),
+)

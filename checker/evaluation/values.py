@@ -1,0 +1,132 @@
+"""Every field of a list's line cases by name: listed, looked up, computed; each computed once."""
+
+from __future__ import annotations
+
+from functools import cache
+from typing import Any
+
+import numpy as np
+from numpy.typing import NDArray
+
+from checker.criteria.classes import Classes
+from checker.criteria.criteria import Criteria
+from checker.criteria.limits import LIMIT_DIMENSION, limit_values
+from checker.evaluation import derived, fluid_state, hydraulic_state, identity, pipe_state
+from checker.evaluation.provider import Provider
+from checker.fields import all_fields
+from checker.model import Coded, LineList
+
+__all__ = ["BASE_FIELDS", "Values", "known_fields", "provider_of"]
+
+BASE_FIELDS = ("criteria", "classes", "case", "case_kind", "line", "line_group", "composite", "stated_values_tolerance")
+
+
+@cache
+def _providers() -> dict[str, Provider]:
+    modules = (identity, pipe_state, fluid_state, hydraulic_state, derived)
+    return {output: found for module in modules for found in module.PROVIDERS for output in found.outputs}
+
+
+def provider_of(name: str) -> Provider | None:
+    """Return the provider that computes a field, None for a listed or base field."""
+    return _providers().get(name)
+
+
+@cache
+def known_fields() -> frozenset[str]:
+    """Return every name a rule may ask for."""
+    listed = {field.name for field in all_fields()}
+    suffixed = {f"{name}{suffix}" for name in listed for suffix in ("_listed", "_gap")}
+    states = {f"{key}_state" for key in LIMIT_DIMENSION}
+    return frozenset(listed | suffixed | set(_providers()) | set(LIMIT_DIMENSION) | states | set(BASE_FIELDS))
+
+
+class Values:
+    """The fields of a line list under one criteria and class file.
+
+    Parameters
+    ----------
+    line_list, criteria, classes
+        The inputs; ``classes`` may be None.
+    overrides : mapping of str to array, optional
+        Fields given in place of what would be computed (another flow, another bore), over the same line cases.
+    """
+
+    def __init__(
+        self,
+        *,
+        line_list: LineList,
+        criteria: Criteria,
+        classes: Classes | None,
+        overrides: dict[str, NDArray[np.float64]] | None = None,
+    ) -> None:
+        self.line_list = line_list
+        self.criteria = criteria
+        self.classes = classes
+        self._held: dict[str, Any] = {
+            "criteria": criteria,
+            "classes": classes,
+            "case": line_list.case,
+            "case_kind": line_list.case_kind,
+            "line": line_list.line,
+            "composite": line_list.composite,
+            "stated_values_tolerance": np.full(line_list.line_cases, criteria.stated_values_tolerance),
+            **(overrides or {}),
+        }
+
+    def __getitem__(self, name: str) -> Any:
+        """Return a field over the line cases, computing it and what it needs on first use.
+
+        Raises
+        ------
+        KeyError
+            If no field has that name.
+        """
+        if name not in self._held:
+            self._held.update(self._compute(name))
+        return self._held[name]
+
+    def _compute(self, name: str) -> dict[str, Any]:
+        found = _providers().get(name)
+        if found is not None:
+            results = found.results({need: self[need] for need in found.needs})
+            return {key: _read_only(value) for key, value in results.items() if key not in self._held}
+        if name == "line_group":
+            return {name: _read_only(_groups(self.line_list))}
+        key = name.removesuffix("_state")
+        if key in LIMIT_DIMENSION:
+            return self._limit(key)
+        if name.endswith("_gap"):
+            return {name: _read_only(self.line_list.gap(name.removesuffix("_gap")))}
+        return {name: _read_only(self._listed(name.removesuffix("_listed")))}
+
+    def _limit(self, key: str) -> dict[str, Any]:
+        values, state = limit_values(
+            criteria=self.criteria,
+            key=key,
+            service=self["service_code"],
+            size=self["size"],
+            pressure=self["pressure"],
+        )
+        return {key: _read_only(values), f"{key}_state": _read_only(state)}
+
+    def _listed(self, name: str) -> Any:
+        field = next((field for field in all_fields() if field.name == name), None)
+        if field is None:
+            raise KeyError(name)
+        return self.line_list.text(name) if field.kind == "text" else self.line_list.number(name)
+
+
+def _groups(line_list: LineList) -> NDArray[np.int32]:
+    """Return one code per distinct line number: rows of one number are one line."""
+    codes: dict[str, int] = {}
+    by_line = np.array([codes.setdefault(text.casefold(), len(codes)) for text in line_list.line_number], dtype=np.int32)
+    return by_line[line_list.line] if by_line.size else np.zeros(0, dtype=np.int32)
+
+
+def _read_only(value: Any) -> Any:
+    if isinstance(value, Coded):
+        value.codes.flags.writeable = False
+    elif isinstance(value, np.ndarray):
+        value.flags.writeable = False
+    return value

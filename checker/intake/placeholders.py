@@ -1,0 +1,53 @@
+"""Words that stand where a value should be: open items, blanks, not applicable."""
+
+from __future__ import annotations
+
+import re
+from functools import lru_cache
+
+from checker.model import Gap
+
+__all__ = ["AMBIENT", "ATMOSPHERE", "FULL_VACUUM", "NO_FLOW", "holds", "placeholder", "word_of"]
+
+_HOLD_WORD = re.compile(r"\bHOLDS?\b(?!\s*-?\s*UP\b)|\b(?:TBC|TBA|TBD|TBF)\b", re.IGNORECASE)
+_HOLD_CELLS = frozenset(
+    {
+        "vta", "vts", "later", "byvendor", "vendor", "vendortoadvise", "byothers", "tobeconfirmed", "tobeadvised",
+        "tobedetermined", "tobedefined", "pending",
+    }
+)  # fmt: skip
+_NOT_APPLICABLE = frozenset({"na", "notapplicable", "nr", "notrequired", "none", "nil"})
+_ABSENT_WORDS = frozenset({"none", "nil"})
+ATMOSPHERE = frozenset({"atm", "atmos", "atmospheric", "atmosphere"})
+FULL_VACUUM = frozenset({"fv", "fullvac", "fullvacuum", "vacuum", "vac"})
+AMBIENT = frozenset({"amb", "ambient", "ambt"})
+NO_FLOW = frozenset({"nnf", "noflow", "normallynoflow", "nonormalflow"})
+_KEEPS_NONE = frozenset({"fittings", "insulation", "tracing", "test_medium", "remarks", "area", "drawing", "revision"})
+
+
+@lru_cache(maxsize=4096)
+def word_of(text: str) -> str:
+    """Return the letters of a cell that holds letters, blanks, dots and strokes only; else an empty text."""
+    if len(text) > 40 or not re.fullmatch(r"[A-Za-z./\s_-]*[A-Za-z][A-Za-z./\s_-]*", text):
+        return ""
+    return re.sub(r"[^a-z]", "", text.lower())
+
+
+def holds(text: str) -> bool:
+    """Return whether a cell carries an open item of the originator."""
+    return _HOLD_WORD.search(text) is not None or word_of(text) in _HOLD_CELLS
+
+
+def placeholder(text: str, field: str) -> Gap:
+    """Return the gap that a cell of a field stands for, `Gap.GIVEN` where it stands for none.
+
+    An error value of a spreadsheet (``#N/A``) is no placeholder: it is refused where a number is needed.
+    """
+    if not text or re.fullmatch(r"[-_\u2010-\u2015\u2212\s]+", text):
+        return Gap.BLANK
+    if field != "remarks" and holds(text):
+        return Gap.HOLD
+    word = word_of(text)
+    if word in _NOT_APPLICABLE and not (field in _KEEPS_NONE and word in _ABSENT_WORDS):
+        return Gap.NOT_APPLICABLE
+    return Gap.GIVEN

@@ -1,0 +1,58 @@
+"""Texts of a list: how they are compared, and how they are shown in a message."""
+
+from __future__ import annotations
+
+import re
+import unicodedata
+
+__all__ = ["fold_words", "key_of", "place", "shown", "tidy"]
+
+LONGEST_SHOWN = 60
+_SIGNS = str.maketrans(
+    {
+        "\u0394": "d", "\u2206": "d", "\u03c1": " rho ", "\u00b5": " mu ", "\u03bc": " mu ", "\u03b5": " eps ",
+        "\u03c3": " sigma ", "\u03b3": " gamma ", "\u03ba": " kappa ", "#": " no ", "\u00d8": " dia ",
+        "\u00f8": " dia ", "\u2300": " dia ", "_": " ",
+    }
+)  # fmt: skip
+_TYPOGRAPHIC = str.maketrans(
+    {
+        "\u2212": "-", "\u2010": "-", "\u2011": "-", "\u2012": "-", "\u2013": "-", "\u2014": "-", "\u2015": "-",
+        "\u00a0": " ", "\u202f": " ", "\u2009": " ", "\u2007": " ",
+        "\u2033": '"', "\u201c": '"', "\u201d": '"', "\u2019": "'", "\u2032": "'", "\u2044": "/",
+    }
+)  # fmt: skip
+
+
+def _escaped(character: str) -> str:
+    return character if character.isprintable() else character.encode("unicode_escape").decode("ascii")
+
+
+def shown(text: str) -> str:
+    """Return a text as a message may show it: shortened, and every unprintable character escaped (ESC is ``\\x1b``)."""
+    head = "".join(_escaped(character) for character in text[:LONGEST_SHOWN])
+    return f"'{head}...' ({len(text)} characters)" if len(text) > LONGEST_SHOWN else f"'{head}'"
+
+
+def place(file: str, row: int | None = None, column: str | None = None) -> str:
+    """Return file, row and column header in the words of every message."""
+    row_part = "" if row is None else f", row {row}"
+    column_part = "" if column is None else f", column {shown(column)}"
+    return f"{shown(file)[1:-1]}{row_part}{column_part}"
+
+
+def tidy(text: str) -> str:
+    """Return a text with typographic dashes, blanks and quotation marks made plain and outer blanks gone."""
+    return text.translate(_TYPOGRAPHIC).strip()
+
+
+def fold_words(text: str) -> str:
+    """Return a header in the form in which headers are compared: lower case, no accents, no punctuation."""
+    folded = unicodedata.normalize("NFKC", text.translate(_SIGNS))
+    plain = "".join(c for c in unicodedata.normalize("NFKD", folded.casefold()) if not unicodedata.combining(c))
+    return " ".join(re.sub(r"[^\w]+", " ", plain).split())
+
+
+def key_of(text: str) -> str:
+    """Return the folded words of a text without blanks, so that ``LineNumber`` and ``Line number`` are one."""
+    return fold_words(text).replace(" ", "")

@@ -1,0 +1,195 @@
+"""What the templates show: the review put into sections, groups and bounds. No markup and no numbers of its own."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Sequence
+from dataclasses import dataclass
+
+from checker.report.charts import Picture
+from checker.report.numbers import percentage
+from checker.report.review_contract import ResultLike, ReviewLike
+from checker.report.states import TALLY_ORDER, State, state_of
+from checker.review_model import AssumptionItem, OutcomeRow
+
+__all__ = ["ON_PAPER", "ON_SCREEN", "AssumptionGroup", "Bounds", "LineExceptions", "Section", "View", "build_view"]
+
+
+@dataclass(frozen=True, slots=True)
+class Bounds:
+    """How much of a long list is written out; what is left out is always counted and its place named.
+
+    Attributes
+    ----------
+    details : int
+        Exceptions written out in full; the others stand in a compact table.
+    compact : int
+        Rows of that compact table.
+    rows : int
+        Rows of any other table.
+    names : int
+        Line numbers named at once before the rest is folded away (screen) or counted (paper).
+    """
+
+    details: int
+    compact: int
+    rows: int
+    names: int
+
+
+NO_BOUND = 10**9
+ON_SCREEN = Bounds(details=500, compact=NO_BOUND, rows=NO_BOUND, names=24)
+ON_PAPER = Bounds(details=200, compact=1_000, rows=2_000, names=60)
+
+RECOMMENDATION_STATES = {
+    "no comments": "meets",
+    "comments": "near limit",
+    "revise and resubmit": "does not meet",
+    "incomplete": "not checked",
+}
+
+
+@dataclass(frozen=True, slots=True)
+class Section:
+    """One numbered section and the template that fills it."""
+
+    number: int
+    anchor: str
+    title: str
+    template: str
+
+
+@dataclass(frozen=True, slots=True)
+class LineExceptions:
+    """Exceptions of one line, each with its rank in the whole list (1 is the worst)."""
+
+    line_number: str
+    service: str
+    ranked: tuple[tuple[int, OutcomeRow], ...]
+
+
+@dataclass(frozen=True, slots=True)
+class AssumptionGroup:
+    """One and the same assumption, and every line (with its cases) that it was made for."""
+
+    field: str
+    shown: str
+    source: str
+    lines: tuple[str, ...]
+    count: int
+
+
+@dataclass(frozen=True, slots=True)
+class TallyEntry:
+    """One outcome of the tally: how many, and its share of the applicable outcomes as a number for the bar."""
+
+    state: State
+    count: int
+    share: float
+    share_text: str
+
+
+@dataclass(frozen=True, slots=True)
+class View:
+    """Everything the templates read."""
+
+    review: ReviewLike
+    pictures: tuple[Picture, ...]
+    sections: tuple[Section, ...]
+    bounds: Bounds
+    paged: bool
+    recommendation: str
+    state: State
+    tally: tuple[TallyEntry, ...]
+    outcomes_in_all: int
+    lines: tuple[LineExceptions, ...]
+    compact: tuple[tuple[int, OutcomeRow], ...]
+    assumptions: tuple[AssumptionGroup, ...]
+    results: Sequence[ResultLike]
+    inputs: str
+
+
+def build_view(review: ReviewLike, pictures: tuple[Picture, ...], *, paged: bool) -> View:
+    """Return what the templates show of a review, for the screen or for paper."""
+    bounds = ON_PAPER if paged else ON_SCREEN
+    ranked = tuple(enumerate(review.exceptions, start=1))
+    return View(
+        review=review,
+        pictures=pictures,
+        sections=_sections(review),
+        bounds=bounds,
+        paged=paged,
+        recommendation=_first_letter_large(review.recommendation_text),
+        state=state_of(RECOMMENDATION_STATES.get(review.recommendation, "not checked")),
+        tally=_tally(review),
+        outcomes_in_all=sum(review.tally.values()),
+        lines=_by_line(ranked[: bounds.details]),
+        compact=ranked[bounds.details :],
+        assumptions=_assumption_groups(review.assumption_items),
+        results=review.results().rows,
+        inputs=", ".join(source.name for source in review.basis.inputs),
+    )
+
+
+def _first_letter_large(text: str) -> str:
+    return text[:1].upper() + text[1:]
+
+
+def _sections(review: ReviewLike) -> tuple[Section, ...]:
+    entries = [
+        ("recommendation", "Recommendation and coverage", "recommendation"),
+        ("pictures", "The list at a glance", "pictures"),
+        ("reading", "How the list was read", "reading"),
+        ("exceptions", "Exceptions by line: what must be done", "exceptions"),
+        ("approved", "Approved deviations", "approved"),
+        ("not-checked", "What was not checked, and why", "not_checked"),
+        ("unread", "Rows and cells not read", "unread"),
+        ("holds", "HOLD register", "holds"),
+        ("assumptions", "Assumptions", "assumptions"),
+        ("cautions", "Cautions", "cautions"),
+        ("basis", "Basis", "basis"),
+        ("rules", "Rules and how often each gave which outcome", "rules"),
+        ("results", "Results of every line", "results"),
+    ]
+    shown = [entry for entry in entries if entry[0] != "approved" or review.approved]
+    return tuple(
+        Section(number, anchor, title, f"section_{template}.html.j2")
+        for number, (anchor, title, template) in enumerate(shown, start=1)
+    )
+
+
+def _tally(review: ReviewLike) -> tuple[TallyEntry, ...]:
+    applicable = sum(number for word, number in review.tally.items() if word != "not applicable")
+    entries = []
+    for word in TALLY_ORDER:
+        number = review.tally.get(word, 0)
+        counted = word != "not applicable"
+        share = number / applicable if applicable and counted else 0.0
+        text = percentage(number, applicable) if counted else ""
+        entries.append(TallyEntry(state_of(word), number, share, text))
+    return tuple(entries)
+
+
+def _by_line(ranked: Iterable[tuple[int, OutcomeRow]]) -> tuple[LineExceptions, ...]:
+    groups: dict[str, list[tuple[int, OutcomeRow]]] = {}
+    for rank, row in ranked:
+        groups.setdefault(row.line_number, []).append((rank, row))
+    return tuple(LineExceptions(line, members[0][1].service, tuple(members)) for line, members in groups.items())
+
+
+def _assumption_groups(items: Iterable[AssumptionItem]) -> tuple[AssumptionGroup, ...]:
+    groups: dict[tuple[str, str, str], dict[str, list[str]]] = {}
+    for item in items:
+        lines = groups.setdefault((item.field, item.shown, item.source), {})
+        lines.setdefault(item.line_number, []).append(item.case)
+    return tuple(
+        AssumptionGroup(field, shown, source, _with_cases(lines), sum(map(len, lines.values())))
+        for (field, shown, source), lines in groups.items()
+    )
+
+
+def _with_cases(lines: dict[str, list[str]]) -> tuple[str, ...]:
+    named = []
+    for line, cases in lines.items():
+        known = ", ".join(case for case in cases if case)
+        named.append(f"{line} ({known})" if known else line)
+    return tuple(named)
