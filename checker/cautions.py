@@ -42,17 +42,17 @@ def cautions_of(values: Values) -> tuple[CautionItem, ...]:
     notes = (
         (
             large & (values.criteria.two_phase_method == "beggs-brill"),
-            "Beggs and Brill rests on tests in 25 mm and 38 mm pipe: treat its pressure drop in larger bores with care.",
+            "Beggs and Brill rests on tests in 25 mm and 38 mm pipe: take its pressure drop in larger bores with care.",
             "Beggs and Brill, Journal of Petroleum Technology, May 1973",
         ),
         (
             values["transitional"],
-            "Reynolds number between 2 000 and 4 000: the friction factor is the larger of the laminar and turbulent ones.",
+            "Reynolds number from 2 000 to 4 000: the friction factor is the larger of the laminar and turbulent ones.",
             "Crane TP-410, critical zone",
         ),
         (
             values["choked"],
-            "The flow is sonic at the outlet plane: its pressure floats above that of the receiver, or the flow cannot pass.",
+            "Sonic at the outlet plane: its pressure floats above the receiver's, or the flow cannot pass at all.",
             "isothermal flow of a gas",
         ),
         (

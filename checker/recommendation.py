@@ -36,9 +36,7 @@ def _plural(count: int, word: str) -> str:
     return f"{count:,} {word}{'' if count == 1 else 's'}".replace(",", " ")
 
 
-def recommend(
-    judgement: Judgement, *, gross_factor: float, coverage_minimum: float, open_items: int
-) -> Recommendation:
+def recommend(judgement: Judgement, *, gross_factor: float, coverage_minimum: float, open_items: int) -> Recommendation:
     """Return the recommendation of a list.
 
     `revise and resubmit` if any `shall` is not met, or a `should` by more than the gross factor; `incomplete` if less
@@ -63,7 +61,9 @@ def recommend(
     coverage = coverage_of(judgement)
     revise = [
         f"{_plural(shall, 'outcome')} of force shall not met" if shall else "",
-        f"{_plural(gross, 'outcome')} of force should exceeded by more than the factor {gross_factor:g}" if gross else "",
+        f"{_plural(gross, 'outcome')} of force should exceeded by more than the factor {gross_factor:g}"
+        if gross
+        else "",
     ]
     share = f"{100.0 * coverage:.1f} % of the applicable outcomes could be checked"
     incomplete = f"only {share}, less than {100.0 * coverage_minimum:g} %" if coverage < coverage_minimum else ""

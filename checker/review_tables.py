@@ -30,7 +30,14 @@ FloatArray = NDArray[np.float64]
 NEAR_LIMIT = 0.9
 PHASE_WORDS = {Phase.LIQUID: "liquid", Phase.GAS: "gas", Phase.TWO_PHASE: "two-phase", Phase.UNKNOWN: "not known"}
 VELOCITY_RULES = ("liquid-velocity", "gas-velocity", "steam-velocity", "two-phase-velocity")
-LOOKED_UP = ("outside_diameter", "wall_thickness", "inside_diameter", "roughness", "compressibility", "heat_capacity_ratio")
+LOOKED_UP = (
+    "outside_diameter",
+    "wall_thickness",
+    "inside_diameter",
+    "roughness",
+    "compressibility",
+    "heat_capacity_ratio",
+)
 
 
 @dataclass(frozen=True, slots=True)
@@ -163,7 +170,7 @@ def velocity_points(values: Values, judgement: Judgement) -> VelocityPoints:
 
 
 def _worst_velocity(values: Values) -> FloatArray:
-    worst = values["velocity_highest"]
+    worst: FloatArray = values["velocity_highest"]
     return np.where(np.isnan(worst), values["velocity_at_stated_pressure"], worst)
 
 
@@ -212,8 +219,7 @@ def _result_row(
     size = float(values["size"][case])
     mine = counts[line]
     numbers = {
-        name: float(values[name][case])
-        for name in ("pressure_gradient", "pressure_loss", "dp_total", "momentum_flux")
+        name: float(values[name][case]) for name in ("pressure_gradient", "pressure_loss", "dp_total", "momentum_flux")
     }
     return ResultRow(
         line_number=line_list.line_number[line],

@@ -30,7 +30,9 @@ def _two_phase_flows(*, phase: NDArray[np.int8], flowing: TriState) -> TriState:
     title="Momentum flux",
     force="should",
     sense="at most",
-    source=Source("common practice", clause="ladder by operating pressure; NORSOK P-001 6.5 for flare; from the criteria"),
+    source=Source(
+        "common practice", clause="ladder by operating pressure; NORSOK P-001 6.5 for flare; from the criteria"
+    ),
     applies=_compressible_flows,
     calculation="rho v^2 at the end of lowest density = {momentum_flux}; at most {momentum_flux_maximum}",
     unit="Pa",
@@ -65,7 +67,9 @@ def erosional_velocity(
     For solids-free two-phase service only: published reviews dispute its use elsewhere, and sand needs an erosion
     model of its own. Where the row states sand, or leaves its sand cell open, this rule does not judge.
     """
-    return velocity_highest, erosional_velocity_of(density=density_lowest, constant=erosional_constant) * sand_free
+    return velocity_highest, erosional_velocity_of(
+        density=density_lowest, erosional_constant=erosional_constant
+    ) * sand_free
 
 
 @rule(

@@ -25,8 +25,6 @@ def _scheduled(*, schedule_given: TriState) -> TriState:
     applies=_scheduled,
     calculation="NPS {size}, schedule {schedule_used}: in the tables",
 )
-def schedule_exists(
-    *, size: NDArray[np.float64], schedule_used: Coded, schedule_exists: NDArray[np.int8]
-) -> BoolArray:
+def schedule_exists(*, size: NDArray[np.float64], schedule_used: Coded, schedule_exists: NDArray[np.int8]) -> BoolArray:
     """Contradict where the standards' tables hold no such schedule for the size."""
-    return schedule_exists == 0
+    return np.equal(schedule_exists, 0)

@@ -30,7 +30,9 @@ def _stated(*, flowing: TriState, stated_values_given: TriState) -> TriState:
     sense="at most",
     source=Source("common practice", clause="value by service from the criteria"),
     applies=_flows,
-    calculation="dp/L = f rho v^2 / (2 D) = {pressure_gradient}, f = {friction_factor}; at most {pressure_gradient_maximum}",
+    calculation=(
+        "dp/L = f rho v^2 / (2 D) = {pressure_gradient}, f = {friction_factor}; at most {pressure_gradient_maximum}"
+    ),
     unit="bar/100m",
     dimension="pressure gradient",
     conservative=("compressibility", "heat_capacity_ratio"),

@@ -10,6 +10,7 @@ from checker.ruling.contract import Source, rule
 from checker.ruling.tristate import TriState, all_of, any_of, is_code, not_
 
 FloatArray = NDArray[np.float64]
+NOT_KNOWN = np.array(np.nan)
 
 
 def _liquid_flows(*, phase: NDArray[np.int8], flowing: TriState) -> TriState:
@@ -73,7 +74,10 @@ def liquid_velocity(*, velocity: FloatArray, velocity_maximum: FloatArray) -> tu
     limit_key="velocity_maximum",
 )
 def gas_velocity(
-    *, velocity_at_stated_pressure: FloatArray, velocity_maximum: FloatArray, velocity_highest: FloatArray = np.array(np.nan)
+    *,
+    velocity_at_stated_pressure: FloatArray,
+    velocity_maximum: FloatArray,
+    velocity_highest: FloatArray = NOT_KNOWN,
 ) -> tuple[FloatArray, FloatArray]:
     """Hold the gas velocity at its worst end (the lowest pressure) against the service's maximum."""
     known = velocity_at_stated_pressure
@@ -97,7 +101,10 @@ def gas_velocity(
     limit_key="velocity_maximum",
 )
 def steam_velocity(
-    *, velocity_at_stated_pressure: FloatArray, velocity_maximum: FloatArray, velocity_highest: FloatArray = np.array(np.nan)
+    *,
+    velocity_at_stated_pressure: FloatArray,
+    velocity_maximum: FloatArray,
+    velocity_highest: FloatArray = NOT_KNOWN,
 ) -> tuple[FloatArray, FloatArray]:
     """Hold the steam velocity at its worst end against the service's maximum."""
     known = velocity_at_stated_pressure
@@ -119,7 +126,10 @@ def steam_velocity(
     limit_key="velocity_maximum",
 )
 def two_phase_velocity(
-    *, velocity_at_stated_pressure: FloatArray, velocity_maximum: FloatArray, velocity_highest: FloatArray = np.array(np.nan)
+    *,
+    velocity_at_stated_pressure: FloatArray,
+    velocity_maximum: FloatArray,
+    velocity_highest: FloatArray = NOT_KNOWN,
 ) -> tuple[FloatArray, FloatArray]:
     """Hold the no-slip mixture velocity at its worst end against the service's maximum."""
     known = velocity_at_stated_pressure
@@ -139,5 +149,5 @@ def two_phase_velocity(
     limit_key="velocity_minimum",
 )
 def minimum_velocity(*, velocity_at_minimum: FloatArray, velocity_minimum: FloatArray) -> tuple[FloatArray, FloatArray]:
-    """Hold the inlet velocity (the slow end) at the lowest sustained flow against the minimum for solids and fouling."""
+    """Hold the inlet velocity, the slow end, at the lowest sustained flow against the minimum (solids, fouling)."""
     return velocity_at_minimum, velocity_minimum

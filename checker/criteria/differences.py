@@ -8,14 +8,15 @@ from collections.abc import Iterator, Mapping
 from checker.criteria.criteria import LIMIT_DIMENSION, Limit, Service
 from checker.criteria.service_reading import same_name
 from checker.criteria.settings import Settings
+from checker.units import from_si, read_unit
 
 __all__ = ["differences_between"]
 
 _TOLERANCE = 1e-12
 _SETTINGS = {
-    "atmosphere": "[site] atmospheric_pressure, Pa",
-    "ambient_minimum": "[site] ambient_minimum, K",
-    "ambient_maximum": "[site] ambient_maximum, K",
+    "atmosphere": "[site] atmospheric_pressure",
+    "ambient_minimum": "[site] ambient_minimum",
+    "ambient_maximum": "[site] ambient_maximum",
     "gas_method": "[methods] gas",
     "two_phase_method": "[methods] two_phase",
     "fittings_method": "[methods] fittings",
@@ -24,6 +25,11 @@ _SETTINGS = {
     "coverage_minimum": "[recommendation] coverage_minimum",
     "stated_values_tolerance": "[defaults] stated_values_tolerance",
     "fittings_allowance": "[defaults] fittings_allowance",
+}
+_SHOWN_IN = {
+    "atmosphere": ("bar", "pressure difference"),
+    "ambient_minimum": ("degC", "temperature"),
+    "ambient_maximum": ("degC", "temperature"),
 }
 _SERVICE_WORDS = ("phase", "general", "steam", "pump_suction", "solids_free", "pressure_basis", "confirmed")
 
@@ -45,6 +51,8 @@ def _same_numbers(old: tuple[float, ...], new: tuple[float, ...]) -> bool:
 def _same_limit(old: Limit | None, new: Limit | None) -> bool:
     if old is None or new is None:
         return old is new
+    if old.text == new.text:
+        return True
     return old.by == new.by and _same_numbers(old.uppers, new.uppers) and _same_numbers(old.values, new.values)
 
 
@@ -77,9 +85,17 @@ def _mapping_changes(table: str, old: Mapping[str, float | str], new: Mapping[st
             yield f"{table} {key}: {before} -> {after}"
 
 
+def _setting(settings: Settings, field: str) -> str:
+    value = getattr(settings, field)
+    if field not in _SHOWN_IN or math.isnan(value):
+        return _word(value)
+    unit, dimension = _SHOWN_IN[field]
+    return f"{float(from_si(value, read_unit(unit, dimension))):.6g} {unit}"
+
+
 def _setting_changes(old: Settings, new: Settings) -> Iterator[str]:
     for field, label in _SETTINGS.items():
-        before, after = _word(getattr(old, field)), _word(getattr(new, field))
+        before, after = _setting(old, field), _setting(new, field)
         if before != after:
             yield f"{label}: {before} -> {after}"
     yield from _mapping_changes("[units]", old.units, new.units)

@@ -5,11 +5,12 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 from typing import Any
 
-from checker.errors import Problem
+from checker.errors import InputError, Problem
 
-__all__ = ["ProblemList", "place_of", "shown"]
+__all__ = ["MOST_PROBLEMS", "ProblemList", "place_of", "shown"]
 
 LONGEST_SHOWN = 60
+MOST_PROBLEMS = 200
 PathPart = str | int
 
 
@@ -40,7 +41,10 @@ def place_of(document: Mapping[str, Any], path: Sequence[PathPart]) -> str:
 
 
 class ProblemList:
-    """Everything that is wrong with one criteria file."""
+    """Everything that is wrong with one input file.
+
+    A file with more than 200 problems is no file of this kind: reading stops there with those that were found.
+    """
 
     def __init__(self, file: str, document: Mapping[str, Any]) -> None:
         self.file = file
@@ -51,3 +55,6 @@ class ProblemList:
         """Note what is wrong at a path of the document and what to do about it."""
         place = place_of(self.document, path)
         self.problems.append(Problem(what, f"{self.file}, {place}" if place else self.file, remedy))
+        if len(self.problems) >= MOST_PROBLEMS:
+            last = Problem(f"more than {MOST_PROBLEMS} problems.", self.file, "Correct these first, then run again.")
+            raise InputError([*self.problems, last])

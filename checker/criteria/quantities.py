@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Sequence
+from functools import lru_cache
 
 from checker.criteria.nominal_size import read_nominal_size
 from checker.criteria.places import PathPart, ProblemList, shown
@@ -25,6 +26,12 @@ EXAMPLES = {
     "temperature": "32 degC",
     "pressure difference": "1.01325 bar",
 }
+
+
+@lru_cache(maxsize=1024)
+def _read_once(text: str, dimension: str, atmosphere: float) -> float:
+    """Read a quantity; the same few texts stand in many services."""
+    return read_quantity(text, dimension, atmosphere=atmosphere)
 
 
 def _unit_of(text: str) -> str:
@@ -68,7 +75,7 @@ def read_value(
         problems.add(path, f"{shown(value)} has no unit.", example)
         return math.nan
     try:
-        return read_quantity(value, dimension, atmosphere=atmosphere)
+        return _read_once(value, dimension, atmosphere)
     except UnitRefusedError as error:
         other = _other_dimension(value, dimension)
         problems.add(path, f"{shown(value)} is a {other}, not a {dimension}." if other else str(error), example)

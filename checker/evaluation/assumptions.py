@@ -21,7 +21,7 @@ ASSUMABLE: dict[str, str] = {
     "heat_capacity_ratio": "ratio of heat capacities",
 }
 _SOURCES = {
-    "schedule_used": "the class file, or STD (40S for stainless) where no class gives a schedule; the list leaves it blank",
+    "schedule_used": "the class file, or STD (40S for stainless) where no class gives one; the list does not say",
     "inside_diameter": "from the assumed schedule, ASME B36.10M / B36.19M",
     "roughness": "class file or adopted roughness of the material; the list's own column is blank",
     "compressibility": "ideal gas below 10 bar absolute, common practice; upper bound of the velocity",
@@ -47,9 +47,7 @@ def assumptions_behind(name: str, phase: int) -> frozenset[str]:
     return frozenset(reached)
 
 
-def assumed_for(
-    values: Values, names: tuple[str, ...], *, conservative: tuple[str, ...] = ()
-) -> NDArray[np.bool_]:
+def assumed_for(values: Values, names: tuple[str, ...], *, conservative: tuple[str, ...] = ()) -> NDArray[np.bool_]:
     """Return True where one of the named fields rests on an assumption that is not among the conservative ones."""
     phase = values["phase"]
     assumed = np.zeros(phase.shape, dtype=np.bool_)

@@ -23,23 +23,35 @@ _STATE_OUTPUTS = ("velocity", "velocity_outlet", "density", "density_outlet", "m
 _FRICTION_OUTPUTS = ("reynolds", "friction_factor", "kinetic_energy_factor", "pressure_gradient", "wall_shear_stress")
 
 
+def _all(names: tuple[str, ...], needs: tuple[str, ...]) -> dict[str, tuple[str, ...]]:
+    return dict.fromkeys(names, needs)
+
+
 def _liquid() -> dict[str, tuple[str, ...]]:
     friction = (*_LIQUID_STATE, *_FRICTION)
-    table = dict.fromkeys((*_AT_STATED, *_STATE_OUTPUTS), _LIQUID_STATE)
-    table |= dict.fromkeys(_FRICTION_OUTPUTS, friction)
+    table = _all((*_AT_STATED, *_STATE_OUTPUTS), _LIQUID_STATE)
+    table |= _all(_FRICTION_OUTPUTS, friction)
     table["dp_friction"] = (*friction, "pipe_length")
     table["dp_fittings"] = table["dp_acceleration"] = (*friction, *_ROUTE[1:])
     table["dp_elevation"] = ("density_stated", "elevation_change")
-    table |= dict.fromkeys(("dp_total", "pressure_inlet", "pressure_outlet"), (*friction, *_ALONG))
+    table |= _all(("dp_total", "pressure_inlet", "pressure_outlet"), (*friction, *_ALONG))
     return table
 
 
 def _compressible(state: tuple[str, ...], friction: tuple[str, ...]) -> dict[str, tuple[str, ...]]:
     everything = (*state, *friction, *_ALONG)
-    table = dict.fromkeys(_AT_STATED, state)
-    table |= dict.fromkeys((*_STATE_OUTPUTS, *_FRICTION_OUTPUTS), everything)
-    table |= dict.fromkeys(
-        ("dp_friction", "dp_fittings", "dp_acceleration", "dp_elevation", "dp_total", "pressure_inlet", "pressure_outlet"),
+    table = _all(_AT_STATED, state)
+    table |= _all((*_STATE_OUTPUTS, *_FRICTION_OUTPUTS), everything)
+    table |= _all(
+        (
+            "dp_friction",
+            "dp_fittings",
+            "dp_acceleration",
+            "dp_elevation",
+            "dp_total",
+            "pressure_inlet",
+            "pressure_outlet",
+        ),
         everything,
     )
     return table
@@ -48,7 +60,7 @@ def _compressible(state: tuple[str, ...], friction: tuple[str, ...]) -> dict[str
 @cache
 def _tables() -> dict[int, dict[str, tuple[str, ...]]]:
     gas = _compressible(_GAS_STATE, _FRICTION)
-    gas |= dict.fromkeys(("mach", "mach_outlet"), (*gas["velocity"], "heat_capacity_ratio"))
+    gas |= _all(("mach", "mach_outlet"), (*gas["velocity"], "heat_capacity_ratio"))
     two_phase = _compressible(_TWO_PHASE_STATE, _TWO_PHASE_FRICTION)
     two_phase["liquid_holdup"] = two_phase["velocity"]
     return {Phase.LIQUID: _liquid(), Phase.GAS: gas, Phase.TWO_PHASE: two_phase}

@@ -10,7 +10,7 @@ from numpy.typing import NDArray
 from checker.evaluation.provider import provider
 from checker.hydraulics.erosion import erosional_velocity as erosional_velocity_of
 from checker.hydraulics.suction import npsh_available as npsh_from_terms
-from checker.model import CaseKind, Coded, Gap
+from checker.model import Coded, Gap
 from checker.ruling.tristate import NO, UNKNOWN, YES
 
 __all__ = ["PROVIDERS"]
@@ -115,14 +115,14 @@ def velocity_at_minimum(*, velocity: FloatArray, is_minimum_case: CodeArray) -> 
 
 
 def sand_free(*, sand_rate: FloatArray, sand_rate_gap: CodeArray) -> FloatArray:
-    """Return 1 where the row states no sand or the list has no column for it, NaN where it states some or leaves it open."""
+    """Return 1 where the row states no sand, or the list has no column for it; NaN where it states some or is open."""
     free = (sand_rate == 0.0) | (sand_rate_gap == Gap.NO_COLUMN) | (sand_rate_gap == Gap.NOT_APPLICABLE)
     return np.where(free, 1.0, np.nan)
 
 
 def erosional_velocity(*, density_lowest: FloatArray, erosional_constant: FloatArray) -> FloatArray:
     """Return C / sqrt(rho_m) at the end of lowest density."""
-    return erosional_velocity_of(density=density_lowest, constant=erosional_constant)
+    return erosional_velocity_of(density=density_lowest, erosional_constant=erosional_constant)
 
 
 def _given(gap: CodeArray) -> CodeArray:
@@ -145,7 +145,7 @@ def vapour_pressure_given(*, vapour_pressure_gap: CodeArray) -> CodeArray:
 
 def npsh_required_given(*, npsh_required_gap: CodeArray) -> CodeArray:
     """Return whether the row states an NPSH required; a blank is told by the service, so it counts as no."""
-    return (npsh_required_gap == Gap.GIVEN).astype(np.int8)
+    return np.equal(npsh_required_gap, Gap.GIVEN).astype(np.int8)
 
 
 def schedule_given(*, schedule_state: CodeArray) -> CodeArray:
@@ -155,7 +155,7 @@ def schedule_given(*, schedule_state: CodeArray) -> CodeArray:
 
 
 def _difference(stated: FloatArray, computed: FloatArray, given: CodeArray) -> FloatArray:
-    """Return |stated - computed| / |computed|; minus infinity where the list states nothing, NaN where it is missing."""
+    """Return |stated - computed| / |computed|; minus infinity where nothing is stated, NaN where it is missing."""
     with np.errstate(all="ignore"):
         difference = np.abs(stated - computed) / np.abs(computed)
     return np.where(given == NO, -np.inf, np.where(given == YES, difference, np.nan))

@@ -2,14 +2,14 @@
 
 from __future__ import annotations
 
-from typing import Any
+from typing import Any, cast
 
 import numpy as np
 from numpy.typing import NDArray
 
 from checker.criteria.criteria import Criteria
 from checker.evaluation.provider import provider
-from checker.hydraulics.compose import Methods, Solution, solve
+from checker.hydraulics.compose import Methods, solve
 from checker.hydraulics.fittings import read_fittings
 from checker.model import Coded, Gap
 
@@ -33,7 +33,7 @@ SOLVED = (
 
 
 def _open(*gaps: CodeArray) -> NDArray[np.bool_]:
-    return np.any([(gap == Gap.HOLD) | (gap == Gap.REFUSED) for gap in gaps], axis=0)
+    return np.logical_or.reduce(np.isin(np.stack(gaps), (Gap.HOLD, Gap.REFUSED)), axis=0)
 
 
 def route(
@@ -56,7 +56,7 @@ def route(
     straight = np.where(by_length & np.isnan(length_listed) & ~_open(length_gap), equivalent_length, length_listed)
     surplus = np.where(by_length, equivalent_length - straight, np.nan)
     read = read_fittings(list(fittings.texts))
-    cell = {name: _by_text(getattr(read, name), fittings) for name in ("n", "k", "entrances", "exits")}
+    cell = {name: _by_text(getattr(read, name), fittings) for name in ("n", "k", "entrances", "exits", "entrance_coefficient")}
     allowance = (equivalent_length_gap == Gap.NO_COLUMN) & (fittings_gap == Gap.NO_COLUMN)
     by_allowance = np.where(allowance, criteria.fittings_allowance * straight, np.nan)
     extra = np.where(by_length, np.where(surplus >= 0.0, surplus, np.nan), by_allowance)
@@ -70,6 +70,7 @@ def route(
         "fittings_n": np.where(unknown, np.nan, use["n"]),
         "fittings_k": np.where(unknown, np.nan, use["k"]),
         "entrances": use["entrances"],
+        "entrance_coefficient": use["entrance_coefficient"],
         "exits": use["exits"],
     }
 
@@ -103,6 +104,7 @@ def hydraulics(
     fittings_n: FloatArray,
     fittings_k: FloatArray,
     entrances: FloatArray,
+    entrance_coefficient: FloatArray,
     exits: FloatArray,
     elevation_change: FloatArray,
 ) -> Named:
@@ -113,9 +115,11 @@ def hydraulics(
     """
     not_told = ~np.isin(vapour_fraction_outlet_gap, (Gap.GIVEN, Gap.NOT_APPLICABLE, Gap.NO_COLUMN))
     methods = Methods(
-        gas=criteria.gas_method, two_phase=criteria.two_phase_method, downhill_recovery=criteria.downhill_recovery
+        gas=cast(Any, criteria.gas_method),
+        two_phase=cast(Any, criteria.two_phase_method),
+        downhill_recovery=criteria.downhill_recovery,
     )
-    solution: Solution = solve(
+    arguments: dict[str, Any] = dict(
         phase=phase,
         flow_mass=flow_mass,
         density=density_stated,
@@ -137,14 +141,16 @@ def hydraulics(
         fittings_coefficient_n=fittings_n,
         fittings_coefficient_k=fittings_k,
         entrance=entrances,
+        entrance_coefficient=entrance_coefficient,
         exit=exits,
         elevation_change=elevation_change,
-        methods=methods,
     )
-    return {name: getattr(solution, name) for name in SOLVED}
+    solution = solve(**arguments, methods=methods)
+    columns = {name: getattr(solution, name) for name in SOLVED}
+    return columns | {"solution": solution, "solver_arguments": arguments | {"methods": methods}}
 
 
 PROVIDERS = (
-    provider(route, "pipe_length", "fittings_length", "fittings_n", "fittings_k", "entrances", "exits"),
-    provider(hydraulics, *SOLVED),
+    provider(route, "pipe_length", "fittings_length", "fittings_n", "fittings_k", "entrances", "entrance_coefficient", "exits"),
+    provider(hydraulics, *SOLVED, "solution", "solver_arguments"),
 )

@@ -7,10 +7,10 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 
-from checker.criteria.classes import Classes, ClassValues, no_classes
+from checker.criteria.classes import Classes, ClassValues
 from checker.criteria.criteria import Criteria
 from checker.evaluation.provider import provider
-from checker.model import Coded, Gap
+from checker.model import Coded, Gap, Source
 from checker.pipe.roughness import roughness_by_material
 from checker.pipe.sizes import look_up
 
@@ -22,6 +22,7 @@ CodeArray = NDArray[np.int8]
 Named = dict[str, Any]
 
 SCHEDULE_LISTED, SCHEDULE_CLASS, SCHEDULE_NONE, SCHEDULE_NOT_KNOWN = 0, 1, 2, -1
+NO_CLASSES = Classes(Source("no class file", ""), ())
 STANDARD_WALL = "STD"
 STAINLESS_WALL = "40S"
 STAINLESS_WORDS = ("stainless", "ss", "a312", "304", "316", "duplex")
@@ -29,17 +30,17 @@ STAINLESS_WORDS = ("stainless", "ss", "a312", "304", "316", "duplex")
 
 def _open(gap: CodeArray) -> BoolArray:
     """Return True where a cell is on HOLD or could not be read: then no other value may stand in."""
-    return (gap == Gap.HOLD) | (gap == Gap.REFUSED)
+    return np.isin(gap, (Gap.HOLD, Gap.REFUSED))
 
 
 def _asked(gap: CodeArray) -> BoolArray:
     """Return True where the list has the column: a value from elsewhere is then an assumption."""
-    return gap != Gap.NO_COLUMN
+    return np.not_equal(gap, Gap.NO_COLUMN)
 
 
 def class_values(*, classes: Classes | None, piping_class_listed: Coded, size: FloatArray) -> ClassValues:
     """Return what the class file says of each line case."""
-    used = no_classes() if classes is None else classes
+    used = NO_CLASSES if classes is None else classes
     return used.look_up(piping_class=piping_class_listed, size=size)
 
 
@@ -165,6 +166,8 @@ PROVIDERS = (
     provider(class_values),
     provider(material_used, "material_used", "material_used_assumed"),
     provider(schedule_used, "schedule_used", "schedule_used_assumed", "schedule_state", "wall_by_class"),
-    provider(pipe, "outside_diameter", "wall_thickness", "inside_diameter", "inside_diameter_assumed", "schedule_exists"),
+    provider(
+        pipe, "outside_diameter", "wall_thickness", "inside_diameter", "inside_diameter_assumed", "schedule_exists"
+    ),
     provider(roughness, "roughness", "roughness_assumed"),
 )

@@ -9,6 +9,8 @@ import numpy as np
 from checker.evaluation.dependencies import direct
 from checker.evaluation.values import Values
 from checker.fields import Field, field_named
+from checker.hydraulics.compose import STATUS_SENTENCES
+from checker.hydraulics.fittings import read_fittings
 from checker.model import Coded, Gap, Phase
 
 __all__ = ["Reason", "is_missing", "why_missing"]
@@ -124,7 +126,8 @@ def _route(values: Values, line_case: int) -> Reason:
         return f"equivalent_length is less than length ({values.line_list.address('equivalent_length', line_case)})"
     cell = values["fittings"].text(line_case)
     if cell:
-        return f"fittings: {_quoted(cell)} is not understood ({values.line_list.address('fittings', line_case)})"
+        said = read_fittings([cell]).reasons[0]
+        return f"fittings: {said} ({values.line_list.address('fittings', line_case)})"
     return _first_gap(values, ("equivalent_length", "fittings"), line_case)
 
 
@@ -185,7 +188,8 @@ def _at_minimum(values: Values, line_case: int) -> Reason:
 
 def _sand(values: Values, line_case: int) -> Reason:
     if not is_missing(values, "sand_rate", line_case):
-        return f"sand is stated ({values.line_list.address('sand_rate', line_case)}): C / sqrt(rho) is for solids-free flow"
+        address = values.line_list.address("sand_rate", line_case)
+        return f"sand is stated ({address}): C / sqrt(rho) is for solids-free flow"
     return gap_sentence(values, "sand_rate", line_case)
 
 
@@ -228,7 +232,5 @@ def why_missing(values: Values, name: str, line_case: int, depth: int = 0) -> Re
 
 
 def _solver_sentence(values: Values, name: str, line_case: int) -> Reason:
-    from checker.hydraulics.compose import STATUS_SENTENCES
-
     status = int(values["status"][line_case])
     return STATUS_SENTENCES[status] if status > 0 else f"{name} could not be computed from the values given"

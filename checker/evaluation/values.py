@@ -120,7 +120,9 @@ class Values:
 def _groups(line_list: LineList) -> NDArray[np.int32]:
     """Return one code per distinct line number: rows of one number are one line."""
     codes: dict[str, int] = {}
-    by_line = np.array([codes.setdefault(text.casefold(), len(codes)) for text in line_list.line_number], dtype=np.int32)
+    by_line = np.array(
+        [codes.setdefault(text.casefold(), len(codes)) for text in line_list.line_number], dtype=np.int32
+    )
     return by_line[line_list.line] if by_line.size else np.zeros(0, dtype=np.int32)
 
 

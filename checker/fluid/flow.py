@@ -12,7 +12,12 @@ FLOW_TOLERANCE = 0.02
 
 
 def mass_flow(
-    *, flow_mass: FloatArray, flow_volume: FloatArray, flow_standard: FloatArray, density: FloatArray, molar_mass: FloatArray
+    *,
+    flow_mass: FloatArray,
+    flow_volume: FloatArray,
+    flow_standard: FloatArray,
+    density: FloatArray,
+    molar_mass: FloatArray,
 ) -> tuple[FloatArray, NDArray[np.bool_]]:
     """Return the mass flow and where the flows of one row contradict each other.
 

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from dataclasses import dataclass, fields
+from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
@@ -12,7 +13,8 @@ from checker.hydraulics.arrays import BoolArray, CodeArray, FloatArray
 from checker.hydraulics.friction import crane_turbulent_factor
 from checker.hydraulics.solution import STATUS_CODES
 
-Anything = NDArray[np.generic]
+#: Results by name, as in `solution.Solution`.
+Results = dict[str, NDArray[Any]]
 
 
 @dataclass(frozen=True)
@@ -70,21 +72,12 @@ class Fittings:
 
 
 def fittings_of(cases: Cases) -> Fittings:
-    """Put together what the list says of fittings.
-
-    Either the cell (n and K, both) or the equivalent length may be missing; with none of them the loss is not known.
-    """
+    """Put together what the list says of fittings; one that is not known (NaN) makes the loss not known."""
     shape, constant = cases.fittings_coefficient_n, cases.fittings_coefficient_k
-    no_cell = np.isnan(shape) & np.isnan(constant)
-    no_length = np.isnan(cases.fittings_length)
     turbulent = crane_turbulent_factor(inside_diameter=cases.inside_diameter)
     cell = np.where(shape == 0.0, 0.0, shape * turbulent) + constant
-    cell = np.where(no_cell & ~no_length, 0.0, cell)
-    extra = np.where(no_length & ~no_cell, 0.0, cases.fittings_length)
-    extra = np.where(extra >= 0.0, extra, np.nan)
-    silent = no_cell & np.isnan(cases.entrance)
+    extra = np.where(cases.fittings_length >= 0.0, cases.fittings_length, np.nan)
     present = np.where(np.isnan(cases.entrance), np.nan, (cases.entrance > 0.0).astype(np.float64))
-    present = np.where(silent, 0.0, present)
     loss = np.where(present == 0.0, 0.0, cases.entrance_coefficient)
     return Fittings(np.where(cell >= 0.0, cell, np.nan), extra, present, loss)
 

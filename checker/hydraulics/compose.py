@@ -6,8 +6,8 @@ from dataclasses import fields
 
 import numpy as np
 
-from checker.hydraulics.arrays import ArrayLike, FloatArray, IndexArray
-from checker.hydraulics.cases import Cases
+from checker.hydraulics.arrays import ArrayLike, IndexArray
+from checker.hydraulics.cases import Cases, Results
 from checker.hydraulics.ends import FLUSH_ENTRANCE_COEFFICIENT
 from checker.hydraulics.gas_line import solve_gas
 from checker.hydraulics.liquid import solve_liquid
@@ -82,11 +82,11 @@ def solve(
     inside_diameter, roughness, length, elevation_change : array_like
         [m]; elevation outlet minus inlet.
     fittings_length : array_like
-        Equivalent length of the fittings, [m]; NaN not given, 0 none.
+        Length of pipe that the fittings count for, [m]; 0 none, NaN not known.
     fittings_coefficient_n, fittings_coefficient_k : array_like
-        Sum of n in K = n fT, and sum of constant K, without entrance and exit; NaN not given.
+        Sum of n in K = n fT, and sum of constant K, without entrance and exit; 0 none, NaN not known.
     entrance, exit : array_like
-        Counts of entrances from a vessel at rest and exits into a receiver.
+        Counts of entrances from a vessel at rest and exits into a receiver; 0 none, NaN not known.
     entrance_coefficient : array_like, optional
         Loss coefficient of the entrance, [-]; 0.5 an entrance where not given.
     methods : Methods, optional
@@ -133,7 +133,7 @@ def cases_from(**arguments: ArrayLike | None) -> Cases:
     return Cases(*np.broadcast_arrays(*arrays))
 
 
-def _solve_phase(code: int, cases: Cases, methods: Methods) -> dict[str, FloatArray]:
+def _solve_phase(code: int, cases: Cases, methods: Methods) -> Results:
     if code == LIQUID:
         return solve_liquid(cases)
     if code == GAS:
@@ -141,7 +141,7 @@ def _solve_phase(code: int, cases: Cases, methods: Methods) -> dict[str, FloatAr
     return solve_two_phase(cases, methods)
 
 
-def _put(solution: Solution, rows: IndexArray, result: dict[str, FloatArray]) -> None:
+def _put(solution: Solution, rows: IndexArray, result: Results) -> None:
     for name, values in result.items():
         target = getattr(solution, name)
         target[rows] = values.astype(target.dtype, copy=False)

@@ -5,7 +5,7 @@ from __future__ import annotations
 import numpy as np
 
 from checker.hydraulics.arrays import BoolArray, FloatArray, positive
-from checker.hydraulics.cases import Cases, Fittings, common_reasons, first_reason, fittings_of
+from checker.hydraulics.cases import Cases, Fittings, Results, common_reasons, first_reason, fittings_of
 from checker.hydraulics.ends import mass_flux, pressure_before_entrance, pressure_behind_entrance
 from checker.hydraulics.friction import friction_factor, reynolds, transitional
 from checker.hydraulics.gas import GasFlow, choking_pressure, inlet_from_outlet, mach_number, outlet_from_inlet
@@ -60,7 +60,7 @@ class GasLine:
                          for first, second in zip(downstream, upstream, strict=True)))
 
 
-def solve_gas(cases: Cases) -> dict[str, FloatArray]:
+def solve_gas(cases: Cases) -> Results:
     """Hydraulics of gas line cases; names as in `Solution`."""
     line = GasLine(cases)
     flow = line.solve()
@@ -121,7 +121,7 @@ def _planes(line: GasLine, flow: GasFlow) -> tuple[FloatArray, FloatArray, BoolA
     return first, last, blocked
 
 
-def _drops(line: GasLine, flow: GasFlow, blocked: BoolArray) -> dict[str, FloatArray]:
+def _drops(line: GasLine, flow: GasFlow, blocked: BoolArray) -> Results:
     loss = line.loss_pipe + line.loss_fittings
     profile = along_line(
         pressure_inlet=flow.pressure_inlet, pressure_outlet=flow.pressure_outlet, path=flow.path,

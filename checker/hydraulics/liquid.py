@@ -5,7 +5,7 @@ from __future__ import annotations
 import numpy as np
 
 from checker.hydraulics.arrays import ArrayLike, FloatArray, floats, positive
-from checker.hydraulics.cases import Cases, common_reasons, first_reason, fittings_of
+from checker.hydraulics.cases import Cases, Results, common_reasons, first_reason, fittings_of
 from checker.hydraulics.ends import mass_flux
 from checker.hydraulics.friction import friction_factor, reynolds, transitional
 from checker.hydraulics.kinetic_energy import kinetic_energy_factor
@@ -44,7 +44,7 @@ def pressure_gradient(*, friction_factor: ArrayLike, mass_flux: ArrayLike, densi
     return np.where(base == 0.0, 0.0, floats(friction_factor) * base)
 
 
-def solve_liquid(cases: Cases) -> dict[str, FloatArray]:
+def solve_liquid(cases: Cases) -> Results:
     """Hydraulics of liquid line cases; names as in `Solution`."""
     bore, density = positive(cases.inside_diameter), positive(cases.density)
     viscosity = positive(cases.viscosity)
@@ -67,7 +67,7 @@ def solve_liquid(cases: Cases) -> dict[str, FloatArray]:
 
 
 def _drops(cases: Cases, bore: FloatArray, density: FloatArray, flux: FloatArray, factor: FloatArray,
-           alpha: FloatArray, gradient: FloatArray) -> dict[str, FloatArray]:
+           alpha: FloatArray, gradient: FloatArray) -> Results:
     fittings = fittings_of(cases)
     length = np.where(cases.length >= 0.0, cases.length, np.nan)
     head = 0.5 * flux * flux / density
@@ -83,7 +83,7 @@ def _drops(cases: Cases, bore: FloatArray, density: FloatArray, flux: FloatArray
     }
 
 
-def _pressures(cases: Cases, drop: FloatArray) -> dict[str, FloatArray]:
+def _pressures(cases: Cases, drop: FloatArray) -> Results:
     stated = positive(cases.pressure)
     from_inlet, from_outlet = cases.pressure_basis == INLET, cases.pressure_basis == OUTLET
     inlet = np.where(from_inlet, stated, np.where(from_outlet, positive(stated + drop), np.nan))
@@ -91,7 +91,7 @@ def _pressures(cases: Cases, drop: FloatArray) -> dict[str, FloatArray]:
     return {"pressure_inlet": inlet, "pressure_outlet": outlet}
 
 
-def _status(cases: Cases, result: dict[str, FloatArray]) -> FloatArray:
+def _status(cases: Cases, result: Results) -> FloatArray:
     fittings = fittings_of(cases)
     status = first_reason({
         "flow": ~(cases.flow_mass >= 0.0),

@@ -1,26 +1,30 @@
 """Integration along two-phase lines: Runge-Kutta of fourth order, steps by line, cut where the regime changes.
 
-All lines are marched together, each with its own step: its number of steps comes from its own pressure-drop ratio,
-and a step in which the flow regime (or laminar and turbulent) changes is halved until it ends at the change. A line
-that has arrived, choked or run dry leaves; nothing in the result of a line depends on its neighbours.
+All lines are marched together, each with its own step: its width comes from the line's own pressure-drop ratio
+there, and a step in which the flow regime (or laminar and turbulent) changes is halved until it ends at the change.
+A line that has arrived, choked or run dry leaves; nothing in the result of a line depends on its neighbours.
 """
 
 from __future__ import annotations
 
-from typing import NamedTuple
+from collections.abc import Iterable, Iterator
+from typing import Any, NamedTuple
 
 import numpy as np
+from numpy.typing import NDArray
 
 from checker.hydraulics.arrays import BoolArray, FloatArray, gauss_legendre
 from checker.hydraulics.two_phase_line import Method, Slice, TwoPhaseLine, slice_at
 
-_FEWEST, _MOST = 4, 256
-#: Pressure-drop ratio that one step covers.
-_RATIO_OF_STEP = 0.0125
+Values = NDArray[Any]
+
+_WIDEST, _SMALLEST = 0.25, 1.0 / 8192.0
+#: Share of the pressure that one step may take, and that share per distance of the acceleration factor from one.
+_RATIO_OF_STEP, _RATIO_NEAR_CHOKING = 0.0125, 0.03
 #: A step is halved down to this share of its full width before it crosses a change of regime.
 _NARROWEST = 2.0**-27
 #: Steps after which a line is given up: it hovers on a border of flow regimes.
-_LIMIT = 1500
+_LIMIT = 2000
 #: Parts carried along: those of Slice from friction to slip, then the pressure term of the ledger.
 PARTS = ("friction", "fittings", "elevation", "acceleration", "loss_pipe", "loss_fittings", "slip", "pressure_term")
 
@@ -46,7 +50,7 @@ class _Walk:
     def __init__(self, line: TwoPhaseLine, start: FloatArray, method: Method, downstream: bool) -> None:
         place = np.zeros_like(start) if downstream else np.ones_like(start)
         terms = slice_at(line, start, place, method)
-        full = 1.0 / _steps(terms, start)
+        full = _width(terms, start)
         self.sign = 1.0 if downstream else -1.0
         self.line, self.point = line, _Point(start, place, terms)
         self.full, self.width, self.left = full, full, np.ones_like(start)
@@ -59,19 +63,24 @@ class _Walk:
         if bool(np.all(going)):
             return
         self.line = self.line.take(going)
-        terms = Slice(*(values[going] for values in self.point.terms))
+        terms = Slice._make(values[going] for values in self.point.terms)
         self.point = _Point(self.point.pressure[going], self.point.place[going], terms)
         self.full, self.width, self.left = self.full[going], self.width[going], self.left[going]
         self.narrowing, self.parts, self.rows = self.narrowing[going], self.parts[:, going], self.rows[going]
 
     def accept(self, taken: BoolArray, ahead: _Point, gain: FloatArray, width: FloatArray) -> None:
         """Go on to the point ahead where the step is taken."""
-        terms = Slice(*(np.where(taken, new, old) for new, old in zip(ahead.terms, self.point.terms, strict=True)))
+        terms = Slice._make(_chosen(taken, ahead.terms, self.point.terms))
         self.point = _Point(
             np.where(taken, ahead.pressure, self.point.pressure), np.where(taken, ahead.place, self.point.place), terms
         )
         self.parts = self.parts + np.where(taken, gain, 0.0)
         self.left = np.where(taken, self.left - width, self.left)
+
+
+def _chosen(taken: BoolArray, new: Iterable[Values], old: Iterable[Values]) -> Iterator[Values]:
+    """New values where the step is taken, else the old ones, array by array."""
+    return (np.where(taken, one, other) for one, other in zip(new, old, strict=True))
 
 
 def march(line: TwoPhaseLine, start: FloatArray, method: Method, *, downstream: bool, ledger: bool = False) -> March:
@@ -108,9 +117,11 @@ def march(line: TwoPhaseLine, start: FloatArray, method: Method, *, downstream: 
     return result
 
 
-def _steps(first: Slice, start: FloatArray) -> FloatArray:
-    count = np.clip(np.ceil(np.abs(first.drop) / start / _RATIO_OF_STEP), _FEWEST, _MOST)
-    return np.where(first.acceleration_factor < 1.0, count, np.nan)
+def _width(terms: Slice, pressure: FloatArray) -> FloatArray:
+    """Width of the next step; NaN where the line cannot go on."""
+    allowed = np.minimum(_RATIO_OF_STEP, _RATIO_NEAR_CHOKING * (1.0 - terms.acceleration_factor))
+    width = np.clip(allowed * pressure / np.abs(terms.drop), _SMALLEST, _WIDEST)
+    return np.where(terms.acceleration_factor < 1.0, width, np.nan)
 
 
 def _advance(walk: _Walk, method: Method, ledger: bool, result: March) -> None:
@@ -123,6 +134,7 @@ def _advance(walk: _Walk, method: Method, ledger: bool, result: March) -> None:
     walk.accept(taken, ahead, gain, width)
     # Within the halving every next step is half as wide, whether or not the last one was taken.
     walk.narrowing = (walk.narrowing | crosses) & ~narrow
+    walk.full = np.where(walk.narrowing, walk.full, _width(walk.point.terms, walk.point.pressure))
     walk.width = np.where(walk.narrowing, 0.5 * width, walk.full)
     arrived = walk.left <= 0.0
     rows = walk.rows

@@ -5,15 +5,15 @@ from __future__ import annotations
 import numpy as np
 
 from checker.hydraulics.arrays import BoolArray, FloatArray, positive
-from checker.hydraulics.cases import Cases, Fittings, common_reasons, first_reason, fittings_of
+from checker.hydraulics.cases import Cases, Fittings, Results, common_reasons, first_reason, fittings_of
 from checker.hydraulics.ends import mass_flux, pressure_before_entrance, pressure_behind_entrance
 from checker.hydraulics.friction import transitional
 from checker.hydraulics.kinetic_energy import kinetic_energy_factor
 from checker.hydraulics.liquid import pressure_gradient
 from checker.hydraulics.march import PARTS, March, march
-from checker.hydraulics.solution import INLET, OUTLET, STATUS_CODES, Methods
+from checker.hydraulics.solution import INLET, OUTLET, Methods
 from checker.hydraulics.two_phase import mixture_density
-from checker.hydraulics.two_phase_line import State, TwoPhaseLine, state_at
+from checker.hydraulics.two_phase_line import TwoPhaseLine, state_at
 
 
 class TwoPhaseCases:
@@ -97,7 +97,7 @@ def _qualities(cases: Cases) -> tuple[FloatArray, FloatArray]:
 
 
 @np.errstate(all="ignore")
-def solve_two_phase(cases: Cases, methods: Methods) -> dict[str, FloatArray]:
+def solve_two_phase(cases: Cases, methods: Methods) -> Results:
     """Hydraulics of two-phase line cases; names as in `Solution`."""
     known = TwoPhaseCases(cases, methods)
     line, found = known.line, known.marched()
@@ -133,7 +133,7 @@ def _densities(known: TwoPhaseCases, first: FloatArray, last: FloatArray) -> tup
     return density, np.where(known.from_outlet, known.listed_density, density_outlet)
 
 
-def _end_pressures(known: TwoPhaseCases, first: FloatArray, last: FloatArray) -> dict[str, FloatArray]:
+def _end_pressures(known: TwoPhaseCases, first: FloatArray, last: FloatArray) -> Results:
     constant, slope = known.volume()
     outside = pressure_before_entrance(
         pressure_pipe=first, mass_flux=known.line.mass_flux, coefficient=known.entrance_step,
@@ -142,7 +142,7 @@ def _end_pressures(known: TwoPhaseCases, first: FloatArray, last: FloatArray) ->
     return {"pressure_inlet": np.where(known.from_inlet, known.stated, outside), "pressure_outlet": last}
 
 
-def _drops(known: TwoPhaseCases, found: March, first: FloatArray) -> dict[str, FloatArray]:
+def _drops(known: TwoPhaseCases, found: March, first: FloatArray) -> Results:
     line, fittings = known.line, known.fittings
     head = 0.5 * line.mass_flux**2 / line.density(first, np.zeros_like(first))
     taken_up = np.where(fittings.entrance == 0.0, 0.0, line.kinetic_energy_factor * fittings.entrance * head)
@@ -185,7 +185,5 @@ def _status(known: TwoPhaseCases, found: March) -> FloatArray:
 
 def _stopped_at_entrance(known: TwoPhaseCases) -> BoolArray:
     ready = ~np.isnan(known.stated + known.entrance_step + known.line.mass_flux)
-    return known.from_inlet & ready & np.isnan(known.behind_entrance())
-
-
-__all__ = ["STATUS_CODES", "TwoPhaseCases", "solve_two_phase"]
+    stopped: BoolArray = known.from_inlet & ready & np.isnan(known.behind_entrance())
+    return stopped

@@ -103,7 +103,9 @@ def _refuse_nul(path: Path, text: str) -> None:
         row = text.count("\n", 0, position) + 1
         column = position - (text.rfind("\n", 0, position) + 1) + 1
         what = f"NUL character at character {position + 1} (text row {row}, character {column} of it)."
-        raise _refuse(path, what, "The file is damaged or is UTF-16 without a byte-order mark: save it as CSV in UTF-8.")
+        raise _refuse(
+            path, what, "The file is damaged or is UTF-16 without a byte-order mark: save it as CSV in UTF-8."
+        )
 
 
 def read_text(path: Path) -> Decoded:

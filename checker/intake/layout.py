@@ -11,7 +11,7 @@ from checker.intake.headers import HeaderReading, read_header
 from checker.intake.texts import key_of, place, shown
 from checker.intake.unit_words import is_unit_text
 
-__all__ = ["Layout", "find_layout", "header_score"]
+__all__ = ["Layout", "find_layout", "header_score", "line_number_columns"]
 
 ROWS_SEARCHED = 30
 LINE_NUMBER_WEIGHT = 1000
@@ -116,8 +116,10 @@ def _refuse(file: str, row: int, cells: Sequence[str], score: int) -> InputError
     )
 
 
-def _line_column(headers: Sequence[str], hints: Mapping[str, str]) -> int:
-    return next(index for index, cell in enumerate(headers) if _line_number_header(cell, hints))
+def line_number_columns(headers: Sequence[str], hints: Mapping[str, str]) -> list[int]:
+    """Return the columns whose header names the line number; one that the criteria name comes first."""
+    mine = [index for index, cell in enumerate(headers) if _line_number_header(cell, hints)]
+    return sorted(mine, key=lambda index: key_of(headers[index]) not in hints)
 
 
 def find_layout(rows: Sequence[Sequence[str]], *, file: str, hints: Mapping[str, str]) -> Layout:
@@ -141,7 +143,7 @@ def find_layout(rows: Sequence[Sequence[str]], *, file: str, hints: Mapping[str,
     if score < LINE_NUMBER_WEIGHT:
         raise _refuse(file, index + 1, rows[index] if rows else (), score)
     headers = tuple(cell.strip() for cell in rows[index])
-    line_column = _line_column(headers, hints)
+    line_column = line_number_columns(headers, hints)[0]
     notes, follows = [f"Headers in row {index + 1}."], index + 1
     lower = rows[follows] if follows < len(rows) else ()
     blank_beneath = line_column >= len(lower) or not lower[line_column].strip()

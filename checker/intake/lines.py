@@ -17,8 +17,14 @@ from checker.model import Address, IntArray, UnreadItem
 
 __all__ = ["Lines", "find_lines"]
 
-_NO_LINE = re.compile(r"(grand |sub-?\s?)?totals?\b(?!\w)|(sub)?sum\b|page \d+( of \d+)?\s*$|end of (list|table)", re.IGNORECASE)
-_HEADING = re.compile(r"(general )?notes?\b|legend\b|abbreviations?\b|remarks?:|hold list|\(?\d{1,2}[).] \w", re.IGNORECASE)
+_NO_LINE = re.compile(
+    r"(grand |sub-?\s?)?totals?\b(?!\w)|(sub)?sum\b|page \d+( of \d+)?\s*$|end of (list|table)", re.IGNORECASE
+)
+_HEADING = re.compile(
+    r"(general )?notes?\b|legend\b|abbreviations?\b|remarks?:|hold list|\(?\d{1,2}[).] \w", re.IGNORECASE
+)
+_NO_NUMBER = re.compile(r"[-_\u2013\u2014]*$")
+_DOUBTFUL = re.compile("|".join(f"(?:{part.pattern})" for part in (_NO_LINE, _HEADING, _NO_NUMBER)), re.IGNORECASE)
 _BREAKS = re.compile("[\x0b\x0c\x1c-\x1e\x85\u2028\u2029]")
 NAMED_ROWS = 6
 
@@ -91,7 +97,7 @@ def _named(rows: Sequence[int]) -> str:
 
 def _why_no_line(number: str, header: str, columns: Sequence[Sequence[str]], line_column: int, index: int) -> str:
     """Return why a row is no line, empty where it is one."""
-    if not number:
+    if _NO_NUMBER.match(number):
         return "it has no line number, so it is not a line and is not checked."
     if _NO_LINE.match(number):
         return "it is a total or the foot of a page, not a line."
@@ -104,18 +110,10 @@ def _why_no_line(number: str, header: str, columns: Sequence[Sequence[str]], lin
     return ""
 
 
-def _number(text: str) -> str:
-    number = " ".join(text.split())
-    return "" if re.fullmatch(r"[-_\u2013\u2014]*", number) else number
-
-
 def _suspects(numbers: Sequence[str], header: str) -> list[int]:
-    repeated = header.casefold()
-    return [
-        index
-        for index, number in enumerate(numbers)
-        if not number or _NO_LINE.match(number) or _HEADING.match(number) or number.casefold() == repeated
-    ]
+    """Return the indices of rows that may be no lines."""
+    repeated, doubtful = header.casefold(), _DOUBTFUL.match
+    return [index for index, number in enumerate(numbers) if doubtful(number) or number.casefold() == repeated]
 
 
 def _unread(index: int, reason: str, found: _Sorted, file: str, header: str) -> UnreadItem:
@@ -135,7 +133,7 @@ def find_lines(records: Records, layout: Layout, *, file: str, line_column: int)
     found = _sort_rows(records, layout)
     header = layout.headers[line_column]
     columns: tuple[Sequence[str], ...] = tuple(zip(*found.rows, strict=True)) or ((),) * len(layout.headers)
-    numbers = [_number(text) for text in columns[line_column]]
+    numbers = [" ".join(text.split()) for text in columns[line_column]]
     keep = np.ones(len(numbers), dtype=np.bool_)
     unread: list[UnreadItem] = []
     for index in _suspects(numbers, header):
@@ -152,6 +150,7 @@ def find_lines(records: Records, layout: Layout, *, file: str, line_column: int)
                 remedy="Give a list with at least one line; an empty list is never checked as if it were in order.",
             )
         )
+    found.rows.clear()
     return _kept(found, columns, numbers, keep, tuple(unread), line_column)
 
 
@@ -166,7 +165,9 @@ def _kept(
     notes = []
     if found.short:
         notes.append(f"Rows shorter than the header, the rest taken as blank: {_named(found.short)}.")
-    joined = [found.row_numbers[i] for i, text in enumerate(columns[line_column]) if numbers[i] != text.strip() and keep[i]]
+    joined = [
+        found.row_numbers[i] for i, text in enumerate(columns[line_column]) if numbers[i] != text.strip() and keep[i]
+    ]
     if joined:
         notes.append(f"Line numbers with line breaks or runs of blanks, joined by one blank: rows {_named(joined)}.")
     place_of = np.cumsum(keep) - 1

@@ -25,8 +25,12 @@ KINEMATIC, SPECIFIC_GRAVITY = 1, 2
 _SHAPE = re.compile(
     r"([-+]?)\s?((?:\d[\d.,]*|[.,]\d[\d.,]*)(?:[ ']\d{3}(?!\d)[\d.,]*)*)([eE][-+]?\d{1,4}(?!\d))?(.*)", re.DOTALL
 )
-_LIMIT = re.compile(r"(?:[<>~\u2264\u2265\u2248\u00b1=@]|ca\.?\s|approx|abt|about|max|min|up to|less|more)", re.IGNORECASE)
-_SECOND = re.compile(r"(?:[-~/\u00b1x\u00d7&;:]|to\b|\.\.+|and\b|or\b)\s*[-+]?\s*[\d.]|/\s*[A-Za-z]{2,3}$", re.IGNORECASE)
+_LIMIT = re.compile(
+    r"(?:[<>~\u2264\u2265\u2248\u00b1=@]|ca\.?\s|approx|abt|about|max|min|up to|less|more)", re.IGNORECASE
+)
+_SECOND = re.compile(
+    r"(?:[-~/\u00b1x\u00d7&;:]|to\b|\.\.+|and\b|or\b)\s*[-+]?\s*[\d.]|/\s*[A-Za-z]{2,3}$", re.IGNORECASE
+)
 _THOUSANDS = re.compile(r"\d{1,3}(?:[ ']\d{3})+(?:[.,]\d+)?")
 _FLOWS = frozenset({"flow_mass", "flow_volume", "flow_standard"})
 
@@ -87,9 +91,13 @@ def _body(body: str, *, comma: bool, delimiter: str) -> str:
         if not _THOUSANDS.fullmatch(body):
             raise _Refusal("is more than one number: give one value per case.")
         body = body.replace(" ", "").replace("'", "")
-        return body.replace(",", ".") if comma else _with_comma(body, comma=False, delimiter=delimiter) if (
-            "," in body
-        ) else body
+        return (
+            body.replace(",", ".")
+            if comma
+            else _with_comma(body, comma=False, delimiter=delimiter)
+            if ("," in body)
+            else body
+        )
     if "," in body:
         return _with_comma(body, comma=comma, delimiter=delimiter)
     if comma and re.fullmatch(r"[1-9]\d{0,2}\.\d{3}", body):

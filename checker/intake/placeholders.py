@@ -3,13 +3,14 @@
 from __future__ import annotations
 
 import re
-from functools import lru_cache
 
 from checker.model import Gap
 
 __all__ = ["AMBIENT", "ATMOSPHERE", "FULL_VACUUM", "NO_FLOW", "holds", "placeholder", "word_of"]
 
 _HOLD_WORD = re.compile(r"\bHOLDS?\b(?!\s*-?\s*UP\b)|\b(?:TBC|TBA|TBD|TBF)\b", re.IGNORECASE)
+_LETTERS = re.compile(r"[A-Za-z./\s_-]+")
+_DASHES = re.compile(r"[-_\u2010-\u2015\u2212\s]+")
 _HOLD_CELLS = frozenset(
     {
         "vta", "vts", "later", "byvendor", "vendor", "vendortoadvise", "byothers", "tobeconfirmed", "tobeadvised",
@@ -25,17 +26,19 @@ NO_FLOW = frozenset({"nnf", "noflow", "normallynoflow", "nonormalflow"})
 _KEEPS_NONE = frozenset({"fittings", "insulation", "tracing", "test_medium", "remarks", "area", "drawing", "revision"})
 
 
-@lru_cache(maxsize=4096)
 def word_of(text: str) -> str:
     """Return the letters of a cell that holds letters, blanks, dots and strokes only; else an empty text."""
-    if len(text) > 40 or not re.fullmatch(r"[A-Za-z./\s_-]*[A-Za-z][A-Za-z./\s_-]*", text):
+    if len(text) > 40 or not _LETTERS.fullmatch(text):
         return ""
-    return re.sub(r"[^a-z]", "", text.lower())
+    return "".join(filter(str.isalpha, text.lower()))
 
 
 def holds(text: str) -> bool:
     """Return whether a cell carries an open item of the originator."""
-    return _HOLD_WORD.search(text) is not None or word_of(text) in _HOLD_CELLS
+    capitals = text.upper()
+    if ("HOLD" in capitals or "TB" in capitals) and _HOLD_WORD.search(text) is not None:
+        return True
+    return word_of(text) in _HOLD_CELLS
 
 
 def placeholder(text: str, field: str) -> Gap:
@@ -43,7 +46,7 @@ def placeholder(text: str, field: str) -> Gap:
 
     An error value of a spreadsheet (``#N/A``) is no placeholder: it is refused where a number is needed.
     """
-    if not text or re.fullmatch(r"[-_\u2010-\u2015\u2212\s]+", text):
+    if not text or (not text[-1].isalnum() and _DASHES.fullmatch(text)):
         return Gap.BLANK
     if field != "remarks" and holds(text):
         return Gap.HOLD

@@ -92,7 +92,9 @@ def _parse(text: str, delimiter: str, file: str) -> tuple[list[list[str]], dict[
         except csv.Error as error:
             line += len(rows) - counted + sum(map(_newlines, rows[counted:]))
             if "field larger" in str(error):
-                raise _refuse(file, len(rows) + 1, f"a cell is longer than {LONGEST_CELL} characters.", "Shorten it.") from error
+                raise _refuse(
+                    file, len(rows) + 1, f"a cell is longer than {LONGEST_CELL} characters.", "Shorten it."
+                ) from error
             if reader.line_num > line + 1 or "unexpected end" in str(error):
                 what = f"a quotation mark opened in this row (text row {line + 1}) is not closed."
                 raise _refuse(file, len(rows) + 1, what, _CLOSE_QUOTES) from error
@@ -110,7 +112,9 @@ def _refuse_swallowed(rows: Sequence[Sequence[str]], delimiter: str, file: str) 
         breaks = _newlines(row)
         if not breaks:
             continue
-        widest = max(line.count(delimiter) for cell in row if "\n" in cell or "\r" in cell for line in cell.splitlines())
+        widest = max(
+            line.count(delimiter) for cell in row if "\n" in cell or "\r" in cell for line in cell.splitlines()
+        )
         if breaks > MOST_NEWLINES or widest >= max(4, len(rows[0]) - 1):
             what = f"a quotation mark opened in this row swallows {breaks} line breaks: it is not closed in its row."
             raise _refuse(file, index + 1, what, _CLOSE_QUOTES)

@@ -53,7 +53,7 @@ def _refused(text: str, reason: str, basis: str = "") -> SizeReading:
 def _listed(number: float, basis: str, text: str, own: str) -> SizeReading:
     """Return the nominal size of a number on a basis, or a refusal that names the nearest ones."""
     if number <= 0.0:
-        return _refused(text, "is not above zero: a pipe needs a nominal size such as 6\" or DN 150.", own)
+        return _refused(text, 'is not above zero: a pipe needs a nominal size such as 6" or DN 150.', own)
     place = 0 if basis == "NPS" else 1
     for pair in _pairs():
         if pair[place] == number:
@@ -78,7 +78,7 @@ def _in_inches(match: re.Match[str], *, text: str, basis: str, comma: bool) -> S
     if written is not None and "," in written and not comma:
         return _refused(text, "has a decimal comma in a list that is not written with one: write 1.5 or 1 1/2.")
     if written is not None and re.match(r"0\d", written):
-        return _refused(text, "looks like a coded size: write 6\" or DN 150.")
+        return _refused(text, 'looks like a coded size: write 6" or DN 150.')
     marked = bool(match[1] or match[8] or written is None)
     if not marked and not basis and number == int(number):
         return _refused(text, f"could be NPS or DN: {_ASK_BASIS}")
@@ -106,22 +106,22 @@ def read_size(text: str, basis: str, comma: bool) -> SizeReading:
     if gap is not Gap.GIVEN:
         return SizeReading(NAN, gap, "", "")
     if len(plain) > 40:
-        return _refused(text, "is no size: write 6\" or DN 150.")
+        return _refused(text, 'is no size: write 6" or DN 150.')
     dn_match = _DN.fullmatch(plain)
     if dn_match:
         return _listed(float(dn_match[1] or dn_match[2]), "DN", text, "DN")
     if re.fullmatch(r"0\d{2,4}|\d{4}", plain) and basis != "DN":
-        return _refused(text, "looks like a coded size (inches x 100 or mm?): write 6\" or DN 150.")
+        return _refused(text, 'looks like a coded size (inches x 100 or mm?): write 6" or DN 150.')
     if re.fullmatch(r"\d{4}", plain):
         return _listed(float(plain), "DN", text, "")
     match = _INCHES.fullmatch(plain)
     if match:
         return _in_inches(match, text=text, basis=basis, comma=comma)
     if plain.startswith("-"):
-        return _refused(text, "is not above zero: a pipe needs a nominal size such as 6\" or DN 150.")
+        return _refused(text, 'is not above zero: a pipe needs a nominal size such as 6" or DN 150.')
     if _TWO_SIZES.fullmatch(plain):
         return _refused(text, "names two sizes: give one size a row.")
-    return _refused(text, "is no nominal size: write 6\" or DN 150.")
+    return _refused(text, 'is no nominal size: write 6" or DN 150.')
 
 
 def column_basis(cells: Iterable[str], comma: bool) -> str:

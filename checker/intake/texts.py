@@ -30,7 +30,9 @@ def _escaped(character: str) -> str:
 
 def shown(text: str) -> str:
     """Return a text as a message may show it: shortened, and every unprintable character escaped (ESC is ``\\x1b``)."""
-    head = "".join(_escaped(character) for character in text[:LONGEST_SHOWN])
+    head = text[:LONGEST_SHOWN]
+    if not head.isprintable():
+        head = "".join(map(_escaped, head))
     return f"'{head}...' ({len(text)} characters)" if len(text) > LONGEST_SHOWN else f"'{head}'"
 
 

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Sequence
+from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass
 
 from checker.report.charts import Picture
@@ -38,7 +38,7 @@ class Bounds:
 
 NO_BOUND = 10**9
 ON_SCREEN = Bounds(details=500, compact=NO_BOUND, rows=NO_BOUND, names=24)
-ON_PAPER = Bounds(details=200, compact=1_000, rows=2_000, names=60)
+ON_PAPER = Bounds(details=150, compact=500, rows=1_000, names=60)
 
 RECOMMENDATION_STATES = {
     "no comments": "meets",
@@ -69,11 +69,12 @@ class LineExceptions:
 
 @dataclass(frozen=True, slots=True)
 class AssumptionGroup:
-    """One and the same assumption, and every line (with its cases) that it was made for."""
+    """One and the same assumption, and every line that it was made for in the same cases (empty: not by case)."""
 
     field: str
     shown: str
     source: str
+    cases: str
     lines: tuple[str, ...]
     count: int
 
@@ -106,6 +107,7 @@ class View:
     assumptions: tuple[AssumptionGroup, ...]
     results: Sequence[ResultLike]
     inputs: str
+    titles: Mapping[str, str]
 
 
 def build_view(review: ReviewLike, pictures: tuple[Picture, ...], *, paged: bool) -> View:
@@ -127,6 +129,7 @@ def build_view(review: ReviewLike, pictures: tuple[Picture, ...], *, paged: bool
         assumptions=_assumption_groups(review.assumption_items),
         results=review.results().rows,
         inputs=", ".join(source.name for source in review.basis.inputs),
+        titles={summary.rule: summary.title for summary in review.rule_summaries},
     )
 
 
@@ -177,19 +180,13 @@ def _by_line(ranked: Iterable[tuple[int, OutcomeRow]]) -> tuple[LineExceptions, 
 
 
 def _assumption_groups(items: Iterable[AssumptionItem]) -> tuple[AssumptionGroup, ...]:
-    groups: dict[tuple[str, str, str], dict[str, list[str]]] = {}
+    cases_of: dict[tuple[str, str, str, str], list[str]] = {}
     for item in items:
-        lines = groups.setdefault((item.field, item.shown, item.source), {})
-        lines.setdefault(item.line_number, []).append(item.case)
+        cases_of.setdefault((item.field, item.shown, item.source, item.line_number), []).append(item.case)
+    groups: dict[tuple[str, str, str, tuple[str, ...]], list[str]] = {}
+    for (field, shown, source, line), cases in cases_of.items():
+        groups.setdefault((field, shown, source, tuple(cases)), []).append(line)
     return tuple(
-        AssumptionGroup(field, shown, source, _with_cases(lines), sum(map(len, lines.values())))
-        for (field, shown, source), lines in groups.items()
+        AssumptionGroup(field, shown, source, ", ".join(filter(None, cases)), tuple(lines), len(lines) * len(cases))
+        for (field, shown, source, cases), lines in groups.items()
     )
-
-
-def _with_cases(lines: dict[str, list[str]]) -> tuple[str, ...]:
-    named = []
-    for line, cases in lines.items():
-        known = ", ".join(case for case in cases if case)
-        named.append(f"{line} ({known})" if known else line)
-    return tuple(named)

@@ -8,6 +8,7 @@ import pkgutil
 import sys
 from collections.abc import Collection, Iterable, Iterator
 from importlib.metadata import EntryPoint, entry_points
+from itertools import pairwise
 from pathlib import Path
 from types import ModuleType
 
@@ -56,7 +57,9 @@ def _module_from_file(file: Path) -> ModuleType:
     except Exception as error:
         sys.modules.pop(name, None)
         raise ToolFaultError(
-            Problem(f"cannot be loaded: {error!r}.", f"rule module {file.name}", "Mend it or take it out of the folder.")
+            Problem(
+                f"cannot be loaded: {error!r}.", f"rule module {file.name}", "Mend it or take it out of the folder."
+            )
         ) from error
     return module
 
@@ -100,7 +103,7 @@ def load_rules(*, known_fields: Collection[str], folder: Path | None = None) -> 
 
 
 def _twins(rules: list[Rule]) -> Iterator[Problem]:
-    for first, second in zip(rules, rules[1:], strict=False):
+    for first, second in pairwise(rules):
         if first.id == second.id:
             remedy = "Rename one: an id names one rule."
             yield Problem(f"rule id {first.id!r} is used twice.", f"{first.origin} and {second.origin}", remedy)

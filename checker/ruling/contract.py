@@ -157,7 +157,9 @@ def rule(
             remedy = "Use note, should or shall; at most, at least or condition."
             raise ToolFaultError(Problem(f"rule {id!r} has {force=!r}, {sense=!r}.", place, remedy))
         if not source.document.strip():
-            raise ToolFaultError(Problem(f"rule {id!r} has no source.", place, "Name the document or 'common practice'."))
+            raise ToolFaultError(
+                Problem(f"rule {id!r} has no source.", place, "Name the document or 'common practice'.")
+            )
         required, optional = _split(function, id)
         marked = Rule(
             id, title, force, sense, source, calculation, unit, dimension, function, required, optional,

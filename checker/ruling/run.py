@@ -80,11 +80,11 @@ class Judgement:
 def missing_in(held: Any) -> BoolArray:
     """Return where a field has no value: NaN or infinite, a negative code, no text."""
     if isinstance(held, Coded):
-        return held.codes < 0
+        return np.less(held.codes, 0)
     array = np.asarray(held)
     if array.dtype.kind == "f":
         return ~np.isfinite(array)
-    return array < 0 if array.dtype.kind == "i" else np.zeros(array.shape, dtype=np.bool_)
+    return np.less(array, 0) if array.dtype.kind == "i" else np.zeros(array.shape, dtype=np.bool_)
 
 
 def applies_to(rule: Rule, values: Values) -> CodeArray:
@@ -95,7 +95,7 @@ def applies_to(rule: Rule, values: Values) -> CodeArray:
         arguments = {name: values[name] for name in rule.applies_parameters}
         answer = np.asarray(rule.applies(**arguments))
         if answer.dtype.kind == "b":
-            unknown = np.any([missing_in(held) for held in arguments.values()], axis=0, initial=False)
+            unknown = np.stack([missing_in(held) for held in arguments.values()]).any(axis=0)
             answer = np.where(unknown, UNKNOWN, answer)
         states.append(np.broadcast_to(answer, (count,)).astype(np.int8))
     for name in rule.required:
@@ -121,7 +121,9 @@ def _value_and_limit(rule: Rule, values: Values) -> tuple[FloatArray, FloatArray
 def _met(rule: Rule, value: FloatArray, limit: FloatArray) -> BoolArray:
     slack = EQUAL_WITHIN * np.abs(limit)
     with np.errstate(invalid="ignore"):
-        return value >= limit - slack if rule.sense == "at least" else value <= limit + slack
+        return (
+            np.greater_equal(value, limit - slack) if rule.sense == "at least" else np.less_equal(value, limit + slack)
+        )
 
 
 def _utilisation(rule: Rule, value: FloatArray, limit: FloatArray) -> FloatArray:

@@ -94,12 +94,12 @@ def kinetic_energy_factor(reynolds: float, factor: float) -> float:
         return math.nan
     if reynolds < 4000:
         return 2.0
-    n = factor**-0.5
-    return ((n + 1) * (2 * n + 1)) ** 3 / (4 * n**4 * (n + 3) * (2 * n + 3))
+    n = 1 / math.sqrt(factor)
+    return float(((n + 1) * (2 * n + 1)) ** 3 / (4 * n**4 * (n + 3) * (2 * n + 3)))
 
 
 def liquid(pipe: Pipe, flow: float, density: float, viscosity: float) -> Result:
-    """Constant density: everything in closed form; an entrance also takes the kinetic energy from the static pressure."""
+    """Constant density: all in closed form; an entrance also takes the kinetic energy from the static pressure."""
     velocity = flow / (density * pipe.area)
     reynolds = density * velocity * pipe.bore / viscosity
     factor = friction_factor(reynolds, pipe.roughness / pipe.bore)
@@ -134,7 +134,9 @@ def gas(pipe: Pipe, flow: float, density: float, viscosity: float, pressure: flo
     sonic = math.sqrt(k / ratio)
     velocities = [flux / (at * ratio) for at in (pressure, inlet, outlet)]
     return Result(
-        *velocities,
+        velocity_stated_end=velocities[0],
+        velocity_inlet=velocities[1],
+        velocity_outlet=velocities[2],
         density_inlet=inlet * ratio,
         density_outlet=outlet * ratio,
         pressure_gradient=factor / pipe.bore * flux**2 / (2 * inlet * ratio),
@@ -217,11 +219,12 @@ def segment_holdup(pattern: str, share: float, froude: float, velocity_number: f
         "intermittent": (0.845, 0.5351, 0.0173),
         "distributed": (1.065, 0.5824, 0.0609),
     }[pattern]
-    level = max(a * share**b / froude**c, share)
+    level = max(a * math.pow(share, b) / math.pow(froude, c), share)
     if angle == 0 or pattern == "distributed":
         return level
     d, e, f, g = (0.011, -3.768, 3.539, -1.614) if pattern == "segregated" else (2.96, 0.305, -0.4473, 0.0978)
-    strength = max((1 - share) * math.log(d * share**e * velocity_number**f * froude**g), 0.0)
+    logarithm = math.log(d * math.pow(share, e) * math.pow(velocity_number, f) * math.pow(froude, g))
+    strength = max((1 - share) * logarithm, 0.0)
     sine = math.sin(1.8 * angle)
     return level * (1 + strength * (sine - sine**3 / 3))
 
@@ -293,7 +296,9 @@ def two_phase(pipe: Pipe, mixture: Mixture, basis: str) -> Result:
         velocities.append(sum(mixture.at(at, pipe.area)[:2]))
         densities.append(mixture.flow / (velocities[-1] * pipe.area))
     return Result(
-        *velocities,
+        velocity_stated_end=velocities[0],
+        velocity_inlet=velocities[1],
+        velocity_outlet=velocities[2],
         density_inlet=densities[1],
         density_outlet=densities[2],
         pressure_gradient=terms[0][0],

@@ -1,0 +1,215 @@
+"""The command `linelist`: one short function a command."""
+
+from __future__ import annotations
+
+import sys
+from collections.abc import Callable
+from pathlib import Path
+from typing import Any
+
+import click
+
+from checker import __version__
+from checker.errors import LineListError
+
+__all__ = ["main"]
+
+PATH = click.Path(path_type=Path)
+CONTEXT = {"help_option_names": ["-h", "--help"], "max_content_width": 100}
+FAULT_STATUS = 3
+REFUSED_STATUS = 2
+GATE_STATUS = {"no comments": 0, "comments": 0, "revise and resubmit": 1, "incomplete": 1}
+
+
+class _Commands(click.Group):
+    """A group in which every refusal is a sentence and an exit status, never a traceback."""
+
+    def invoke(self, ctx: click.Context) -> Any:
+        try:
+            return super().invoke(ctx)
+        except LineListError as error:
+            for problem in error.problems:
+                click.echo(f"linelist: {_harmless(str(problem))}", err=True)
+            ctx.exit(error.status)
+        except (click.ClickException, click.exceptions.Exit, click.Abort, KeyboardInterrupt):
+            raise
+        except BrokenPipeError:
+            ctx.exit(0)
+        except Exception as error:
+            sentence = f"linelist: a fault in the tool: {type(error).__name__}: {_harmless(str(error))}"
+            click.echo(
+                f"{sentence}\nNothing was judged by this run. Please report it with the list's header row.", err=True
+            )
+            ctx.exit(FAULT_STATUS)
+
+
+def _harmless(text: str) -> str:
+    """Show control characters of a cell as text, so that none reaches a terminal."""
+    return "".join(
+        mark if mark.isprintable() or mark == "\n" else mark.encode("unicode_escape").decode() for mark in text
+    )
+
+
+def _progress(quiet: bool) -> Callable[[str], None]:
+    def say(sentence: str) -> None:
+        if not quiet:
+            click.echo(f"... {sentence}", err=True)
+
+    return say
+
+
+def _inputs(command: Callable[..., None]) -> Callable[..., None]:
+    """Add the options that every command on a list shares."""
+    options = (
+        click.option("--criteria", type=PATH, help="Criteria file (TOML). Without one: the bundled default criteria."),
+        click.option("--classes", type=PATH, help="Class file (CSV): schedule, wall and material by class and size."),
+        click.option("--deviations", type=PATH, help="Approved deviations (CSV)."),
+        click.option("--rules", type=PATH, help="Folder of further rule modules."),
+        click.option("--quiet", is_flag=True, help="Say nothing but the answer."),
+    )
+    for option in reversed(options):
+        command = option(command)
+    return click.argument("line_list", metavar="LIST", type=PATH)(command)
+
+
+def _reviewed(line_list: Path, options: dict[str, Any], say: Callable[[str], None]) -> Any:
+    from checker.review import review
+
+    say(f"reading and checking {_harmless(line_list.name)}")
+    return review(line_list, **options)
+
+
+@click.group(cls=_Commands, context_settings=CONTEXT)
+@click.version_option(__version__, prog_name="linelist")
+def main() -> None:
+    """Check a contractor's piping line list: hydraulics, criteria, outcomes, exception report.
+
+    \b
+    Example:
+      linelist review list.csv --criteria criteria.toml --classes classes.csv
+
+    A screening check. It does not replace the codes in force, hazard studies and the judgement of a
+    licensed engineer; local codes prevail.
+    """
+
+
+@main.command()
+@_inputs
+@click.option("--out", type=PATH, help="Folder for the files. Without it: review/ beside the list.")
+def review(line_list: Path, out: Path | None, quiet: bool, **options: Any) -> None:
+    """Read LIST, compute, check, and write the report.
+
+    \b
+    Example:
+      linelist review list.csv --criteria criteria.toml --classes classes.csv --out review/
+    """
+    from checker.report.terminal import summary
+    from checker.report.write import write_report
+    from checker.review import require_no_fault
+
+    say = _progress(quiet)
+    done = _reviewed(line_list, options, say)
+    files = write_report(done, out or line_list.parent / "review", progress=say)
+    click.echo(summary(done, files))
+    require_no_fault(done)
+
+
+@main.command()
+@_inputs
+@click.option("--json", "json_file", type=PATH, help="Also write outcomes.json to this file.")
+def gate(line_list: Path, json_file: Path | None, quiet: bool, **options: Any) -> None:
+    """Check LIST for CI: no report, the exit status is the answer.
+
+    \b
+    0  no comments, or comments
+    1  revise and resubmit, or incomplete
+    2  the input or the call cannot be used
+    3  a fault in the tool or in a rule
+
+    \b
+    Example:
+      linelist gate list.csv --criteria criteria.toml --classes classes.csv --json outcomes.json
+    """
+    from checker.review import require_no_fault
+
+    done = _reviewed(line_list, options, lambda sentence: None)
+    if json_file is not None:
+        from checker.report.atomic import write_text
+        from checker.report.json_file import outcomes_json
+
+        write_text(json_file, outcomes_json(done))
+    click.echo(f"{done.coverage_text}\n{done.recommendation_text}")
+    if not quiet:
+        click.echo("\n".join(f"  {reason}" for reason in done.reasons))
+    require_no_fault(done)
+    sys.exit(GATE_STATUS[done.recommendation])
+
+
+@main.command()
+@_inputs
+@click.argument("line_number", metavar="LINE")
+def calculation(line_list: Path, line_number: str, quiet: bool, **options: Any) -> None:
+    """Print the calculation sheet of one LINE of LIST.
+
+    \b
+    Example:
+      linelist calculation list.csv '6"-CWS-1203-B1A' --classes classes.csv
+    """
+    from checker.report.calculation_sheet import calculation_sheet
+    from checker.review import require_no_fault
+
+    done = _reviewed(line_list, options, lambda sentence: None)
+    click.echo(calculation_sheet(done, line_number))
+    require_no_fault(done)
+
+
+@main.command()
+@click.argument("rule_id", metavar="[ID]", required=False)
+@click.option("--rules", "folder", type=PATH, help="Folder of further rule modules.")
+def rules(rule_id: str | None, folder: Path | None) -> None:
+    """List every rule, or print one in full.
+
+    \b
+    Example:
+      linelist rules npsh-margin
+    """
+    from checker.evaluation import known_fields
+    from checker.report.catalogue_text import all_rules_text, one_rule_text
+    from checker.ruling.catalogue import load_rules
+
+    found = load_rules(known_fields=known_fields(), folder=folder)
+    click.echo(all_rules_text(found) if rule_id is None else one_rule_text(found, rule_id))
+
+
+@main.command()
+def fields() -> None:
+    """List every field: header spellings understood, units, meaning.
+
+    \b
+    Example:
+      linelist fields
+    """
+    from checker.report.catalogue_text import fields_text
+
+    click.echo(fields_text())
+
+
+@main.command()
+@click.argument("folder", metavar="DIR", type=PATH)
+def template(folder: Path) -> None:
+    """Write a blank list, criteria, class file and deviations to begin from into DIR.
+
+    Files that are there already are left alone, and named.
+
+    \b
+    Example:
+      linelist template new_project/
+    """
+    from checker.report.templates_out import write_templates
+
+    for sentence in write_templates(folder):
+        click.echo(_harmless(sentence))
+
+
+if __name__ == "__main__":
+    main()

@@ -1,0 +1,228 @@
+"""From converted columns to line cases: what holds for all cases, what belongs to one, and what is composite."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass, field
+
+import numpy as np
+
+from checker.fields import Field
+from checker.intake.case_names import canonical_case, case_kind
+from checker.intake.columns import PlannedColumn
+from checker.intake.convert import ConvertedNumbers, ConvertedTexts
+from checker.intake.number_cells import KINEMATIC, SPECIFIC_GRAVITY
+from checker.intake.texts import place, shown
+from checker.model import BoolArray, CaseKind, CodeArray, Coded, FloatArray, Gap, IntArray
+
+__all__ = ["Assembly", "assemble"]
+
+FLOWS = ("flow_mass", "flow_volume", "flow_standard")
+STATE_FIELDS = frozenset(
+    {
+        "pressure", "temperature", "density", "viscosity", "vapour_fraction", "compressibility", "liquid_density",
+        "liquid_viscosity", "vapour_density", "vapour_viscosity",
+    }
+)  # fmt: skip
+DENSITY_OF = {"viscosity": "density", "liquid_viscosity": "liquid_density", "vapour_viscosity": "vapour_density"}
+Converted = ConvertedNumbers | ConvertedTexts
+
+
+@dataclass
+class Assembly:
+    """Arrays over the line cases, as `checker.model.LineList` holds them."""
+
+    file: str
+    rows: IntArray
+    line: IntArray
+    case: Coded
+    case_kind: CodeArray
+    composite: BoolArray
+    numbers: dict[str, FloatArray] = field(default_factory=dict)
+    texts: dict[str, Coded] = field(default_factory=dict)
+    gaps: dict[str, CodeArray] = field(default_factory=dict)
+    refusals: dict[tuple[str, int], str] = field(default_factory=dict)
+
+
+@dataclass(frozen=True)
+class _Grid:
+    """Lines by cases: a line case is `line * cases + case`."""
+
+    lines: int
+    cases: tuple[str, ...]
+    rows: IntArray
+    file: str
+
+
+def _column_for(columns: Sequence[PlannedColumn], case: str) -> PlannedColumn | None:
+    """Return the column of a field that holds for a case: the one that names it, else the one that names none."""
+    return next((c for c in columns if c.case == case), next((c for c in columns if not c.case), None))
+
+
+def _refusal_texts(column: PlannedColumn, converted: Converted, grid: _Grid, case: int, into: Assembly) -> None:
+    step, name = len(grid.cases), column.field.name
+    whole = converted.column_refusal if isinstance(converted, ConvertedNumbers) else ""
+    if whole:
+        sentence = f"{place(grid.file, None, column.header)}: {whole}"
+        mine = np.flatnonzero(converted.gaps == Gap.REFUSED) * step + case
+        into.refusals.update(dict.fromkeys(((name, index) for index in mine.tolist()), sentence))
+    file, header, rows = place(grid.file), shown(column.header), grid.rows.tolist() if converted.reasons else []
+    for line, reason in converted.reasons.items():
+        into.refusals[name, line * step + case] = f"{file}, row {rows[line]}, column {header}: {reason}"
+
+
+def _spread_numbers(
+    field_: Field,
+    columns: Sequence[PlannedColumn],
+    converted: Mapping[int, Converted],
+    grid: _Grid,
+    into: Assembly,
+) -> CodeArray:
+    """Write a number field over the line cases; return what its values still rest on."""
+    shape = (grid.lines, len(grid.cases))
+    values, gaps = np.full(shape, np.nan), np.full(shape, Gap.BLANK, dtype=np.int8)
+    rests_on = np.zeros(shape, dtype=np.int8)
+    for position, case in enumerate(grid.cases):
+        column = _column_for(columns, case)
+        if column is None:
+            gaps[:, position] = Gap.NOT_APPLICABLE if field_.one_case else Gap.BLANK
+            continue
+        mine = converted[column.index]
+        assert isinstance(mine, ConvertedNumbers)
+        values[:, position], gaps[:, position] = mine.values, mine.gaps
+        if mine.rests_on is not None:
+            rests_on[:, position] = mine.rests_on
+        _refusal_texts(column, mine, grid, position, into)
+    into.numbers[field_.name], into.gaps[field_.name] = values.ravel(), gaps.ravel()
+    return rests_on.ravel()
+
+
+def _spread_texts(column: PlannedColumn, converted: Converted, grid: _Grid, into: Assembly) -> None:
+    assert isinstance(converted, ConvertedTexts)
+    step = len(grid.cases)
+    into.texts[column.field.name] = Coded(np.repeat(converted.coded.codes, step), converted.coded.texts)
+    into.gaps[column.field.name] = np.repeat(converted.gaps, step)
+    for position in range(step):
+        _refusal_texts(column, converted, grid, position, into)
+
+
+def _refuse(name: str, indices: IntArray, reason: str, columns: Sequence[PlannedColumn], into: Assembly) -> None:
+    into.numbers[name][indices] = np.nan
+    into.gaps[name][indices] = Gap.REFUSED
+    for index in indices.tolist():
+        column = _column_for(columns, into.case.text(index)) or columns[0]
+        where = place(into.file, int(into.rows[into.line[index]]), column.header)
+        into.refusals[name, index] = f"{where}: {reason}"
+
+
+def _with_density(name: str, rests_on: CodeArray, columns: Sequence[PlannedColumn], into: Assembly) -> None:
+    """Turn kinematic viscosities into dynamic ones with the density of the same line case."""
+    mine = (rests_on == KINEMATIC) & (into.gaps[name] == Gap.GIVEN)
+    if not mine.any():
+        return
+    density = into.numbers.get(DENSITY_OF[name], np.full(mine.shape, np.nan))
+    into.numbers[name][mine] *= density[mine]
+    reason = f"a kinematic viscosity needs the {DENSITY_OF[name].replace('_', ' ')} of the same row."
+    _refuse(name, np.flatnonzero(mine & ~np.isfinite(density)).astype(np.int32), reason, columns, into)
+
+
+def _water_or_air(name: str, rests_on: CodeArray, columns: Sequence[PlannedColumn], into: Assembly) -> None:
+    """Refuse a specific gravity wherever the fluid is not stated to be liquid."""
+    phase = into.texts.get("phase")
+    liquid = (
+        phase.where([text == "liquid" for text in phase.texts]) if phase is not None else np.zeros(rests_on.shape, bool)
+    )
+    liquid = liquid | (name == "liquid_density")
+    wrong = (rests_on == SPECIFIC_GRAVITY) & (into.gaps[name] == Gap.GIVEN) & ~liquid
+    reason = "a specific gravity may stand on water or on air where the phase is not liquid: give the density in kg/m3."
+    _refuse(name, np.flatnonzero(wrong).astype(np.int32), reason, columns, into)
+
+
+def _no_flow(into: Assembly) -> BoolArray:
+    """Return where every flow that is not blank is zero, and at least one is."""
+    zero = np.zeros(into.line.shape, dtype=np.bool_)
+    other = zero.copy()
+    for name in FLOWS:
+        if name in into.numbers:
+            zero |= into.numbers[name] == 0.0
+            other |= (into.numbers[name] > 0.0) | np.isin(into.gaps[name], (Gap.HOLD, Gap.REFUSED))
+    return zero & ~other
+
+
+def _case_codes(case_column: Coded | None, cases: Sequence[str], lines: int) -> Coded:
+    if case_column is None:
+        return Coded(np.tile(np.arange(len(cases), dtype=np.int32), lines), tuple(cases))
+    names = [canonical_case(text) or text for text in case_column.texts]
+    codes: dict[str, int] = {}
+    table = np.array([*(codes.setdefault(name, len(codes)) for name in names), -1], dtype=np.int32)
+    return Coded(table[case_column.codes], tuple(codes))
+
+
+def _composite(columns: Mapping[str, Sequence[PlannedColumn]], cases: Sequence[str], lines: int) -> BoolArray:
+    """Return where a case has a flow of its own beside a shared pressure, temperature or property."""
+
+    def own(names: Sequence[str], case: str) -> bool:
+        return any(column.case == case for name in names for column in columns.get(name, ()))
+
+    def shared(name: str, case: str) -> bool:
+        column = _column_for(columns.get(name, ()), case)
+        return column is not None and not column.case
+
+    mixed = [
+        len(cases) > 1 and case != "normal" and own(FLOWS, case) and any(shared(name, case) for name in STATE_FIELDS)
+        for case in cases
+    ]
+    return np.tile(np.array(mixed, dtype=np.bool_), lines)
+
+
+def _kinds(case: Coded, no_flow: BoolArray) -> CodeArray:
+    table = np.array([*(case_kind(name) for name in case.texts), CaseKind.UNKNOWN], dtype=np.int8)
+    kinds: CodeArray = table[case.codes]
+    kinds[no_flow & (kinds != CaseKind.UNKNOWN) & (kinds != CaseKind.MECHANICAL_ONLY)] = CaseKind.NO_FLOW
+    return kinds
+
+
+def assemble(
+    columns: Sequence[PlannedColumn],
+    converted: Mapping[int, Converted],
+    *,
+    cases: Sequence[str],
+    rows: IntArray,
+    file: str,
+) -> Assembly:
+    """Spread the columns over the line cases.
+
+    Parameters
+    ----------
+    columns : sequence of PlannedColumn
+        Columns read.
+    converted : mapping of int to converted column
+        Their values, one a line, by index of the column.
+    cases : sequence of str
+        Cases that columns name; empty where a case column or nothing names them.
+    rows : int array, shape (lines,)
+        Row of each line.
+    file : str
+        Name of the file, for the sentences of refusals.
+    """
+    grid = _Grid(rows.size, tuple(cases) or ("normal",), rows, file)
+    by_field: dict[str, list[PlannedColumn]] = {}
+    for column in columns:
+        by_field.setdefault(column.field.name, []).append(column)
+    case_column = next((converted[column.index] for column in by_field.get("case", ())), None)
+    case = _case_codes(case_column.coded if isinstance(case_column, ConvertedTexts) else None, grid.cases, grid.lines)
+    line = np.repeat(np.arange(grid.lines, dtype=np.int32), len(grid.cases))
+    composite = _composite(by_field, grid.cases, grid.lines)
+    into = Assembly(file, rows, line, case, np.zeros(line.shape, dtype=np.int8), composite)
+    rests_on = {}
+    for name, mine in by_field.items():
+        if mine[0].field.kind == "text":
+            _spread_texts(mine[0], converted[mine[0].index], grid, into)
+        else:
+            rests_on[name] = _spread_numbers(mine[0].field, mine, converted, grid, into)
+    for name in (name for name in rests_on if name.endswith("density")):
+        _water_or_air(name, rests_on[name], by_field[name], into)
+    for name in (name for name in rests_on if name in DENSITY_OF):
+        _with_density(name, rests_on[name], by_field[name], into)
+    into.case_kind = _kinds(case, _no_flow(into))
+    return into

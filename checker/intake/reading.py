@@ -1,0 +1,251 @@
+"""`read_line_list`: a CSV file becomes a `LineList`."""
+
+from __future__ import annotations
+
+import gc
+from collections.abc import Iterator, Mapping, Sequence
+from contextlib import contextmanager
+from pathlib import Path
+
+import numpy as np
+
+from checker.criteria.hints import ColumnHint
+from checker.errors import InputError, Problem
+from checker.intake.assemble import Assembly, Converted, assemble
+from checker.intake.columns import Plan, PlannedColumn, hint_fields, plan_columns
+from checker.intake.convert import ConvertedNumbers, convert_numbers, convert_sizes, convert_texts
+from checker.intake.decoding import Decoded, read_text
+from checker.intake.layout import Layout, find_layout, line_number_columns
+from checker.intake.lines import Lines, find_lines
+from checker.intake.records import Records, read_records
+from checker.intake.texts import place, shown
+from checker.model import Address, Column, Gap, HoldItem, LineList, Source, UnreadItem
+from checker.units import STANDARD_ATMOSPHERE
+
+__all__ = ["read_line_list"]
+
+
+@contextmanager
+def _no_collection() -> Iterator[None]:
+    """Keep the garbage collector from walking millions of cells while they are read."""
+    enabled = gc.isenabled()
+    gc.disable()
+    try:
+        yield
+    finally:
+        if enabled:
+            gc.enable()
+
+
+def read_line_list(
+    path: Path,
+    *,
+    units: Mapping[str, str] | None = None,
+    columns: Mapping[str, ColumnHint] | None = None,
+    atmosphere: float = STANDARD_ATMOSPHERE,
+) -> LineList:
+    """Read a line list from a CSV file.
+
+    Every number becomes SI, every value keeps its address, and nothing is guessed: a value without a unit, a pressure
+    that says neither gauge nor absolute, or a cell with two readings is refused with a sentence. The file is only read.
+
+    Parameters
+    ----------
+    path : Path
+        The file.
+    units : mapping of str to str, optional
+        Unit by dimension, and the basis of nominal sizes by ``size``, for columns that state none.
+    columns : mapping of str to ColumnHint, optional
+        What the criteria say of single headers, by header; wins over the header itself.
+    atmosphere : float, optional
+        The site's atmospheric pressure, Pa, on which gauge pressures rest.
+
+    Returns
+    -------
+    LineList
+        Lines, line cases, values in SI, gaps, refusals, the HOLD register and what was not read.
+
+    Raises
+    ------
+    InputError
+        If the file cannot be read, holds no table, no line-number column, no line, two columns for one field, or not
+        one value besides the line numbers.
+    """
+    hints = columns or {}
+    with _no_collection():
+        decoded = read_text(Path(path))
+        file = Path(path).name
+        fields = hint_fields(hints)
+        records = read_records(decoded.text, file=file, hints=fields)
+        layout = find_layout(records.rows, file=file, hints=fields)
+        _refuse_damaged_header(records, layout, file)
+        return _read(decoded, records, layout, file, hints, units or {}, atmosphere)
+
+
+def _refuse_damaged_header(records: Records, layout: Layout, file: str) -> None:
+    above = [index for index in records.damaged if index < layout.header_row]
+    if above:
+        raise InputError(
+            Problem(
+                f"quotation marks contradict each other in {shown(records.damaged[above[0]])}.",
+                where=place(file, above[0] + 1),
+                remedy='Double a quotation mark inside a quoted cell (6"" for 6").',
+            )
+        )
+
+
+def _read(
+    decoded: Decoded,
+    records: Records,
+    layout: Layout,
+    file: str,
+    hints: Mapping[str, ColumnHint],
+    units: Mapping[str, str],
+    atmosphere: float,
+) -> LineList:
+    line_column = _line_column(layout, hints)
+    lines = find_lines(records, layout, file=file, line_column=line_column)
+    records.rows.clear()
+    plan = plan_columns(layout, lines.columns, file=file, hints=hints, units=units, comma=records.comma)
+    converted = {
+        column.index: _converted(column, lines.columns[column.index], records, atmosphere) for column in plan.columns
+    }
+    for column in plan.columns:
+        _refuse_broken(converted[column.index], column, lines.broken)
+    read = [column for column in plan.columns if column.field.name != "line_number"]
+    _refuse_if_nothing(read, converted, file, layout)
+    assembly = assemble(read, converted, cases=plan.cases, rows=lines.row, file=file)
+    return _line_list(decoded, records, layout, file, lines, plan, converted, assembly)
+
+
+def _line_column(layout: Layout, hints: Mapping[str, ColumnHint]) -> int:
+    """Return the line-number column; that it is the only one is seen when the columns are planned."""
+    return line_number_columns(layout.headers, hint_fields(hints))[0]
+
+
+def _converted(column: PlannedColumn, cells: Sequence[str], records: Records, atmosphere: float) -> Converted:
+    if column.field.kind == "text":
+        return convert_texts(cells, column.field)
+    if column.field.kind == "size":
+        return convert_sizes(cells, column, comma=records.comma)
+    return convert_numbers(cells, column, atmosphere=atmosphere, delimiter=records.delimiter, comma=records.comma)
+
+
+def _refuse_broken(converted: Converted, column: PlannedColumn, broken: Mapping[int, str]) -> None:
+    """Refuse every value of the rows whose cells may have moved."""
+    if not broken or column.field.name == "line_number":
+        return
+    indices = list(broken)
+    converted.gaps[indices] = Gap.REFUSED
+    if isinstance(converted, ConvertedNumbers):
+        converted.values[indices] = np.nan
+    else:
+        converted.coded.codes[indices] = -1
+    converted.reasons.update(broken)
+    converted.holds[:] = [index for index in converted.holds if index not in broken]
+
+
+def _refuse_if_nothing(
+    columns: Sequence[PlannedColumn], converted: Mapping[int, Converted], file: str, layout: Layout
+) -> None:
+    numbers = [column for column in columns if column.field.kind != "text"]
+    if any(bool((converted[column.index].gaps == Gap.GIVEN).any()) for column in numbers):
+        return
+    problems = [
+        Problem(
+            "not one number of the list could be read, so nothing can be checked.",
+            where=place(file, layout.header_row),
+            remedy="`linelist fields` shows the headers and units understood.",
+        )
+    ]
+    for column in numbers:
+        mine = converted[column.index]
+        reason = mine.column_refusal if isinstance(mine, ConvertedNumbers) else ""
+        reason = reason or next(iter(mine.reasons.values()), "")
+        if reason:
+            problems.append(Problem(reason, where=place(file, None, column.header)))
+    raise InputError(problems)
+
+
+def _holds(plan: Plan, converted: Mapping[int, Converted], lines: Lines, file: str) -> tuple[HoldItem, ...]:
+    found = [(index, column) for column in plan.columns for index in converted[column.index].holds]
+    return tuple(
+        HoldItem(
+            lines.numbers[index],
+            column.field.name,
+            lines.columns[column.index][index].strip(),
+            Address(file, int(lines.row[index]), column.header),
+        )
+        for index, column in sorted(found, key=lambda item: (item[0], item[1].index))
+    )
+
+
+def _unread(
+    plan: Plan, converted: Mapping[int, Converted], lines: Lines, layout: Layout, file: str
+) -> list[UnreadItem]:
+    """Return the refused headers, rows and cells, each with its sentence."""
+    items = list(lines.unread)
+    for column in plan.columns:
+        mine = converted[column.index]
+        if isinstance(mine, ConvertedNumbers) and mine.column_refusal:
+            address = Address(file, layout.header_row, column.header)
+            items.append(UnreadItem("", column.header, mine.column_refusal, address))
+        cells = lines.columns[column.index]
+        items.extend(
+            UnreadItem(lines.numbers[index], cells[index], reason, Address(file, int(lines.row[index]), column.header))
+            for index, reason in mine.reasons.items()
+            if index not in lines.broken
+        )
+    header = layout.headers[next(column.index for column in plan.columns if column.field.name == "line_number")]
+    items.extend(
+        UnreadItem(lines.numbers[index], lines.numbers[index], reason, Address(file, int(lines.row[index]), header))
+        for index, reason in lines.broken.items()
+    )
+    return sorted(items, key=lambda item: item.address.row)
+
+
+def _notes(
+    records: Records, decoded: Decoded, layout: Layout, lines: Lines, plan: Plan, assembly: Assembly
+) -> list[str]:
+    notes = [*decoded.notes, *records.notes, *layout.notes, *plan.notes, *lines.notes]
+    if bool(assembly.composite.any()):
+        codes = np.unique(assembly.case.codes[assembly.composite])
+        names = ", ".join(assembly.case.texts[int(code)] for code in codes)
+        notes.append(
+            f"Composite cases (their own flow beside pressure, temperature or properties of all cases): {names}."
+        )
+    return notes
+
+
+def _line_list(
+    decoded: Decoded,
+    records: Records,
+    layout: Layout,
+    file: str,
+    lines: Lines,
+    plan: Plan,
+    converted: Mapping[int, Converted],
+    assembly: Assembly,
+) -> LineList:
+    form = " ".join([*decoded.notes, *records.notes])
+    return LineList(
+        source=Source(file, decoded.sha256, form),
+        columns=tuple(
+            Column(column.field.name, column.header, column.case, column.unit, lines.columns[column.index])
+            for column in plan.columns
+        ),
+        unmatched=plan.unmatched,
+        notes=tuple(_notes(records, decoded, layout, lines, plan, assembly)),
+        line_number=lines.numbers,
+        row=lines.row,
+        line=assembly.line,
+        case=assembly.case,
+        case_kind=assembly.case_kind,
+        composite=assembly.composite,
+        numbers=assembly.numbers,
+        texts=assembly.texts,
+        gaps=assembly.gaps,
+        refusals=assembly.refusals,
+        holds=_holds(plan, converted, lines, file),
+        unread=tuple(_unread(plan, converted, lines, layout, file)),
+    )

@@ -1,0 +1,1 @@
+"""Pipe data: dimensions by nominal size and schedule, roughness by material."""

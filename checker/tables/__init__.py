@@ -1,0 +1,1 @@
+"""Tables of published values, CSV, beside their reader."""
