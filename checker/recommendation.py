@@ -51,7 +51,7 @@ def recommend(judgement: Judgement, *, gross_factor: float, coverage_minimum: fl
     coverage_minimum : float
         Least share of applicable outcomes that must have been checked.
     open_items : int
-        HOLDs, refused cells, assumptions, stale deviations: anything else left to say.
+        HOLDs, refused cells, assumptions, unmatched services, stale deviations: anything else left to say.
     """
     unmet = judgement.outcome == Outcome.DOES_NOT_MEET
     shall = int((unmet & (judgement.force == SHALL)).sum())
@@ -70,7 +70,9 @@ def recommend(judgement: Judgement, *, gross_factor: float, coverage_minimum: fl
     remarks = [
         f"{_plural(other, 'other outcome')} not met" if other else "",
         f"{_plural(unchecked, 'outcome')} not checked" if unchecked else "",
-        f"{_plural(open_items, 'open item')} (HOLDs, refused cells, assumptions)" if open_items else "",
+        f"{_plural(open_items, 'open item')} (HOLDs, refused cells, assumptions, services not matched)"
+        if open_items
+        else "",
     ]
     reasons = tuple(text for text in (*revise, incomplete, *remarks) if text)
     if any(revise):

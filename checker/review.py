@@ -25,7 +25,7 @@ from checker.model import HoldItem, Source, UnreadItem
 from checker.not_checked import not_checked_groups
 from checker.outcome_rows import outcome_row
 from checker.recommendation import Recommendation, recommend
-from checker.review_basis import assumption_items, basis_of, rule_summaries, service_matches
+from checker.review_basis import UNMATCHED_WORDS, assumption_items, basis_of, rule_summaries, service_matches
 from checker.review_model import (
     AssumptionItem,
     Basis,
@@ -427,7 +427,7 @@ def evaluate(values: Values, rules: tuple[Rule, ...], *, approvals: DeviationFil
         judgement,
         gross_factor=values.criteria.gross_factor,
         coverage_minimum=values.criteria.coverage_minimum,
-        open_items=len(line_list.holds) + len(line_list.unread) + stale + assumed,
+        open_items=len(line_list.holds) + len(line_list.unread) + stale + assumed + unmatched,
     )
     return Review(values, judgement, recommended, applied)
 

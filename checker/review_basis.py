@@ -16,8 +16,9 @@ from checker.ruling.contract import Outcome
 from checker.ruling.run import Judgement
 from checker.shown import shown_number
 
-__all__ = ["assumption_items", "basis_of", "rule_summaries", "service_matches"]
+__all__ = ["UNMATCHED_WORDS", "assumption_items", "basis_of", "rule_summaries", "service_matches"]
 
+UNMATCHED_WORDS = "(general row: nothing matched)"
 _PACKAGES = ("linelist-checker", "numpy")
 _METHODS = (
     ("Engineering Bernoulli balance", "energy of each line case", "Bird, Stewart, Lightfoot, Transport Phenomena, 7.4"),
@@ -129,6 +130,6 @@ def service_matches(values: Values) -> tuple[ServiceMatch, ...]:
         lines = np.unique(values.line_list.line[mine]).size
         for found in np.unique(codes[mine]):
             general = found >= 0 and values.criteria.services[int(found)].general
-            word = f"{names[int(found)]} (general row: nothing matched)" if general else names[int(found)]
+            word = f"{names[int(found)]} {UNMATCHED_WORDS}" if general else names[int(found)]
             matches.append(ServiceMatch(text, word, int(lines)))
     return tuple(sorted(matches, key=lambda match: match.written.casefold()))

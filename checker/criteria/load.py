@@ -22,11 +22,15 @@ __all__ = ["DEFAULT", "load_criteria"]
 DEFAULT = Path(__file__).parent / "default.toml"
 
 
-def _read(document: dict[str, Any], file: str) -> tuple[Settings, tuple[Service, ...], ProblemList]:
+def _read(
+    document: dict[str, Any], file: str, *, shape_is_good: bool
+) -> tuple[Settings, tuple[Service, ...], ProblemList]:
     """Return what a document says, and everything in its values that is wrong."""
     problems = ProblemList(file, document)
     settings = read_settings(document, problems)
-    services = read_services(document.get("service"), problems, atmosphere=settings.atmosphere)
+    services = read_services(
+        document.get("service"), problems, atmosphere=settings.atmosphere, shape_is_good=shape_is_good
+    )
     return settings, services, problems
 
 
@@ -34,7 +38,7 @@ def _checked(document: dict[str, Any], file: str) -> None:
     """Raise every problem of a project's own file at once."""
     structure = ProblemList(file, document)
     report_structure(document, structure)
-    *_, values = _read(document, file)
+    *_, values = _read(document, file, shape_is_good=not structure.problems)
     problems = structure.problems + values.problems
     if problems:
         raise InputError(problems)
@@ -66,7 +70,7 @@ def _criteria(
 
 def _read_good(document: dict[str, Any], file: str) -> tuple[Settings, tuple[Service, ...]]:
     """Return what a document says that was checked before, or the bundled default."""
-    settings, services, problems = _read(document, file)
+    settings, services, problems = _read(document, file, shape_is_good=True)
     if problems.problems:
         raise ToolFaultError(problems.problems)
     return settings, services

@@ -97,15 +97,17 @@ def _limit(
     )
 
 
+def _well_shaped(raw: Mapping[str, Any]) -> dict[str, Any]:
+    """Return a service's keys without the limits whose shape is wrong; the schema speaks of those."""
+    shapes = criteria_schema()["$defs"]["service"]["properties"]
+    return {key: value for key, value in raw.items() if key not in LIMIT_DIMENSION or conforms(value, shapes[key])}
+
+
 def _limits(
     raw: Mapping[str, Any], path: Sequence[PathPart], problems: ProblemList, atmosphere: float
 ) -> dict[str, Limit]:
-    """Return every limit of a service whose shape can be read; the schema has spoken of the others."""
-    shapes = criteria_schema()["$defs"]["service"]["properties"]
     limits = {
-        key: _limit(key, raw[key], raw, [*path, key], problems, atmosphere)
-        for key in LIMIT_DIMENSION
-        if key in raw and conforms(raw[key], shapes[key])
+        key: _limit(key, raw[key], raw, [*path, key], problems, atmosphere) for key in LIMIT_DIMENSION if key in raw
     }
     return {key: limit for key, limit in limits.items() if limit is not None}
 
@@ -183,7 +185,9 @@ def _check_unique(services: Sequence[Service], problems: ProblemList) -> None:
             problems.add(["service", index, "general"], what, "Mark one row of each phase general.")
 
 
-def read_services(raw: object, problems: ProblemList, *, atmosphere: float) -> tuple[Service, ...]:
+def read_services(
+    raw: object, problems: ProblemList, *, atmosphere: float, shape_is_good: bool = False
+) -> tuple[Service, ...]:
     """Return the services of a document and note everything that is wrong with them.
 
     Parameters
@@ -192,11 +196,11 @@ def read_services(raw: object, problems: ProblemList, *, atmosphere: float) -> t
         The `service` entry of the document; parts whose shape is wrong are passed over, the schema speaks of them.
     atmosphere : float
         Atmospheric pressure of the site, Pa: gauge pressures of bands rest on it.
+    shape_is_good : bool
+        True for a document that is known to fit the schema: looking again costs time at every start.
     """
-    tables = raw if isinstance(raw, list) else []
-    services = tuple(
-        _service(table if isinstance(table, dict) else {}, ["service", index], problems, atmosphere)
-        for index, table in enumerate(tables)
-    )
+    tables = [table if isinstance(table, dict) else {} for table in raw] if isinstance(raw, list) else []
+    tables = tables if shape_is_good else [_well_shaped(table) for table in tables]
+    services = tuple(_service(table, ["service", index], problems, atmosphere) for index, table in enumerate(tables))
     _check_unique(services, problems)
     return services

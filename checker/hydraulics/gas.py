@@ -171,7 +171,7 @@ def outlet_from_inlet(
     )
     line = _line(first, flux, energy, loss, rise, alpha)
     limit = _path_to_choking(line)
-    reaches = (limit >= 1.0) & (_inlet_residual(limit, line)[0] >= 0.0) | ~(line.slope > 0.0)
+    reaches = (limit >= 1.0) & (_inlet_residual(limit, line)[0] >= 0.0) | np.isinf(limit)
     valid = np.isfinite(line.slope) & np.isfinite(line.kinetic)
     choked = valid & ~(reaches & (line.known >= line.kinetic))
     path = _solve(np.where(valid & ~choked, 1.0, np.nan), limit, line, from_inlet=True)

@@ -54,7 +54,7 @@ def solve_liquid(cases: Cases) -> Results:
     factor = friction_factor(reynolds=number, relative_roughness=cases.roughness / bore)
     alpha = kinetic_energy_factor(reynolds=number, friction_factor=factor)
     gradient = pressure_gradient(friction_factor=factor, mass_flux=flux, density=density, inside_diameter=bore)
-    result = {
+    result: Results = {
         "velocity": velocity, "velocity_outlet": velocity, "velocity_at_stated_pressure": velocity,
         "reynolds": number, "friction_factor": factor, "kinetic_energy_factor": alpha, "density": density,
         "density_outlet": density, "pressure_gradient": gradient, "momentum_flux": flux * velocity,

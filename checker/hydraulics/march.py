@@ -22,7 +22,7 @@ _WIDEST, _SMALLEST = 0.25, 1.0 / 8192.0
 #: Share of the pressure that one step may take, and that share per distance of the acceleration factor from one.
 _RATIO_OF_STEP, _RATIO_NEAR_CHOKING = 0.0125, 0.03
 #: A step is halved down to this share of its full width before it crosses a change of regime.
-_NARROWEST = 2.0**-27
+_NARROWEST = 2.0**-24
 #: Steps after which a line is given up: it hovers on a border of flow regimes.
 _LIMIT = 2000
 #: Parts carried along: those of Slice from friction to slip, then the pressure term of the ledger.
@@ -47,11 +47,11 @@ class _Point(NamedTuple):
 class _Walk:
     """State of the lines under way; `rows` are their places in the result."""
 
-    def __init__(self, line: TwoPhaseLine, start: FloatArray, method: Method, downstream: bool) -> None:
-        place = np.zeros_like(start) if downstream else np.ones_like(start)
+    def __init__(self, line: TwoPhaseLine, start: FloatArray, method: Method, downstream: BoolArray) -> None:
+        place = np.where(downstream, 0.0, 1.0)
         terms = slice_at(line, start, place, method)
         full = _width(terms, start)
-        self.sign = 1.0 if downstream else -1.0
+        self.sign = np.where(downstream, 1.0, -1.0)
         self.line, self.point = line, _Point(start, place, terms)
         self.full, self.width, self.left = full, full, np.ones_like(start)
         self.narrowing = np.zeros(start.shape, dtype=np.bool_)
@@ -67,6 +67,7 @@ class _Walk:
         self.point = _Point(self.point.pressure[going], self.point.place[going], terms)
         self.full, self.width, self.left = self.full[going], self.width[going], self.left[going]
         self.narrowing, self.parts, self.rows = self.narrowing[going], self.parts[:, going], self.rows[going]
+        self.sign = self.sign[going]
 
     def accept(self, taken: BoolArray, ahead: _Point, gain: FloatArray, width: FloatArray) -> None:
         """Go on to the point ahead where the step is taken."""
@@ -83,7 +84,9 @@ def _chosen(taken: BoolArray, new: Iterable[Values], old: Iterable[Values]) -> I
     return (np.where(taken, one, other) for one, other in zip(new, old, strict=True))
 
 
-def march(line: TwoPhaseLine, start: FloatArray, method: Method, *, downstream: bool, ledger: bool = False) -> March:
+def march(
+    line: TwoPhaseLine, start: FloatArray, method: Method, *, downstream: BoolArray, ledger: bool = False
+) -> March:
     """Pressure at the far end of each line, marched from its near end.
 
     Parameters
@@ -94,8 +97,8 @@ def march(line: TwoPhaseLine, start: FloatArray, method: Method, *, downstream: 
         Pressure of the plane at the known end, [Pa].
     method : str
         "beggs-brill" or "homogeneous".
-    downstream : bool
-        True from inlet to outlet, False the other way.
+    downstream : ndarray of bool
+        True from inlet to outlet, False the other way; the parts always come as from inlet to outlet.
     ledger : bool
         Whether to carry the pressure term of the engineering Bernoulli balance along too.
 
@@ -114,6 +117,7 @@ def march(line: TwoPhaseLine, start: FloatArray, method: Method, *, downstream: 
         if walk.rows.size == 0:
             break
         _advance(walk, method, ledger, result)
+    result.parts[:] = np.where(downstream, result.parts, -result.parts)
     return result
 
 

@@ -10,7 +10,7 @@ from checker.hydraulics.ends import mass_flux, pressure_before_entrance, pressur
 from checker.hydraulics.friction import transitional
 from checker.hydraulics.kinetic_energy import kinetic_energy_factor
 from checker.hydraulics.liquid import pressure_gradient
-from checker.hydraulics.march import PARTS, March, march
+from checker.hydraulics.march import March, march
 from checker.hydraulics.solution import INLET, OUTLET, Methods
 from checker.hydraulics.two_phase import mixture_density
 from checker.hydraulics.two_phase_line import TwoPhaseLine, state_at
@@ -75,18 +75,7 @@ class TwoPhaseCases:
     def marched(self, *, ledger: bool = False) -> March:
         """March every line from its known end."""
         start = np.where(self.from_inlet, self.behind_entrance(), np.where(self.from_outlet, self.stated, np.nan))
-        result = March(np.full_like(start, np.nan), np.full((len(PARTS), start.size), np.nan),
-                       np.zeros(start.shape, dtype=np.bool_), np.zeros(start.shape, dtype=np.bool_))
-        for mask, downstream in ((self.from_inlet, True), (self.from_outlet, False)):
-            rows = np.flatnonzero(mask)
-            if rows.size:
-                found = march(self.line.take(rows), start[rows], self.methods.two_phase, downstream=downstream,
-                              ledger=ledger)
-                # Marched upstream, the widths are negative: the parts are turned round.
-                result.pressure[rows] = found.pressure
-                result.parts[:, rows] = found.parts if downstream else -found.parts
-                result.choked[rows], result.used_up[rows] = found.choked, found.used_up
-        return result
+        return march(self.line, start, self.methods.two_phase, downstream=~self.from_outlet, ledger=ledger)
 
 
 def _qualities(cases: Cases) -> tuple[FloatArray, FloatArray]:

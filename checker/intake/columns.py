@@ -17,7 +17,7 @@ from checker.intake.texts import fold_words, key_of, place, shown
 from checker.intake.unit_words import settled_by, size_basis, unit_in_cell, unit_or_refusal
 from checker.units import Unit, read_unit
 
-__all__ = ["Plan", "PlannedColumn", "hint_fields", "plan_columns"]
+__all__ = ["Plan", "PlannedColumn", "hint_fields", "number_columns", "plan_columns"]
 
 UNITLESS = frozenset({"dimensionless", "fraction"})
 CELLS_LOOKED_AT = 2_000
@@ -98,6 +98,11 @@ def _drafts(layout: Layout, hints: Mapping[str, ColumnHint], file: str) -> list[
         if draft is not None:
             drafts.append(draft)
     return drafts
+
+
+def number_columns(layout: Layout, hints: Mapping[str, ColumnHint], file: str) -> tuple[int, ...]:
+    """Return the columns whose headers promise numbers."""
+    return tuple(draft.index for draft in _drafts(layout, hints, file) if draft.fields[0].kind == "number")
 
 
 def _knows(field: Field, unit: str) -> bool:

@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-from array import array
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass, field
 
@@ -10,7 +9,7 @@ import numpy as np
 
 from checker.fields import Field
 from checker.intake.columns import PlannedColumn
-from checker.intake.number_cells import LONGEST_NUMBER, NumberContext, read_number_cell, unit_rests_on
+from checker.intake.number_cells import NumberContext, read_number_cell, unit_rests_on
 from checker.intake.placeholders import holds, placeholder
 from checker.intake.sizes import read_size
 from checker.intake.texts import shown, tidy
@@ -18,7 +17,7 @@ from checker.intake.unit_words import unit_or_refusal
 from checker.model import BoolArray, CodeArray, Coded, FloatArray, Gap
 from checker.units import from_si, to_si
 
-__all__ = ["ConvertedNumbers", "ConvertedTexts", "convert_numbers", "convert_sizes", "convert_texts"]
+__all__ = ["ConvertedNumbers", "ConvertedTexts", "convert_numbers", "convert_sizes", "convert_texts", "find_open_items"]
 
 NAN = float("nan")
 _PHASES = {
@@ -59,58 +58,56 @@ class ConvertedTexts:
     holds: list[int] = field(default_factory=list)
 
 
-def _traps(joined: str) -> tuple[int, int]:
-    """Return how many signs of a text ``float`` might wrongly take: the blank of `1_000`, digits of other scripts."""
-    return joined.count("_"), 0 if joined.isascii() else len(joined.encode("utf-8", "surrogatepass")) - len(joined)
-
-
-def _longest(cells: Sequence[str]) -> int:
-    return max(map(len, cells), default=0)
-
-
-def _floats(cells: Sequence[str]) -> tuple[FloatArray, list[int]]:
-    """Return the cells as floats, and the indices of those that need a second look."""
-    numbers, odd = array("d"), []
-    remaining = map(float, cells)
-    while True:
-        try:
-            numbers.extend(remaining)
-            break
-        except ValueError:
-            odd.append(len(numbers))
-            numbers.append(NAN)
-    values = np.array(numbers, dtype=np.float64)
-    if _traps("".join(cells)) != _traps("".join(cells[index] for index in odd)) or _longest(cells) > LONGEST_NUMBER:
-        odd += [i for i, text in enumerate(cells) if not text.isascii() or "_" in text or len(text) > LONGEST_NUMBER]
-    return values, sorted({*odd, *np.flatnonzero(~np.isfinite(values)).tolist()})
-
-
-def _numbers_at_once(
-    cells: Sequence[str], column: PlannedColumn, context: NumberContext
+def _plain_numbers(
+    cells: Sequence[str], plain: tuple[FloatArray, list[int]] | None, column: PlannedColumn, atmosphere: float
 ) -> tuple[ConvertedNumbers, list[int]]:
-    numbers, odd = (np.full(len(cells), NAN), list(range(len(cells)))) if context.comma else _floats(cells)
+    """Return the plain numbers of a column in SI, and the indices of the cells still to be read."""
+    numbers, odd = (np.full(len(cells), NAN), list(range(len(cells)))) if plain is None else plain
     gaps = np.full(len(cells), Gap.GIVEN, dtype=np.int8)
     if column.reading is None:
         gaps[:] = Gap.REFUSED
         numbers[:] = NAN
     else:
-        numbers = to_si(numbers, column.reading, atmosphere=context.atmosphere)
+        numbers = to_si(numbers, column.reading, atmosphere=atmosphere)
     rests_on = unit_rests_on(column.reading)
     basis = np.full(len(cells), rests_on, dtype=np.int8) if rests_on else None
     return ConvertedNumbers(numbers, gaps, column.refusal, rests_on=basis), odd
 
 
 def convert_numbers(
-    cells: Sequence[str], column: PlannedColumn, *, atmosphere: float, delimiter: str, comma: bool
+    cells: Sequence[str],
+    plain: tuple[FloatArray, list[int]] | None,
+    column: PlannedColumn,
+    *,
+    atmosphere: float,
+    delimiter: str,
+    comma: bool,
 ) -> ConvertedNumbers:
     """Convert a column of number cells to SI.
 
-    Plain numbers are converted in one step; every other distinct text is read once. Values outside the field's bounds
-    are refused after conversion.
+    Parameters
+    ----------
+    cells : sequence of str
+        The cells as written.
+    plain : tuple of float array and list of int, or None
+        The plain numbers among them and the indices of the other cells; None where no cell may be taken as plain.
+    column : PlannedColumn
+        Field and unit of the column.
+    atmosphere : float
+        The site's atmospheric pressure, Pa.
+    delimiter : str
+        Delimiter of the file.
+    comma : bool
+        Whether the list is written with decimal commas.
+
+    Returns
+    -------
+    ConvertedNumbers
+        SI values; every other distinct text is read once; values outside the field's bounds are refused.
     """
     context = NumberContext(column.field, column.reading, column.refusal, atmosphere, delimiter, comma)
     with np.errstate(all="ignore"):
-        converted, odd = _numbers_at_once(cells, column, context)
+        converted, odd = _plain_numbers(cells, plain, column, atmosphere)
         _read_odd(cells, odd, converted, context)
         _check_bounds(cells, converted, column.field, atmosphere)
     return converted
@@ -206,10 +203,24 @@ def convert_texts(cells: Sequence[str], field_: Field) -> ConvertedTexts:
     codes = [texts.setdefault(text, len(texts)) if gap is Gap.GIVEN else -1 for text, gap, _ in readings]
     gaps = np.array([gap for _, gap, _ in readings], dtype=np.int8)[position]
     reasons = {i: readings[position[i]][2] for i in np.flatnonzero(gaps == Gap.REFUSED).tolist()}
-    open_items: BoolArray = np.array([holds(text) for text in distinct], dtype=np.bool_)[position]
+    open_items: BoolArray = np.array(
+        [
+            gap is Gap.HOLD or (gap is Gap.GIVEN and holds(text))
+            for text, (_, gap, _) in zip(distinct, readings, strict=True)
+        ],
+        dtype=np.bool_,
+    )[position]
     return ConvertedTexts(
         Coded(np.array(codes, dtype=np.int32)[position], tuple(texts)),
         gaps,
         reasons,
         np.flatnonzero(open_items).tolist(),
     )
+
+
+def find_open_items(cells: Sequence[str]) -> ConvertedTexts:
+    """Return the open items of a column whose texts are kept as written elsewhere (line numbers)."""
+    capitals = "\n".join(cells).upper()
+    suspect = any(word in capitals for word in ("HOLD", "TB", "VTA", "LATER", "VENDOR", "PENDING"))
+    found = [index for index, text in enumerate(cells) if holds(text)] if suspect else []
+    return ConvertedTexts(Coded(np.full(len(cells), -1, dtype=np.int32), ()), np.zeros(len(cells), np.int8), {}, found)

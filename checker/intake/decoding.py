@@ -124,7 +124,7 @@ def read_text(path: Path) -> Decoded:
     if text.startswith("\ufeff"):
         text = text.lstrip("\ufeff")
         notes.append("A second byte-order mark before the first header was left out.")
-    if _TWICE_ENCODED.search(text):
+    if not text.isascii() and any(sign in text for sign in "\u00c2\u00c3\u00ef") and _TWICE_ENCODED.search(text):
         notes.append("Some texts look as if they were encoded twice (such as '\u00c2\u00b0C'): check the export.")
     if not text.strip():
         raise _refuse(path, "The file is empty: no table found.", "Give a CSV file with a header row and lines.")

@@ -3,17 +3,18 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Sequence
+from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass
 from itertools import compress
 
 import numpy as np
 
 from checker.errors import InputError, Problem
+from checker.intake.floats import FloatColumn
 from checker.intake.layout import Layout
-from checker.intake.records import Records
+from checker.intake.records import MOST_COLUMNS, Block, Form, read_blocks
 from checker.intake.texts import place, shown
-from checker.model import Address, IntArray, UnreadItem
+from checker.model import Address, BoolArray, FloatArray, IntArray, UnreadItem
 
 __all__ = ["Lines", "find_lines"]
 
@@ -24,7 +25,7 @@ _HEADING = re.compile(
     r"(general )?notes?\b|legend\b|abbreviations?\b|remarks?:|hold list|\(?\d{1,2}[).] \w", re.IGNORECASE
 )
 _NO_NUMBER = re.compile(r"[-_\u2013\u2014]*$")
-_DOUBTFUL = re.compile("|".join(f"(?:{part.pattern})" for part in (_NO_LINE, _HEADING, _NO_NUMBER)), re.IGNORECASE)
+_DOUBTFUL = "|".join(f"(?:{part.pattern})" for part in (_NO_LINE, _HEADING, _NO_NUMBER))
 _BREAKS = re.compile("[\x0b\x0c\x1c-\x1e\x85\u2028\u2029]")
 NAMED_ROWS = 6
 
@@ -33,24 +34,62 @@ NAMED_ROWS = 6
 class Lines:
     """Lines of the list.
 
-    `columns` holds the cells by column, one a line; `row` the row of each line; `broken` the reason why every value of
-    a line is refused, by line index.
+    `columns` holds the cells by column, one a line; `floats` the plain numbers of number columns and the indices of
+    their odd cells; `row` the row of each line; `broken` the reason why every value of a line is refused, by line.
     """
 
     numbers: tuple[str, ...]
     row: IntArray
-    columns: tuple[Sequence[str], ...]
+    columns: tuple[tuple[str, ...], ...]
+    floats: Mapping[int, tuple[FloatArray, list[int]]]
     broken: dict[int, str]
     unread: tuple[UnreadItem, ...]
     notes: tuple[str, ...]
 
 
-@dataclass
-class _Sorted:
-    rows: list[list[str]]
-    row_numbers: list[int]
-    broken: dict[int, str]
-    short: list[int]
+class _Table:
+    """Rows of the table turned into columns, block by block."""
+
+    def __init__(self, width: int, number_columns: Sequence[int]) -> None:
+        self.width = width
+        self.columns: list[list[str]] = [[] for _ in range(width)]
+        self.floats = {index: FloatColumn() for index in number_columns}
+        self.row_numbers: list[int] = []
+        self.broken: dict[int, str] = {}
+        self.short: list[int] = []
+
+    def row(self, index: int) -> list[str]:
+        """Return the cells of a row."""
+        return [column[index] for column in self.columns]
+
+    def add(self, block: Block, delimiter: str) -> None:
+        """Append a block: short rows are filled, over-long and damaged ones marked as broken, blank ones left out."""
+        if not block.damaged and set(map(len, block.rows)) <= {self.width}:
+            rows = block.rows
+            self.row_numbers.extend(range(block.first + 1, block.first + 1 + len(rows)))
+        else:
+            rows = list(self._evened(block, delimiter))
+        for index, cells in enumerate(zip(*rows, strict=True)):
+            self.columns[index].extend(cells)
+            if index in self.floats:
+                self.floats[index].add(cells)
+
+    def _evened(self, block: Block, delimiter: str) -> Iterator[list[str]]:
+        width = self.width
+        for index, row in enumerate(block.rows):
+            number, line = block.first + index + 1, len(self.row_numbers)
+            cells = row
+            if index in block.damaged:
+                cells = block.damaged[index].split(delimiter)
+                self.broken[line] = _damaged_reason(block.damaged[index])
+            elif not any(cell.strip() for cell in row):
+                continue
+            elif len(row) < width:
+                self.short.append(number)
+            elif any(cell.strip() for cell in row[width:]):
+                self.broken[line] = _long_reason(row, width)
+            self.row_numbers.append(number)
+            yield [*cells[:width], *[""] * (width - len(cells))]
 
 
 def _long_reason(row: Sequence[str], width: int) -> str:
@@ -64,30 +103,6 @@ def _long_reason(row: Sequence[str], width: int) -> str:
 
 def _damaged_reason(text: str) -> str:
     return f"quotation marks contradict each other in the row {shown(text)}: double them inside a quoted cell."
-
-
-def _sort_rows(records: Records, layout: Layout) -> _Sorted:
-    """Return the rows of the table, all as wide as the header."""
-    width, first = len(layout.headers), layout.first_row - 1
-    rows = records.rows[first:]
-    if not records.damaged and set(map(len, rows)) <= {width}:
-        return _Sorted(rows, list(range(first + 1, first + 1 + len(rows))), {}, [])
-    found = _Sorted([], [], {}, [])
-    for index, row in enumerate(rows, start=first):
-        if index in records.damaged:
-            cells = re.split(re.escape(records.delimiter), records.damaged[index])
-            found.broken[len(found.rows)] = _damaged_reason(records.damaged[index])
-        elif not any(cell.strip() for cell in row):
-            continue
-        else:
-            cells = row
-            if len(row) < width:
-                found.short.append(index + 1)
-            elif any(cell.strip() for cell in row[width:]):
-                found.broken[len(found.rows)] = _long_reason(row, width)
-        found.rows.append([*cells[:width], *[""] * (width - len(cells))])
-        found.row_numbers.append(index + 1)
-    return found
 
 
 def _named(rows: Sequence[int]) -> str:
@@ -112,36 +127,86 @@ def _why_no_line(number: str, header: str, columns: Sequence[Sequence[str]], lin
 
 def _suspects(numbers: Sequence[str], header: str) -> list[int]:
     """Return the indices of rows that may be no lines."""
-    repeated, doubtful = header.casefold(), _DOUBTFUL.match
-    return [index for index, number in enumerate(numbers) if doubtful(number) or number.casefold() == repeated]
+    doubtful = re.compile(f"{_DOUBTFUL}|{re.escape(header)}$", re.IGNORECASE).match
+    return [index for index, number in enumerate(numbers) if doubtful(number)]
 
 
-def _unread(index: int, reason: str, found: _Sorted, file: str, header: str) -> UnreadItem:
-    row = found.row_numbers[index]
-    text = " | ".join(cell.strip() for cell in found.rows[index] if cell.strip())
+def _numbers(cells: Sequence[str]) -> list[str]:
+    """Return line numbers with runs of blanks and line breaks as one blank."""
+    if re.search(r"\s\s|[\t-\r]|\s\0|\0\s", "\0".join(["", *cells, ""])) is None:
+        return list(cells)
+    return [" ".join(text.split()) for text in cells]
+
+
+def _unread(index: int, reason: str, table: _Table, file: str, header: str) -> UnreadItem:
+    row = table.row_numbers[index]
+    text = " | ".join(cell.strip() for cell in table.row(index) if cell.strip())
     return UnreadItem("", text[:200], f"Row {row} {shown(text)}: {reason}", Address(file, row, header))
 
 
-def find_lines(records: Records, layout: Layout, *, file: str, line_column: int) -> Lines:
-    """Return the lines of the table, and the rows that are none.
+def _table(text: str, form: Form, layout: Layout, number_columns: Sequence[int], file: str) -> _Table:
+    table = _Table(len(layout.headers), () if form.comma else number_columns)
+    skip = layout.first_row - 1
+    for block in read_blocks(text, delimiter=form.delimiter, file=file):
+        above = max(0, min(skip - block.first, len(block.rows)))
+        if above:
+            _refuse_damaged_header(block, above, layout, form, file)
+            damaged = {index - above: damage for index, damage in block.damaged.items() if index >= above}
+            block = Block(block.first + above, block.rows[above:], damaged)
+        if block.rows:
+            table.add(block, form.delimiter)
+    return table
+
+
+def _refuse_damaged_header(block: Block, above: int, layout: Layout, form: Form, file: str) -> None:
+    """Refuse a file whose quotation marks are contradictory down to the header."""
+    header = layout.header_row - 1 - block.first
+    moved = (
+        0 <= header < len(block.rows) and tuple(block.rows[header])[:MOST_COLUMNS] != form.head[layout.header_row - 1]
+    )
+    damaged = [index for index in block.damaged if index < above]
+    if damaged or moved:
+        row = (damaged or [header])[0]
+        what = f"quotation marks contradict each other: {shown(block.damaged.get(row, ''))}."
+        remedy = 'Double a quotation mark inside a quoted cell (6"" for 6").'
+        raise InputError(Problem(what, where=place(file, block.first + row + 1), remedy=remedy))
+
+
+def find_lines(
+    text: str, form: Form, layout: Layout, *, file: str, line_column: int, number_columns: Sequence[int]
+) -> Lines:
+    """Read the rows beneath the header and return the lines, and the rows that are none.
+
+    Parameters
+    ----------
+    text : str
+        The whole text.
+    form, layout : Form, Layout
+        What was understood of its form and its headers.
+    file : str
+        Name of the file, for messages.
+    line_column : int
+        Column of the line number.
+    number_columns : sequence of int
+        Columns whose plain numbers are read on the way.
 
     Raises
     ------
     InputError
         If the table holds no line at all: nothing read is never nothing wrong.
     """
-    found = _sort_rows(records, layout)
+    table = _table(text, form, layout, number_columns, file)
     header = layout.headers[line_column]
-    columns: tuple[Sequence[str], ...] = tuple(zip(*found.rows, strict=True)) or ((),) * len(layout.headers)
-    numbers = [" ".join(text.split()) for text in columns[line_column]]
+    columns = tuple(map(tuple, table.columns))
+    numbers = _numbers(columns[line_column])
     keep = np.ones(len(numbers), dtype=np.bool_)
     unread: list[UnreadItem] = []
     for index in _suspects(numbers, header):
-        blank = not any(cell.strip() for cell in found.rows[index])
+        blank = not any(cell.strip() for cell in table.row(index))
         reason = "" if blank else _why_no_line(numbers[index], header, columns, line_column, index)
         keep[index] = not (blank or reason)
         if reason:
-            unread.append(_unread(index, reason, found, file, header))
+            unread.append(_unread(index, reason, table, file, header))
     if not keep.any():
         raise InputError(
             Problem(
@@ -150,30 +215,31 @@ def find_lines(records: Records, layout: Layout, *, file: str, line_column: int)
                 remedy="Give a list with at least one line; an empty list is never checked as if it were in order.",
             )
         )
-    found.rows.clear()
-    return _kept(found, columns, numbers, keep, tuple(unread), line_column)
+    return _kept(table, columns, numbers, keep, tuple(unread), line_column)
 
 
 def _kept(
-    found: _Sorted,
-    columns: tuple[Sequence[str], ...],
+    table: _Table,
+    columns: tuple[tuple[str, ...], ...],
     numbers: Sequence[str],
-    keep: np.ndarray[tuple[int], np.dtype[np.bool_]],
+    keep: BoolArray,
     unread: tuple[UnreadItem, ...],
     line_column: int,
 ) -> Lines:
     notes = []
-    if found.short:
-        notes.append(f"Rows shorter than the header, the rest taken as blank: {_named(found.short)}.")
-    joined = [
-        found.row_numbers[i] for i, text in enumerate(columns[line_column]) if numbers[i] != text.strip() and keep[i]
-    ]
+    if table.short:
+        notes.append(f"Rows shorter than the header, the rest taken as blank: {_named(table.short)}.")
+    written = columns[line_column]
+    joined = [table.row_numbers[i] for i, number in enumerate(numbers) if number != written[i].strip() and keep[i]]
     if joined:
         notes.append(f"Line numbers with line breaks or runs of blanks, joined by one blank: rows {_named(joined)}.")
     place_of = np.cumsum(keep) - 1
-    broken = {int(place_of[index]): reason for index, reason in found.broken.items() if keep[index]}
-    row = np.asarray(found.row_numbers, dtype=np.int32)[keep]
-    if keep.all():
-        return Lines(tuple(numbers), row, columns, broken, unread, tuple(notes))
-    kept = tuple(tuple(compress(column, keep)) for column in columns)
-    return Lines(tuple(compress(numbers, keep)), row, kept, broken, unread, tuple(notes))
+    return Lines(
+        tuple(compress(numbers, keep)),
+        np.asarray(table.row_numbers, dtype=np.int32)[keep],
+        columns if keep.all() else tuple(tuple(compress(column, keep)) for column in columns),
+        {index: column.taken(keep) for index, column in table.floats.items()},
+        {int(place_of[index]): reason for index, reason in table.broken.items() if keep[index]},
+        unread,
+        tuple(notes),
+    )

@@ -33,12 +33,14 @@ def word_of(text: str) -> str:
     return "".join(filter(str.isalpha, text.lower()))
 
 
+def _open(text: str) -> bool:
+    capitals = text.upper()
+    return ("HOLD" in capitals or "TB" in capitals) and _HOLD_WORD.search(text) is not None
+
+
 def holds(text: str) -> bool:
     """Return whether a cell carries an open item of the originator."""
-    capitals = text.upper()
-    if ("HOLD" in capitals or "TB" in capitals) and _HOLD_WORD.search(text) is not None:
-        return True
-    return word_of(text) in _HOLD_CELLS
+    return _open(text) or word_of(text) in _HOLD_CELLS
 
 
 def placeholder(text: str, field: str) -> Gap:
@@ -48,9 +50,11 @@ def placeholder(text: str, field: str) -> Gap:
     """
     if not text or (not text[-1].isalnum() and _DASHES.fullmatch(text)):
         return Gap.BLANK
-    if field != "remarks" and holds(text):
+    if field != "remarks" and _open(text):
         return Gap.HOLD
     word = word_of(text)
+    if word in _HOLD_CELLS and field != "remarks":
+        return Gap.HOLD
     if word in _NOT_APPLICABLE and not (field in _KEEPS_NONE and word in _ABSENT_WORDS):
         return Gap.NOT_APPLICABLE
     return Gap.GIVEN

@@ -5,6 +5,7 @@ from __future__ import annotations
 import gc
 from collections.abc import Iterator, Mapping, Sequence
 from contextlib import contextmanager
+from dataclasses import dataclass
 from pathlib import Path
 
 import numpy as np
@@ -12,13 +13,13 @@ import numpy as np
 from checker.criteria.hints import ColumnHint
 from checker.errors import InputError, Problem
 from checker.intake.assemble import Assembly, Converted, assemble
-from checker.intake.columns import Plan, PlannedColumn, hint_fields, plan_columns
-from checker.intake.convert import ConvertedNumbers, convert_numbers, convert_sizes, convert_texts
+from checker.intake.columns import Plan, PlannedColumn, hint_fields, number_columns, plan_columns
+from checker.intake.convert import ConvertedNumbers, convert_numbers, convert_sizes, convert_texts, find_open_items
 from checker.intake.decoding import Decoded, read_text
 from checker.intake.layout import Layout, find_layout, line_number_columns
 from checker.intake.lines import Lines, find_lines
-from checker.intake.records import Records, read_records
-from checker.intake.texts import place, shown
+from checker.intake.records import Form, read_form
+from checker.intake.texts import place
 from checker.model import Address, Column, Gap, HoldItem, LineList, Source, UnreadItem
 from checker.units import STANDARD_ATMOSPHERE
 
@@ -27,12 +28,19 @@ __all__ = ["read_line_list"]
 
 @contextmanager
 def _no_collection() -> Iterator[None]:
-    """Keep the garbage collector from walking millions of cells while they are read."""
+    """Keep the garbage collector from walking millions of cells while they are read.
+
+    Afterwards they count as old objects at once (frozen and thawed), so that the next small allocation does not walk
+    them either.
+    """
     enabled = gc.isenabled()
     gc.disable()
     try:
         yield
     finally:
+        if enabled and gc.get_freeze_count() == 0:
+            gc.freeze()
+            gc.unfreeze()
         if enabled:
             gc.enable()
 
@@ -71,64 +79,44 @@ def read_line_list(
         If the file cannot be read, holds no table, no line-number column, no line, two columns for one field, or not
         one value besides the line numbers.
     """
-    hints = columns or {}
+    hints, file = columns or {}, Path(path).name
     with _no_collection():
         decoded = read_text(Path(path))
-        file = Path(path).name
         fields = hint_fields(hints)
-        records = read_records(decoded.text, file=file, hints=fields)
-        layout = find_layout(records.rows, file=file, hints=fields)
-        _refuse_damaged_header(records, layout, file)
-        return _read(decoded, records, layout, file, hints, units or {}, atmosphere)
-
-
-def _refuse_damaged_header(records: Records, layout: Layout, file: str) -> None:
-    above = [index for index in records.damaged if index < layout.header_row]
-    if above:
-        raise InputError(
-            Problem(
-                f"quotation marks contradict each other in {shown(records.damaged[above[0]])}.",
-                where=place(file, above[0] + 1),
-                remedy='Double a quotation mark inside a quoted cell (6"" for 6").',
-            )
+        form = read_form(decoded.text, hints=fields)
+        layout = find_layout(form.head, file=file, hints=fields)
+        lines = find_lines(
+            decoded.text,
+            form,
+            layout,
+            file=file,
+            line_column=line_number_columns(layout.headers, fields)[0],
+            number_columns=number_columns(layout, hints, file),
         )
+        plan = plan_columns(layout, lines.columns, file=file, hints=hints, units=units or {}, comma=form.comma)
+        return _line_list(_Opened(file, decoded, form, layout), lines, plan, atmosphere)
 
 
-def _read(
-    decoded: Decoded,
-    records: Records,
-    layout: Layout,
-    file: str,
-    hints: Mapping[str, ColumnHint],
-    units: Mapping[str, str],
-    atmosphere: float,
-) -> LineList:
-    line_column = _line_column(layout, hints)
-    lines = find_lines(records, layout, file=file, line_column=line_column)
-    records.rows.clear()
-    plan = plan_columns(layout, lines.columns, file=file, hints=hints, units=units, comma=records.comma)
-    converted = {
-        column.index: _converted(column, lines.columns[column.index], records, atmosphere) for column in plan.columns
-    }
-    for column in plan.columns:
-        _refuse_broken(converted[column.index], column, lines.broken)
-    read = [column for column in plan.columns if column.field.name != "line_number"]
-    _refuse_if_nothing(read, converted, file, layout)
-    assembly = assemble(read, converted, cases=plan.cases, rows=lines.row, file=file)
-    return _line_list(decoded, records, layout, file, lines, plan, converted, assembly)
+@dataclass(frozen=True, slots=True)
+class _Opened:
+    """A file and what was understood of its form."""
+
+    file: str
+    decoded: Decoded
+    form: Form
+    layout: Layout
 
 
-def _line_column(layout: Layout, hints: Mapping[str, ColumnHint]) -> int:
-    """Return the line-number column; that it is the only one is seen when the columns are planned."""
-    return line_number_columns(layout.headers, hint_fields(hints))[0]
-
-
-def _converted(column: PlannedColumn, cells: Sequence[str], records: Records, atmosphere: float) -> Converted:
+def _converted(column: PlannedColumn, lines: Lines, form: Form, atmosphere: float) -> Converted:
+    cells = lines.columns[column.index]
+    if column.field.name == "line_number":
+        return find_open_items(cells)
     if column.field.kind == "text":
         return convert_texts(cells, column.field)
     if column.field.kind == "size":
-        return convert_sizes(cells, column, comma=records.comma)
-    return convert_numbers(cells, column, atmosphere=atmosphere, delimiter=records.delimiter, comma=records.comma)
+        return convert_sizes(cells, column, comma=form.comma)
+    plain = lines.floats.get(column.index)
+    return convert_numbers(cells, plain, column, atmosphere=atmosphere, delimiter=form.delimiter, comma=form.comma)
 
 
 def _refuse_broken(converted: Converted, column: PlannedColumn, broken: Mapping[int, str]) -> None:
@@ -204,38 +192,33 @@ def _unread(
     return sorted(items, key=lambda item: item.address.row)
 
 
-def _notes(
-    records: Records, decoded: Decoded, layout: Layout, lines: Lines, plan: Plan, assembly: Assembly
-) -> list[str]:
-    notes = [*decoded.notes, *records.notes, *layout.notes, *plan.notes, *lines.notes]
+def _notes(opened: _Opened, lines: Lines, plan: Plan, assembly: Assembly) -> tuple[str, ...]:
+    notes = [*opened.decoded.notes, *opened.form.notes, *opened.layout.notes, *plan.notes, *lines.notes]
     if bool(assembly.composite.any()):
         codes = np.unique(assembly.case.codes[assembly.composite])
         names = ", ".join(assembly.case.texts[int(code)] for code in codes)
         notes.append(
             f"Composite cases (their own flow beside pressure, temperature or properties of all cases): {names}."
         )
-    return notes
+    return tuple(notes)
 
 
-def _line_list(
-    decoded: Decoded,
-    records: Records,
-    layout: Layout,
-    file: str,
-    lines: Lines,
-    plan: Plan,
-    converted: Mapping[int, Converted],
-    assembly: Assembly,
-) -> LineList:
-    form = " ".join([*decoded.notes, *records.notes])
+def _line_list(opened: _Opened, lines: Lines, plan: Plan, atmosphere: float) -> LineList:
+    converted = {column.index: _converted(column, lines, opened.form, atmosphere) for column in plan.columns}
+    for column in plan.columns:
+        _refuse_broken(converted[column.index], column, lines.broken)
+    read = [column for column in plan.columns if column.field.name != "line_number"]
+    _refuse_if_nothing(read, converted, opened.file, opened.layout)
+    assembly = assemble(read, converted, cases=plan.cases, rows=lines.row, file=opened.file)
+    form = " ".join([*opened.decoded.notes, *opened.form.notes])
     return LineList(
-        source=Source(file, decoded.sha256, form),
+        source=Source(opened.file, opened.decoded.sha256, form),
         columns=tuple(
             Column(column.field.name, column.header, column.case, column.unit, lines.columns[column.index])
             for column in plan.columns
         ),
         unmatched=plan.unmatched,
-        notes=tuple(_notes(records, decoded, layout, lines, plan, assembly)),
+        notes=_notes(opened, lines, plan, assembly),
         line_number=lines.numbers,
         row=lines.row,
         line=assembly.line,
@@ -246,6 +229,6 @@ def _line_list(
         texts=assembly.texts,
         gaps=assembly.gaps,
         refusals=assembly.refusals,
-        holds=_holds(plan, converted, lines, file),
-        unread=tuple(_unread(plan, converted, lines, layout, file)),
+        holds=_holds(plan, converted, lines, opened.file),
+        unread=tuple(_unread(plan, converted, lines, opened.layout, opened.file)),
     )

@@ -5,37 +5,48 @@ from __future__ import annotations
 import csv
 import io
 import re
-from collections.abc import Mapping, Sequence
-from dataclasses import dataclass, field
+from collections.abc import Iterator, Mapping, Sequence
+from dataclasses import dataclass
 from itertools import islice
 
 from checker.errors import InputError, Problem
 from checker.intake.layout import ROWS_SEARCHED, header_score
 from checker.intake.texts import place, shown
 
-__all__ = ["LONGEST_CELL", "MOST_COLUMNS", "MOST_ROWS", "Records", "read_records"]
+__all__ = ["LONGEST_CELL", "MOST_COLUMNS", "MOST_ROWS", "Block", "Form", "read_blocks", "read_form"]
 
 MOST_COLUMNS = 2_000
 MOST_ROWS = 1_000_000
 LONGEST_CELL = 32_767
 MOST_NEWLINES = 20
 SAMPLE = 200_000
+ROWS_BENEATH = 6
+BLOCK = 500
 DELIMITERS = {",": "comma", ";": "semicolon", "\t": "tab", "|": "pipe"}
 _CLOSE_QUOTES = 'Close the quotation mark, or double it inside a quoted cell (6"" for 6").'
 
 
-@dataclass(slots=True)
-class Records:
-    """Rows of a file as texts, in the file's order (a damaged row is empty), and what was understood of its form.
+@dataclass(frozen=True, slots=True)
+class Form:
+    """What was understood of a file's form before its rows are read: the delimiter, decimal commas, the first rows."""
 
-    `damaged` holds, by row index, the text of each row whose quotation marks contradict each other.
-    """
-
-    rows: list[list[str]]
     delimiter: str
     comma: bool
+    head: tuple[tuple[str, ...], ...]
     notes: tuple[str, ...]
-    damaged: dict[int, str] = field(default_factory=dict)
+
+
+@dataclass(slots=True)
+class Block:
+    """Some consecutive rows of a file.
+
+    `first` is the index of the first one; `damaged` holds, by index in the block, the text of a row whose quotation
+    marks contradict each other (its cells are empty).
+    """
+
+    first: int
+    rows: list[list[str]]
+    damaged: dict[int, str]
 
 
 def _refuse(file: str, row: int | None, what: str, remedy: str) -> InputError:
@@ -46,7 +57,7 @@ def _sample(text: str, delimiter: str) -> list[list[str]]:
     reader = csv.reader(io.StringIO(text[:SAMPLE], newline=""), delimiter=delimiter)
     rows: list[list[str]] = []
     try:
-        rows.extend(islice(reader, ROWS_SEARCHED))
+        rows.extend(islice(reader, ROWS_SEARCHED + ROWS_BENEATH))
     except csv.Error:
         pass
     return [row[:MOST_COLUMNS] for row in rows]
@@ -75,65 +86,83 @@ def _newlines(row: Sequence[str]) -> int:
     return sum(cell.count("\n") + cell.count("\r") - cell.count("\r\n") for cell in row)
 
 
-def _damaged_text(text: str, line: int) -> str:
-    return next(islice(io.StringIO(text, newline=""), line - 1, None), "").rstrip("\r\n")
+def _remembered(text: str, latest: list[str]) -> Iterator[str]:
+    """Yield the lines of a text and keep the latest at hand for a message."""
+    for line in io.StringIO(text, newline=""):
+        latest[0] = line
+        yield line
 
 
-def _parse(text: str, delimiter: str, file: str) -> tuple[list[list[str]], dict[int, str], bool]:
-    """Return the rows, the damaged ones by index, and whether any record spans several lines of text."""
-    reader = csv.reader(io.StringIO(text, newline=""), delimiter=delimiter, strict=True)
-    rows: list[list[str]] = []
-    damaged: dict[int, str] = {}
-    counted, line = 0, 0
+def _damaged(error: csv.Error, file: str, row: int, line: int, lines_read: int, latest: str) -> str:
+    """Return the text of a row that contradicts itself, or refuse the file where the rows beyond are in doubt."""
+    if "field larger" in str(error):
+        raise _refuse(file, row, f"a cell is longer than {LONGEST_CELL} characters.", "Shorten it.") from error
+    if lines_read > line + 1 or "unexpected end" in str(error):
+        what = f"a quotation mark opened in this row (text row {line + 1}) is not closed."
+        raise _refuse(file, row, what, _CLOSE_QUOTES) from error
+    return latest.rstrip("\r\n")
+
+
+def read_blocks(text: str, *, delimiter: str, file: str) -> Iterator[Block]:
+    """Yield the rows of a delimited text, some hundreds at a time.
+
+    Raises
+    ------
+    InputError
+        If a quotation mark is not closed, or the file has too many rows or columns or too long a cell.
+    """
+    latest = [""]
+    reader = csv.reader(_remembered(text, latest), delimiter=delimiter, strict=True)
+    long_lines = max(map(len, text.split("\n"))) > LONGEST_CELL
+    first, line, width = 0, 0, 0
     while True:
+        block = Block(first, [], {})
         try:
-            rows.extend(reader)
-            break
+            block.rows.extend(islice(reader, BLOCK))
         except csv.Error as error:
-            line += len(rows) - counted + sum(map(_newlines, rows[counted:]))
-            if "field larger" in str(error):
-                raise _refuse(
-                    file, len(rows) + 1, f"a cell is longer than {LONGEST_CELL} characters.", "Shorten it."
-                ) from error
-            if reader.line_num > line + 1 or "unexpected end" in str(error):
-                what = f"a quotation mark opened in this row (text row {line + 1}) is not closed."
-                raise _refuse(file, len(rows) + 1, what, _CLOSE_QUOTES) from error
-            damaged[len(rows)] = _damaged_text(text, reader.line_num)
-            rows.append([])
-            counted, line = len(rows), reader.line_num
-        if len(rows) > MOST_ROWS:
-            break
-    return rows, damaged, reader.line_num != len(rows)
+            line += len(block.rows) + sum(map(_newlines, block.rows))
+            row = first + len(block.rows)
+            block.damaged[len(block.rows)] = _damaged(error, file, row + 1, line, reader.line_num, latest[0])
+            block.rows.append([])
+            line = reader.line_num - len(block.rows)
+        if not block.rows:
+            return
+        spans, line = reader.line_num - line != len(block.rows), reader.line_num
+        width = width or max(map(len, block.rows))
+        _refuse_oversize(block, file)
+        if spans:
+            _refuse_swallowed(block, delimiter, file, width)
+        if spans or long_lines:
+            _refuse_long_cells(block, file)
+        first += len(block.rows)
+        yield block
 
 
-def _refuse_swallowed(rows: Sequence[Sequence[str]], delimiter: str, file: str) -> None:
+def _refuse_swallowed(block: Block, delimiter: str, file: str, width: int) -> None:
     """Refuse a record whose quoted cell has swallowed rows: an unclosed quotation mark that a later one closed."""
-    for index, row in enumerate(rows):
+    for index, row in enumerate(block.rows, start=block.first):
         breaks = _newlines(row)
         if not breaks:
             continue
-        widest = max(
-            line.count(delimiter) for cell in row if "\n" in cell or "\r" in cell for line in cell.splitlines()
-        )
-        if breaks > MOST_NEWLINES or widest >= max(4, len(rows[0]) - 1):
+        texts = (line for cell in row if "\n" in cell or "\r" in cell for line in re.split(r"[\r\n]+", cell))
+        widest = max(line.count(delimiter) for line in texts)
+        if breaks > MOST_NEWLINES or widest >= max(4, width - 1):
             what = f"a quotation mark opened in this row swallows {breaks} line breaks: it is not closed in its row."
             raise _refuse(file, index + 1, what, _CLOSE_QUOTES)
 
 
-def _refuse_oversize(rows: Sequence[Sequence[str]], file: str) -> None:
-    if len(rows) > MOST_ROWS:
+def _refuse_oversize(block: Block, file: str) -> None:
+    if block.first + len(block.rows) > MOST_ROWS:
         raise _refuse(file, None, f"the file has more than {MOST_ROWS} rows.", "Split the list by unit or area.")
-    widest = max(map(len, rows), default=0)
+    widest = max(map(len, block.rows))
     if widest > MOST_COLUMNS:
-        row = next(index for index, cells in enumerate(rows) if len(cells) == widest)
+        row = next(index for index, cells in enumerate(block.rows, start=block.first) if len(cells) == widest)
         what = f"the row has {widest} columns, more than {MOST_COLUMNS}."
         raise _refuse(file, row + 1, what, "Check the delimiter, or leave out the columns that no check needs.")
 
 
-def _refuse_long_cells(rows: Sequence[Sequence[str]], text: str, spans: bool, file: str) -> None:
-    if not spans and max(map(len, text.split("\n"))) <= LONGEST_CELL:
-        return
-    for index, row in enumerate(rows):
+def _refuse_long_cells(block: Block, file: str) -> None:
+    for index, row in enumerate(block.rows, start=block.first):
         for position, cell in enumerate(row):
             if len(cell) > LONGEST_CELL:
                 what = f"cell {position + 1} has {len(cell)} characters, more than {LONGEST_CELL}: {shown(cell)}."
@@ -148,22 +177,9 @@ def _decimal_commas(text: str, delimiter: str) -> bool:
     return re.search(rf"(?:^|[{edge}\"]) *[-+]?\d+,\d+ *(?:[{edge}\"\r\n]|$)", text, re.MULTILINE) is not None
 
 
-def read_records(text: str, *, file: str, hints: Mapping[str, str]) -> Records:
-    """Read the rows of a delimited text.
-
-    Raises
-    ------
-    InputError
-        If a quotation mark is not closed, or the file has too many rows or columns or too long a cell.
-    """
+def read_form(text: str, *, hints: Mapping[str, str]) -> Form:
+    """Return the delimiter of a text, whether it is written with decimal commas, and its first rows."""
     delimiter, note = _delimiter(text, hints)
-    rows, damaged, spans = _parse(text, delimiter, file)
-    _refuse_oversize(rows, file)
-    if spans:
-        _refuse_swallowed(rows, delimiter, file)
-    _refuse_long_cells(rows, text, spans, file)
     comma = _decimal_commas(text, delimiter)
-    notes = (note, "Decimal commas.") if comma else (note,)
-    if rows and len(rows[0]) <= 2 and rows[0] and re.match(r"\s*sep=", rows[0][0], re.IGNORECASE):
-        rows[0] = []
-    return Records(rows, delimiter, comma, notes, damaged)
+    head = tuple(map(tuple, _sample(text, delimiter)))
+    return Form(delimiter, comma, head, (note, "Decimal commas.") if comma else (note,))

@@ -77,7 +77,7 @@ def _write_beside(beside: Path, content: bytes) -> None:
 
 def _cannot_write(place: Path, error: OSError) -> Problem:
     return Problem(
-        what=f"the report cannot be written here ({error.strerror or type(error).__name__}).",
+        what=f"the output cannot be written here ({error.strerror or type(error).__name__}).",
         where=str(place),
-        remedy="Close the file if another program holds it, or name another folder with --out.",
+        remedy="Close the file if another program holds it, or name another place to write to.",
     )

@@ -44,7 +44,7 @@ def calculation_sheet(review: ReviewLike, line_number: str) -> str:
         _cases(review, rows),
         _section("Caution", iter(wrapped(CAUTION))),
     ]
-    return "\n".join(line.rstrip() for part in parts for line in part) + "\n"
+    return "\n".join(line.rstrip() for part in parts for line in part)
 
 
 def _no_such_line(review: ReviewLike, line_number: str) -> Problem:
@@ -104,6 +104,7 @@ def _hydraulics(review: ReviewLike, line_case: int, row: OutcomeRow) -> Iterator
         value = np.asarray(values)[line_case]
         shown = in_shown_unit(name, unit, float(value)) if np.asarray(values).dtype.kind in "iuf" else str(value)
         yield _plain(f"  {name:<26} {shown or MISSING}")
+    yield _plain(f"  {'flow_regime':<26} {review.flow_regimes()[line_case] or MISSING}")
 
 
 def _rules(rows: list[OutcomeRow]) -> Iterator[str]:

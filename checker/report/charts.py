@@ -171,13 +171,25 @@ def _scatter_states(axes: Any, across: FloatArray, up: FloatArray, used: FloatAr
 
 
 def _shade_strip(axes: Any, place: int, values: FloatArray, last: float) -> None:
-    edges = np.linspace(0.0, last, BINS + 1)
-    numbers, _ = np.histogram(values, bins=edges)
-    for start, end, number in zip(edges[:-1], edges[1:], numbers, strict=True):
-        if number:
-            colour = _colour_of(float(start + end) / 2.0)
-            alpha = float(0.15 + 0.85 * np.sqrt(number / numbers.max()))
-            axes.broken_barh([(start, end - start)], (place - 0.2, 0.5), facecolor=colour, alpha=alpha)
+    numbers, edges = np.histogram(values, bins=BINS, range=(0.0, last))
+    filled = np.flatnonzero(numbers)
+    corners = np.stack([edges[filled], np.full(filled.size, place - 0.2)], axis=1)
+    used = edges[filled] + edges[1] / 2.0
+    _shade(axes, corners, (float(edges[1]), 0.5), used, numbers[filled] / numbers.max())
+
+
+def _shade(axes: Any, corners: FloatArray, size: tuple[float, float], used: FloatArray, share: FloatArray) -> None:
+    """Fill cells given by their lower left corners, the darker the larger their share of the fullest cell."""
+    from matplotlib.collections import PolyCollection
+    from matplotlib.colors import to_rgba
+
+    outline = np.array([(0.0, 0.0), (1.0, 0.0), (1.0, 1.0), (0.0, 1.0)]) * size
+    colours = [
+        to_rgba(_colour_of(float(each)), 0.15 + 0.85 * float(np.sqrt(part)))
+        for each, part in zip(used, share, strict=True)
+    ]
+    cells = PolyCollection(list(corners[:, np.newaxis, :] + outline), facecolors=colours, linewidths=0.0)
+    axes.add_collection(cells, autolim=False)
 
 
 def _colour_of(used: float) -> str:
@@ -218,8 +230,7 @@ def _draw_panel(axes: Any, name: str, velocity: FloatArray, limit: FloatArray, *
 
 def _shade_cells(axes: Any, across: FloatArray, up: FloatArray, right: float, top: float) -> None:
     numbers, columns, rows = np.histogram2d(across, up, bins=BINS, range=((0.0, right), (0.0, top)))
-    for column, row in zip(*np.nonzero(numbers), strict=True):
-        left, bottom = columns[column], rows[row]
-        used = (bottom + rows[1] / 2.0) / (left + columns[1] / 2.0)
-        alpha = float(0.2 + 0.8 * np.sqrt(numbers[column, row] / numbers.max()))
-        axes.broken_barh([(left, columns[1])], (bottom, rows[1]), facecolor=_colour_of(float(used)), alpha=alpha)
+    filled = np.nonzero(numbers)
+    corners = np.stack([columns[filled[0]], rows[filled[1]]], axis=1)
+    used = (corners[:, 1] + rows[1] / 2.0) / (corners[:, 0] + columns[1] / 2.0)
+    _shade(axes, corners, (float(columns[1]), float(rows[1])), used, numbers[filled] / numbers.max())

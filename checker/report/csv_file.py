@@ -23,7 +23,7 @@ def hydraulics_csv(review: ReviewLike) -> str:
     A missing number is an empty field, an infinite one ``inf``. No text of the list begins like a formula: such a text
     gets an apostrophe in front.
     """
-    columns = list(review.hydraulics_columns())
+    columns = [*review.hydraulics_columns(), ("flow_regime", "", np.array(review.flow_regimes(), dtype=object))]
     stream = StringIO()
     writer = csv.writer(stream, lineterminator="\n")
     labels = ["line_number", "case"]

@@ -66,9 +66,7 @@ def _environment() -> Environment:
 
 def _harmless(value: Any) -> Any:
     """Return a value as the page may show it: plain texts with nothing hidden in them (escaping comes after)."""
-    from markupsafe import Markup
-
-    return visible(value) if isinstance(value, str) and not isinstance(value, Markup) else value
+    return visible(value) if isinstance(value, str) and not hasattr(value, "__html__") else value
 
 
 def _in_shown_unit(value: float, name: str) -> str:

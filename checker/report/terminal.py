@@ -31,7 +31,7 @@ def summary(review: ReviewLike, files: WrittenFiles | None) -> str:
     lines = [*_head(review), *_counts(review), *_worst(review)]
     if files is not None:
         lines += _files(files)
-    return "\n".join(lines) + "\n"
+    return "\n".join(lines)
 
 
 def wrapped(text: str, *, indent: str = "", first: str | None = None) -> list[str]:
@@ -47,6 +47,8 @@ def _head(review: ReviewLike) -> Iterator[str]:
     yield from wrapped(review.recommendation_text, first="Recommendation: ", indent="  ")
     for reason in review.reasons:
         yield from wrapped(reason, first="  - ", indent="    ")
+    for fault in review.faults:
+        yield from wrapped(f"A rule failed; what it judges is not checked: {fault}", first="  - ", indent="    ")
     yield ""
 
 

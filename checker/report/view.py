@@ -108,6 +108,7 @@ class View:
     results: Sequence[ResultLike]
     inputs: str
     titles: Mapping[str, str]
+    approvals: tuple[Mapping[str, str], ...]
 
 
 def build_view(review: ReviewLike, pictures: tuple[Picture, ...], *, paged: bool) -> View:
@@ -130,6 +131,7 @@ def build_view(review: ReviewLike, pictures: tuple[Picture, ...], *, paged: bool
         results=review.results().rows,
         inputs=", ".join(source.name for source in review.basis.inputs),
         titles={summary.rule: summary.title for summary in review.rule_summaries},
+        approvals=_approvals(review),
     )
 
 
@@ -153,11 +155,17 @@ def _sections(review: ReviewLike) -> tuple[Section, ...]:
         ("rules", "Rules and how often each gave which outcome", "rules"),
         ("results", "Results of every line", "results"),
     ]
-    shown = [entry for entry in entries if entry[0] != "approved" or review.approved]
+    shown = [entry for entry in entries if entry[0] != "approved" or review.approved or len(review.deviations)]
     return tuple(
         Section(number, anchor, title, f"section_{template}.html.j2")
         for number, (anchor, title, template) in enumerate(shown, start=1)
     )
+
+
+def _approvals(review: ReviewLike) -> tuple[Mapping[str, str], ...]:
+    """Return every approval of the deviations file and what became of it, as texts."""
+    records = review.deviations.to_dict("records")
+    return tuple({str(name): str(value) for name, value in record.items()} for record in records)
 
 
 def _tally(review: ReviewLike) -> tuple[TallyEntry, ...]:

@@ -58,7 +58,8 @@ def test_a_projects_own_source_does_not_cover_the_defaults_figures(tmp_path: Pat
 
 
 def test_same_values_are_no_difference(tmp_path: Path) -> None:
-    text = '[site]\natmospheric_pressure = "1013.25 mbar"\n[[service]]\nname = "cooling water"\nvelocity_maximum = "222 m/min"\n'
+    site = '[site]\natmospheric_pressure = "1013.25 mbar"\n'
+    text = site + '[[service]]\nname = "cooling water"\nvelocity_maximum = "222 m/min"\n'
     assert load(tmp_path, HEAD + text).differences == ()
 
 

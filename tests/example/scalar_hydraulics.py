@@ -13,10 +13,13 @@ from __future__ import annotations
 import math
 from collections.abc import Callable
 from dataclasses import dataclass
+from typing import NamedTuple
 
 GRAVITY = 9.80665
 CRANE_ROUGHNESS = 0.0018 * 0.0254
 STEPS = 400
+# The gradient of Beggs and Brill jumps where the flow pattern changes: a step there is halved so many times.
+HALVINGS = 30
 
 
 class ChokedError(ValueError):
@@ -250,8 +253,28 @@ def holdup(share: float, froude: float, velocity_number: float, angle: float) ->
     return weight * ends[0] + (1 - weight) * ends[1]
 
 
-def two_phase_terms(pipe: Pipe, mixture: Mixture, pressure: float) -> tuple[float, float, float, float]:
-    """Friction, fittings and rise in Pa/m at a pressure, and the acceleration group E_k of Beggs and Brill."""
+class Terms(NamedTuple):
+    """Friction, fittings and rise in Pa/m at a pressure, the acceleration group E_k, and the flow pattern."""
+
+    friction: float
+    fittings: float
+    rise: float
+    kinetic: float
+    pattern: str
+
+    @property
+    def parts(self) -> tuple[float, float, float]:
+        """Pressure drop, losses and static part per metre."""
+        if self.kinetic >= 1:
+            raise ChokedError
+        losses = self.friction + self.fittings
+        return (losses + self.rise) / (1 - self.kinetic), losses, self.rise
+
+
+def two_phase_terms(pipe: Pipe, mixture: Mixture, pressure: float) -> Terms:
+    """What acts on the flow at a pressure, after Beggs and Brill."""
+    if pressure <= 0:
+        raise ChokedError
     liquid_part, vapour_part, vapour_density = mixture.at(pressure, pipe.area)
     velocity = liquid_part + vapour_part
     share = liquid_part / velocity
@@ -267,7 +290,8 @@ def two_phase_terms(pipe: Pipe, mixture: Mixture, pressure: float) -> tuple[floa
     dynamic = no_slip * velocity**2 / 2
     friction = factor / pipe.bore * dynamic
     fittings = friction * pipe.fittings_length / pipe.length + pipe.fittings_coefficient / pipe.length * dynamic
-    return friction, fittings, slip_density * GRAVITY * sine, vapour_part * velocity * slip_density / pressure
+    kinetic = vapour_part * velocity * slip_density / pressure
+    return Terms(friction, fittings, slip_density * GRAVITY * sine, kinetic, flow_pattern(share, froude)[0])
 
 
 def friction_exponent(y: float) -> float:
@@ -278,21 +302,37 @@ def friction_exponent(y: float) -> float:
     return x / (-0.0523 + 3.182 * x - 0.8725 * x**2 + 0.01853 * x**4)
 
 
+def two_phase_step(terms: Callable[[float], Terms], at: float, step: float, halvings: int) -> list[float]:
+    """Pressure drop, losses and static part over one Runge-Kutta step, halved while it meets two flow patterns."""
+    stages = [terms(at)]
+    for share in (0.5, 0.5, 1.0):
+        stages.append(terms(at - share * step * stages[-1].parts[0]))
+    weighted = zip((1, 2, 2, 1), (stage.parts for stage in stages), strict=True)
+    gains = [
+        step / 6 * sum(column) for column in zip(*([w * part for part in parts] for w, parts in weighted), strict=True)
+    ]
+    patterns = {stage.pattern for stage in stages} | {terms(at - gains[0]).pattern}
+    if len(patterns) == 1 or halvings == 0:
+        return gains
+    first = two_phase_step(terms, at, step / 2, halvings - 1)
+    second = two_phase_step(terms, at - first[0], step / 2, halvings - 1)
+    return [one + other for one, other in zip(first, second, strict=True)]
+
+
 def two_phase(pipe: Pipe, mixture: Mixture, basis: str) -> Result:
     """Beggs and Brill marched from the known end; the vapour fraction stays, a fall gives no pressure back."""
 
-    def slope(at: float) -> float:
-        friction, fittings, rise, kinetic = two_phase_terms(pipe, mixture, at)
-        if kinetic >= 1:
-            raise ChokedError
-        return -(friction + fittings + rise) / (1 - kinetic)
+    def terms(at: float) -> Terms:
+        return two_phase_terms(pipe, mixture, at)
 
-    profile = march(slope, mixture.pressure, pipe.length, basis)
-    terms = [two_phase_terms(pipe, mixture, at) for at in profile]
-    losses = trapezoid([friction + fittings for friction, fittings, _, _ in terms], pipe.length)
-    static = trapezoid([rise for _, _, rise, _ in terms], pipe.length)
+    sign = 1 if basis == "inlet" else -1
+    far, losses, static = mixture.pressure, 0.0, 0.0
+    for _ in range(STEPS):
+        gains = two_phase_step(terms, far, sign * pipe.length / STEPS, HALVINGS)
+        far, losses, static = far - gains[0], losses + sign * gains[1], static + sign * gains[2]
+    inlet, outlet = (mixture.pressure, far) if basis == "inlet" else (far, mixture.pressure)
     velocities, densities = [], []
-    for at in (mixture.pressure, profile[0], profile[-1]):
+    for at in (mixture.pressure, inlet, outlet):
         velocities.append(sum(mixture.at(at, pipe.area)[:2]))
         densities.append(mixture.flow / (velocities[-1] * pipe.area))
     return Result(
@@ -301,7 +341,7 @@ def two_phase(pipe: Pipe, mixture: Mixture, basis: str) -> Result:
         velocity_outlet=velocities[2],
         density_inlet=densities[1],
         density_outlet=densities[2],
-        pressure_gradient=terms[0][0],
+        pressure_gradient=terms(inlet).friction,
         dp_friction_and_fittings=losses,
-        dp_acceleration=profile[0] - profile[-1] - losses - static,
+        dp_acceleration=inlet - outlet - losses - static,
     )

@@ -11,7 +11,15 @@ from dataclasses import dataclass, field
 from pathlib import Path
 from typing import Any
 
-from scalar_tables import COLUMNS, FITTING_N, OUTSIDE_DIAMETER_MM, PHASES, UNITS, WALL_MM
+from scalar_tables import (
+    COLUMNS,
+    FITTING_N,
+    OUTSIDE_DIAMETER_MM,
+    PHASES,
+    STAINLESS_OUTSIDE_DIAMETER_MM,
+    UNITS,
+    WALL_MM,
+)
 
 CASES = ("minimum", "normal", "maximum")
 ZERO = ("NNF", "ATM")
@@ -128,7 +136,8 @@ def wall(classes: list[dict[str, str]], name: str, nps: float) -> tuple[str, boo
                 thickness = WALL_MM[schedule].get(nps, math.nan)
             else:
                 thickness = float(row["wall_thickness [mm]"])
-            bore = (OUTSIDE_DIAMETER_MM[nps] - 2 * thickness) / 1000
+            diameters = STAINLESS_OUTSIDE_DIAMETER_MM if schedule.endswith("S") else OUTSIDE_DIAMETER_MM
+            bore = (diameters[nps] - 2 * thickness) / 1000
             return schedule, not math.isnan(thickness), bore, float(row["roughness [mm]"]) / 1000
     raise KeyError(f"{name} {nps}")
 

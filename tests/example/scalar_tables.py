@@ -13,6 +13,9 @@ OUTSIDE_DIAMETER_MM = {
     30.0: 762.0, 36.0: 914.0,
 }  # fmt: skip
 
+# The same two pipes in the metric columns of ASME B36.19M, which round 10.750 and 12.750 in the other way.
+STAINLESS_OUTSIDE_DIAMETER_MM = {**OUTSIDE_DIAMETER_MM, 10.0: 273.1, 12.0: 323.9}
+
 # A size that is not in a schedule's row does not exist in that schedule (checked for NPS 1/2 to 24).
 WALL_MM = {
     "20": {8.0: 6.35, 10.0: 6.35, 12.0: 6.35, 14.0: 7.92, 16.0: 7.92, 18.0: 7.92, 20.0: 9.53, 24.0: 9.53},

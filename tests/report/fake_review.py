@@ -125,6 +125,8 @@ class FakeReview:
     understood: tuple[str, ...] = ()
     columns_matched: tuple[tuple[str, str, str, str], ...] = ()
     columns_unmatched: tuple[str, ...] = ()
+    faults: tuple[str, ...] = ()
+    approvals: tuple[tuple[str, ...], ...] = ()
     tally: Mapping[str, int] = field(default_factory=dict)
 
     @property
@@ -171,13 +173,19 @@ class FakeReview:
     def hydraulics_columns(self) -> list[tuple[str, str, np.ndarray[Any, Any]]]:
         numbers = np.linspace(0.5, 5.0, self.line_cases)
         gaps = np.where(np.arange(self.line_cases) % 7 == 0, np.nan, numbers)
-        regime = np.array(["segregated", "=evil()"] * self.lines_count, dtype=object)
         return [
             ("velocity", "m/s", gaps),
             ("dp_total", "Pa", numbers * 1e5),
             ("reynolds", "", numbers * 1e5),
-            ("flow_regime", "", regime),
         ]
+
+    def flow_regimes(self) -> list[str]:
+        return ["segregated", "=evil()"] * self.lines_count
+
+    @property
+    def deviations(self) -> pd.DataFrame:
+        columns = ["line_number", "case", "rule", "written", "approved_by", "reference", "until", "state"]
+        return pd.DataFrame(list(self.approvals), columns=columns)
 
     def line_case_labels(self) -> list[tuple[str, str]]:
         return [(line, case) for line in self.line_numbers for case in ("normal", "maximum")]
@@ -259,7 +267,7 @@ def make_result(place: int, line_number: str) -> FakeResult:
 
 
 def make_review(
-    *, lines: int = 150, exceptions: int = 40, points: int = 900, hostile: bool = False, **changes: Any
+    *, lines: int = 150, exceptions: int = 40, points: int = 120, hostile: bool = False, **changes: Any
 ) -> FakeReview:
     """Return a review with as many lines and exceptions as wanted; hostile texts in every cell text when asked."""
     numbers = tuple(f"{10 + place % 4}-{('SWS', 'AM', 'ME', 'LS')[place % 4]}-{1000 + place}" for place in range(lines))
@@ -274,7 +282,11 @@ def make_review(
     address = Address(FILE, 17, "Flow Max [kg/h]" if not hostile else HOSTILE[2])
     settings: dict[str, Any] = {
         "tally": _tally(lines * 2 * len(RULES), exceptions),
-        "approved": (make_outcome(3, numbers[1], outcome="approved deviation"),),
+        "approved": (make_outcome(3, numbers[-1], outcome="approved deviation"),),
+        "approvals": (
+            (numbers[-1], "", "two-phase-velocity", "3.6 m/s", "piping lead", "MQ-DEV-004", "2030-06-30", "used"),
+            (spare[0], "normal", "gas-velocity", "22 m/s", "piping lead", "MQ-DEV-005", "2020-01-31", "stale"),
+        ),
         "not_checked_groups": _groups(numbers, spare),
         "hold_items": tuple(HoldItem(numbers[k % lines], "pressure", text, address) for k, text in enumerate(spare)),
         "unread_items": tuple(
@@ -299,7 +311,8 @@ def make_review(
 
 
 def _tally(outcomes: int, exceptions: int) -> dict[str, int]:
-    counts = {"does not meet": exceptions, "not checked": 230, "not applicable": outcomes // 4, "approved deviation": 2}
+    counts = {"does not meet": exceptions, "not checked": min(230, outcomes // 10), "approved deviation": 2}
+    counts["not applicable"] = outcomes // 4
     return counts | {"meets": outcomes - sum(counts.values())}
 
 
