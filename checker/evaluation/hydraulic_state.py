@@ -25,6 +25,9 @@ HYDRAULIC_OUTPUTS = (
     "pressure_inlet", "pressure_outlet", "mach", "mach_outlet", "momentum_flux", "wall_shear_stress",
     "liquid_holdup",
 )  # fmt: skip
+ROUTE = (
+    "pipe_length", "fittings_length", "fittings_n", "fittings_k", "entrances", "entrance_coefficient", "exits",
+)  # fmt: skip
 SOLVED = (
     *HYDRAULIC_OUTPUTS,
     "flow_regime", "density_outlet", "velocity_at_stated_pressure", "fittings_coefficient", "status", "transitional",
@@ -56,7 +59,8 @@ def route(
     straight = np.where(by_length & np.isnan(length_listed) & ~_open(length_gap), equivalent_length, length_listed)
     surplus = np.where(by_length, equivalent_length - straight, np.nan)
     read = read_fittings(list(fittings.texts))
-    cell = {name: _by_text(getattr(read, name), fittings) for name in ("n", "k", "entrances", "exits", "entrance_coefficient")}
+    counted = ("n", "k", "entrances", "exits", "entrance_coefficient")
+    cell = {name: _by_text(getattr(read, name), fittings) for name in counted}
     allowance = (equivalent_length_gap == Gap.NO_COLUMN) & (fittings_gap == Gap.NO_COLUMN)
     by_allowance = np.where(allowance, criteria.fittings_allowance * straight, np.nan)
     extra = np.where(by_length, np.where(surplus >= 0.0, surplus, np.nan), by_allowance)
@@ -151,6 +155,6 @@ def hydraulics(
 
 
 PROVIDERS = (
-    provider(route, "pipe_length", "fittings_length", "fittings_n", "fittings_k", "entrances", "entrance_coefficient", "exits"),
+    provider(route, *ROUTE),
     provider(hydraulics, *SOLVED, "solution", "solver_arguments"),
 )

@@ -27,7 +27,7 @@ __all__ = ["FLOW_REGIMES", "STATUS_CODES", "STATUS_SENTENCES", "Methods", "Solut
 
 #: Cases worked on at once, by phase. Small blocks stay in the processor's cache; the march of two-phase lines has so
 #: many short steps that few large blocks are quicker.
-_BLOCKS = {LIQUID: 16384, GAS: 16384, TWO_PHASE: 65536}
+_BLOCKS = {LIQUID: 8192, GAS: 8192, TWO_PHASE: 65536}
 
 
 @np.errstate(all="ignore")

@@ -10,6 +10,7 @@ from checker.criteria.hints import ColumnHint
 from checker.errors import InputError, Problem
 from checker.fields import Field, all_fields, field_named
 from checker.intake.case_names import canonical_case
+from checker.intake.cells import CodedCells
 from checker.intake.headers import read_header, unit_in_header
 from checker.intake.layout import Layout
 from checker.intake.sizes import column_basis
@@ -17,7 +18,7 @@ from checker.intake.texts import fold_words, key_of, place, shown
 from checker.intake.unit_words import settled_by, size_basis, unit_in_cell, unit_or_refusal
 from checker.units import Unit, read_unit
 
-__all__ = ["Plan", "PlannedColumn", "hint_fields", "number_columns", "plan_columns"]
+__all__ = ["Plan", "PlannedColumn", "hint_fields", "plan_columns"]
 
 UNITLESS = frozenset({"dimensionless", "fraction"})
 CELLS_LOOKED_AT = 2_000
@@ -100,20 +101,15 @@ def _drafts(layout: Layout, hints: Mapping[str, ColumnHint], file: str) -> list[
     return drafts
 
 
-def number_columns(layout: Layout, hints: Mapping[str, ColumnHint], file: str) -> tuple[int, ...]:
-    """Return the columns whose headers promise numbers."""
-    return tuple(draft.index for draft in _drafts(layout, hints, file) if draft.fields[0].kind == "number")
-
-
 def _knows(field: Field, unit: str) -> bool:
     reading = unit_or_refusal(unit, field.dimension) if unit and field.kind == "number" else ""
     return not isinstance(reading, str)
 
 
-def _by_cells(fields: Sequence[Field], cells: Sequence[str]) -> Field | None:
+def _by_cells(fields: Sequence[Field], cells: CodedCells) -> Field | None:
     """Return the field whose dimension knows the units that the cells themselves carry."""
     counts = dict.fromkeys(fields, 0)
-    for cell in islice(dict.fromkeys(cells), CELLS_LOOKED_AT):
+    for cell in cells.texts[:CELLS_LOOKED_AT]:
         unit = cell.strip().lstrip("+-0123456789.,eE ")
         for field in fields:
             counts[field] += bool(unit) and not isinstance(unit_in_cell(unit, field.dimension), str)
@@ -121,7 +117,7 @@ def _by_cells(fields: Sequence[Field], cells: Sequence[str]) -> Field | None:
     return best if counts[best] else None
 
 
-def _one_field(draft: _Draft, row_unit: str, units: Mapping[str, str], cells: Sequence[str]) -> Field:
+def _one_field(draft: _Draft, row_unit: str, units: Mapping[str, str], cells: CodedCells) -> Field:
     """Return the one field of a header that fits several: its unit's dimension decides."""
     fields = draft.fields
     if len(fields) == 1:
@@ -158,7 +154,7 @@ def _with_unit(column: PlannedColumn, row_unit: str, units: Mapping[str, str]) -
 
 
 def _with_basis(
-    column: PlannedColumn, row_unit: str, units: Mapping[str, str], cells: Sequence[str], comma: bool
+    column: PlannedColumn, row_unit: str, units: Mapping[str, str], cells: CodedCells, comma: bool
 ) -> PlannedColumn:
     """Return a size column with the basis of its bare numbers, empty where nothing says it."""
     stated = (
@@ -169,7 +165,7 @@ def _with_basis(
 
 
 def _measured(
-    column: PlannedColumn, layout: Layout, units: Mapping[str, str], cells: Sequence[str], comma: bool
+    column: PlannedColumn, layout: Layout, units: Mapping[str, str], cells: CodedCells, comma: bool
 ) -> PlannedColumn:
     row_unit = layout.units[column.index]
     if column.field.kind == "number":
@@ -252,7 +248,7 @@ def _notes(
 
 def plan_columns(
     layout: Layout,
-    cells: Sequence[Sequence[str]],
+    cells: Sequence[CodedCells],
     *,
     file: str,
     hints: Mapping[str, ColumnHint],

@@ -2,22 +2,30 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Sequence
+from collections.abc import Callable, Mapping, Sequence
 from dataclasses import dataclass, field
 
 import numpy as np
 
 from checker.fields import Field
+from checker.intake.cells import CodedCells, plain_numbers
 from checker.intake.columns import PlannedColumn
 from checker.intake.number_cells import NumberContext, read_number_cell, unit_rests_on
-from checker.intake.placeholders import holds, placeholder
+from checker.intake.placeholders import OPEN_WORDS, holds, placeholder
 from checker.intake.sizes import read_size
 from checker.intake.texts import shown, tidy
 from checker.intake.unit_words import unit_or_refusal
-from checker.model import BoolArray, CodeArray, Coded, FloatArray, Gap
+from checker.model import BoolArray, CodeArray, Coded, FloatArray, Gap, IntArray
 from checker.units import from_si, to_si
 
-__all__ = ["ConvertedNumbers", "ConvertedTexts", "convert_numbers", "convert_sizes", "convert_texts", "find_open_items"]
+__all__ = [
+    "ConvertedNumbers",
+    "ConvertedTexts",
+    "convert_line_numbers",
+    "convert_numbers",
+    "convert_sizes",
+    "convert_texts",
+]
 
 NAN = float("nan")
 _PHASES = {
@@ -37,7 +45,7 @@ class ConvertedNumbers:
     """A column of numbers in SI, one a line: NaN and a gap where there is none, and the reason of each refusal.
 
     `column_refusal` holds for every bare number of the column; `reasons` are those of single cells; `rests_on` says
-    which numbers still need the density or the phase beside them; `no_flow` where the cell says so in words.
+    which numbers still need the density or the phase beside them.
     """
 
     values: FloatArray
@@ -58,39 +66,15 @@ class ConvertedTexts:
     holds: list[int] = field(default_factory=list)
 
 
-def _plain_numbers(
-    cells: Sequence[str], plain: tuple[FloatArray, list[int]] | None, column: PlannedColumn, atmosphere: float
-) -> tuple[ConvertedNumbers, list[int]]:
-    """Return the plain numbers of a column in SI, and the indices of the cells still to be read."""
-    numbers, odd = (np.full(len(cells), NAN), list(range(len(cells)))) if plain is None else plain
-    gaps = np.full(len(cells), Gap.GIVEN, dtype=np.int8)
-    if column.reading is None:
-        gaps[:] = Gap.REFUSED
-        numbers[:] = NAN
-    else:
-        numbers = to_si(numbers, column.reading, atmosphere=atmosphere)
-    rests_on = unit_rests_on(column.reading)
-    basis = np.full(len(cells), rests_on, dtype=np.int8) if rests_on else None
-    return ConvertedNumbers(numbers, gaps, column.refusal, rests_on=basis), odd
-
-
 def convert_numbers(
-    cells: Sequence[str],
-    plain: tuple[FloatArray, list[int]] | None,
-    column: PlannedColumn,
-    *,
-    atmosphere: float,
-    delimiter: str,
-    comma: bool,
+    cells: CodedCells, column: PlannedColumn, *, atmosphere: float, delimiter: str, comma: bool
 ) -> ConvertedNumbers:
     """Convert a column of number cells to SI.
 
     Parameters
     ----------
-    cells : sequence of str
+    cells : CodedCells
         The cells as written.
-    plain : tuple of float array and list of int, or None
-        The plain numbers among them and the indices of the other cells; None where no cell may be taken as plain.
     column : PlannedColumn
         Field and unit of the column.
     atmosphere : float
@@ -98,37 +82,59 @@ def convert_numbers(
     delimiter : str
         Delimiter of the file.
     comma : bool
-        Whether the list is written with decimal commas.
+        Whether the list is written with decimal commas: then no text is taken as plain.
 
     Returns
     -------
     ConvertedNumbers
-        SI values; every other distinct text is read once; values outside the field's bounds are refused.
+        SI values. Plain numbers are converted in one step and every other distinct text is read once; values outside
+        the field's bounds are refused.
     """
     context = NumberContext(column.field, column.reading, column.refusal, atmosphere, delimiter, comma)
     with np.errstate(all="ignore"):
-        converted, odd = _plain_numbers(cells, plain, column, atmosphere)
-        _read_odd(cells, odd, converted, context)
-        _check_bounds(cells, converted, column.field, atmosphere)
+        distinct = _distinct_numbers(cells.texts, context)
+        _check_bounds(cells.texts, distinct, column.field, atmosphere)
+    return _spread(distinct, cells.codes)
+
+
+def _distinct_numbers(texts: Sequence[str], context: NumberContext) -> ConvertedNumbers:
+    """Return the numbers of distinct texts, before any look at what is possible."""
+    values, odd = (np.full(len(texts), NAN), list(range(len(texts)))) if context.comma else plain_numbers(texts)
+    gaps = np.full(len(texts), Gap.GIVEN, dtype=np.int8)
+    if context.unit is None:
+        gaps[:], values[:] = Gap.REFUSED, NAN
+    else:
+        values = to_si(values, context.unit, atmosphere=context.atmosphere)
+    rests_on = np.full(len(texts), unit_rests_on(context.unit), dtype=np.int8)
+    converted = ConvertedNumbers(values, gaps, context.refusal, rests_on=rests_on)
+    for index in odd:
+        reading = read_number_cell(texts[index], context)
+        values[index], gaps[index], rests_on[index] = reading.value, reading.gap, reading.rests_on
+        if reading.gap is Gap.REFUSED and reading.reason is not context.refusal:
+            converted.reasons[index] = reading.reason
     return converted
 
 
-def _read_odd(cells: Sequence[str], odd: Sequence[int], converted: ConvertedNumbers, context: NumberContext) -> None:
-    readings = {text: read_number_cell(text, context) for text in dict.fromkeys(cells[index] for index in odd)}
-    mine = [readings[cells[index]] for index in odd]
-    indices = np.asarray(odd, dtype=np.intp)
-    converted.values[indices] = [reading.value for reading in mine]
-    converted.gaps[indices] = [reading.gap for reading in mine]
-    rests_on = [reading.rests_on for reading in mine]
-    if any(rests_on) or converted.rests_on is not None:
-        if converted.rests_on is None:
-            converted.rests_on = np.zeros(len(cells), dtype=np.int8)
-        converted.rests_on[indices] = rests_on
-    for index, reading in zip(odd, mine, strict=True):
-        if reading.gap is Gap.REFUSED and reading.reason is not context.refusal:
-            converted.reasons[index] = reading.reason
-        elif reading.gap is Gap.HOLD:
-            converted.holds.append(index)
+def _spread(distinct: ConvertedNumbers, codes: IntArray) -> ConvertedNumbers:
+    """Return the numbers of all cells from those of the distinct texts."""
+    gaps = distinct.gaps[codes]
+    rests_on = distinct.rests_on[codes] if distinct.rests_on is not None and distinct.rests_on.any() else None
+    return ConvertedNumbers(
+        distinct.values[codes],
+        gaps,
+        distinct.column_refusal,
+        _spread_reasons(distinct.reasons, codes, distinct.gaps.size),
+        np.flatnonzero(gaps == Gap.HOLD).tolist(),
+        rests_on,
+    )
+
+
+def _spread_reasons(reasons: Mapping[int, str], codes: IntArray, count: int) -> dict[int, str]:
+    """Return the reason of each refused cell from those of the distinct texts."""
+    refused = np.zeros(count, dtype=np.bool_)
+    refused[list(reasons)] = True
+    mine = np.flatnonzero(refused[codes])
+    return dict(zip(mine.tolist(), map(reasons.__getitem__, codes[mine].tolist()), strict=True))
 
 
 def _impossible(text: str, value: float, field_: Field, atmosphere: float) -> str:
@@ -150,27 +156,24 @@ def _impossible(text: str, value: float, field_: Field, atmosphere: float) -> st
     )
 
 
-def _check_bounds(cells: Sequence[str], converted: ConvertedNumbers, field_: Field, atmosphere: float) -> None:
-    values = converted.values
+def _check_bounds(texts: Sequence[str], distinct: ConvertedNumbers, field_: Field, atmosphere: float) -> None:
+    values = distinct.values
     possible = (values > field_.above) & (values < field_.below)
-    wrong = np.flatnonzero((converted.gaps == Gap.GIVEN) & ~possible)
+    wrong = np.flatnonzero((distinct.gaps == Gap.GIVEN) & ~possible)
     for index in wrong.tolist():
-        converted.reasons[index] = _impossible(cells[index], float(values[index]), field_, atmosphere)
+        distinct.reasons[index] = _impossible(texts[index], float(values[index]), field_, atmosphere)
     values[wrong] = NAN
-    converted.gaps[wrong] = Gap.REFUSED
+    distinct.gaps[wrong] = Gap.REFUSED
     values += 0.0
 
 
-def convert_sizes(cells: Sequence[str], column: PlannedColumn, *, comma: bool) -> ConvertedNumbers:
+def convert_sizes(cells: CodedCells, column: PlannedColumn, *, comma: bool) -> ConvertedNumbers:
     """Convert a column of nominal sizes to NPS inches."""
-    readings = {text: read_size(text, column.basis, comma) for text in dict.fromkeys(cells)}
-    distinct = {text: index for index, text in enumerate(readings)}
-    position = np.fromiter(map(distinct.__getitem__, cells), dtype=np.int32, count=len(cells))
-    values = np.array([reading.nps for reading in readings.values()], dtype=np.float64)[position]
-    gaps = np.array([reading.gap for reading in readings.values()], dtype=np.int8)[position]
-    refused = np.flatnonzero(gaps == Gap.REFUSED).tolist()
-    reasons = {index: readings[cells[index]].reason for index in refused}
-    return ConvertedNumbers(values, gaps, "", reasons, np.flatnonzero(gaps == Gap.HOLD).tolist())
+    readings = [read_size(text, column.basis, comma) for text in cells.texts]
+    values = np.array([reading.nps for reading in readings], dtype=np.float64)
+    gaps = np.array([reading.gap for reading in readings], dtype=np.int8)
+    reasons = {index: reading.reason for index, reading in enumerate(readings) if reading.gap is Gap.REFUSED}
+    return _spread(ConvertedNumbers(values, gaps, "", reasons), cells.codes)
 
 
 def _plain(text: str, field_: Field) -> tuple[str, Gap, str]:
@@ -193,34 +196,33 @@ def _vocabulary(text: str, field_: Field) -> tuple[str, Gap, str]:
     return "", Gap.REFUSED, f"{shown(text)} is no {field_.name.replace('_', ' ')}: write one of {names}."
 
 
-def convert_texts(cells: Sequence[str], field_: Field) -> ConvertedTexts:
+def convert_texts(cells: CodedCells, field_: Field) -> ConvertedTexts:
     """Convert a column of texts to codes; the phase and the pressure's end become canonical words."""
     read: Callable[[str, Field], tuple[str, Gap, str]] = _vocabulary if field_.name in _VOCABULARY else _plain
-    distinct = {text: index for index, text in enumerate(dict.fromkeys(cells))}
-    position = np.fromiter(map(distinct.__getitem__, cells), dtype=np.int32, count=len(cells))
-    readings = [read(text, field_) for text in distinct]
+    readings = [read(text, field_) for text in cells.texts]
     texts: dict[str, int] = {}
     codes = [texts.setdefault(text, len(texts)) if gap is Gap.GIVEN else -1 for text, gap, _ in readings]
-    gaps = np.array([gap for _, gap, _ in readings], dtype=np.int8)[position]
-    reasons = {i: readings[position[i]][2] for i in np.flatnonzero(gaps == Gap.REFUSED).tolist()}
-    open_items: BoolArray = np.array(
-        [
-            gap is Gap.HOLD or (gap is Gap.GIVEN and holds(text))
-            for text, (_, gap, _) in zip(distinct, readings, strict=True)
-        ],
-        dtype=np.bool_,
-    )[position]
+    gaps = np.array([gap for _, gap, _ in readings], dtype=np.int8)
+    reasons = {index: reason for index, (_, _, reason) in enumerate(readings) if reason}
     return ConvertedTexts(
-        Coded(np.array(codes, dtype=np.int32)[position], tuple(texts)),
-        gaps,
-        reasons,
-        np.flatnonzero(open_items).tolist(),
+        Coded(np.array(codes, dtype=np.int32)[cells.codes], tuple(texts)),
+        gaps[cells.codes],
+        _spread_reasons(reasons, cells.codes, len(readings)),
+        find_open_items(cells, certain=gaps == Gap.HOLD),
     )
 
 
-def find_open_items(cells: Sequence[str]) -> ConvertedTexts:
-    """Return the open items of a column whose texts are kept as written elsewhere (line numbers)."""
-    capitals = "\n".join(cells).upper()
-    suspect = any(word in capitals for word in ("HOLD", "TB", "VTA", "LATER", "VENDOR", "PENDING"))
-    found = [index for index, text in enumerate(cells) if holds(text)] if suspect else []
-    return ConvertedTexts(Coded(np.full(len(cells), -1, dtype=np.int32), ()), np.zeros(len(cells), np.int8), {}, found)
+def find_open_items(cells: CodedCells, *, certain: BoolArray | None = None) -> list[int]:
+    """Return the indices of the cells that carry an open item, those of the `certain` texts among them."""
+    capitals = "\n".join(cells.texts).upper()
+    found = np.zeros(len(cells.texts), dtype=np.bool_) if certain is None else certain
+    if any(word in capitals for word in OPEN_WORDS):
+        found = found | np.array([holds(text) for text in cells.texts], dtype=np.bool_)
+    return np.flatnonzero(found[cells.codes]).tolist()
+
+
+def convert_line_numbers(cells: CodedCells) -> ConvertedTexts:
+    """Return the open items of the line numbers, whose texts are kept as written beside the table."""
+    count = len(cells)
+    missing = Coded(np.full(count, -1, dtype=np.int32), ())
+    return ConvertedTexts(missing, np.zeros(count, dtype=np.int8), {}, find_open_items(cells))

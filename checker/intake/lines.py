@@ -3,23 +3,24 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Iterator, Mapping, Sequence
+from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
 from itertools import compress
 
 import numpy as np
 
 from checker.errors import InputError, Problem
-from checker.intake.floats import FloatColumn
+from checker.intake.cells import CellCollector, CodedCells
 from checker.intake.layout import Layout
 from checker.intake.records import MOST_COLUMNS, Block, Form, read_blocks
 from checker.intake.texts import place, shown
-from checker.model import Address, BoolArray, FloatArray, IntArray, UnreadItem
+from checker.model import Address, BoolArray, IntArray, UnreadItem
 
 __all__ = ["Lines", "find_lines"]
 
 _NO_LINE = re.compile(
-    r"(grand |sub-?\s?)?totals?\b(?!\w)|(sub)?sum\b|page \d+( of \d+)?\s*$|end of (list|table)", re.IGNORECASE
+    r"(grand |sub-?\s?)?totals?(?=$|[:\s])|(sub)?sum(?=$|[:\s])|page \d+( of \d+)?\s*$|end of (list|table)",
+    re.IGNORECASE,
 )
 _HEADING = re.compile(
     r"(general )?notes?\b|legend\b|abbreviations?\b|remarks?:|hold list|\(?\d{1,2}[).] \w", re.IGNORECASE
@@ -34,14 +35,13 @@ NAMED_ROWS = 6
 class Lines:
     """Lines of the list.
 
-    `columns` holds the cells by column, one a line; `floats` the plain numbers of number columns and the indices of
-    their odd cells; `row` the row of each line; `broken` the reason why every value of a line is refused, by line.
+    `columns` holds the cells by column, one a line; `row` the row of each line; `broken` the reason why every value of
+    a line is refused, by line.
     """
 
     numbers: tuple[str, ...]
     row: IntArray
-    columns: tuple[tuple[str, ...], ...]
-    floats: Mapping[int, tuple[FloatArray, list[int]]]
+    columns: tuple[CodedCells, ...]
     broken: dict[int, str]
     unread: tuple[UnreadItem, ...]
     notes: tuple[str, ...]
@@ -50,17 +50,12 @@ class Lines:
 class _Table:
     """Rows of the table turned into columns, block by block."""
 
-    def __init__(self, width: int, number_columns: Sequence[int]) -> None:
+    def __init__(self, width: int) -> None:
         self.width = width
-        self.columns: list[list[str]] = [[] for _ in range(width)]
-        self.floats = {index: FloatColumn() for index in number_columns}
+        self.collectors = [CellCollector() for _ in range(width)]
         self.row_numbers: list[int] = []
         self.broken: dict[int, str] = {}
         self.short: list[int] = []
-
-    def row(self, index: int) -> list[str]:
-        """Return the cells of a row."""
-        return [column[index] for column in self.columns]
 
     def add(self, block: Block, delimiter: str) -> None:
         """Append a block: short rows are filled, over-long and damaged ones marked as broken, blank ones left out."""
@@ -69,10 +64,8 @@ class _Table:
             self.row_numbers.extend(range(block.first + 1, block.first + 1 + len(rows)))
         else:
             rows = list(self._evened(block, delimiter))
-        for index, cells in enumerate(zip(*rows, strict=True)):
-            self.columns[index].extend(cells)
-            if index in self.floats:
-                self.floats[index].add(cells)
+        for collector, cells in zip(self.collectors, zip(*rows, strict=True), strict=bool(rows)):
+            collector.add(cells)
 
     def _evened(self, block: Block, delimiter: str) -> Iterator[list[str]]:
         width = self.width
@@ -131,21 +124,24 @@ def _suspects(numbers: Sequence[str], header: str) -> list[int]:
     return [index for index, number in enumerate(numbers) if doubtful(number)]
 
 
-def _numbers(cells: Sequence[str]) -> list[str]:
+def _numbers(cells: CodedCells) -> list[str]:
     """Return line numbers with runs of blanks and line breaks as one blank."""
-    if re.search(r"\s\s|[\t-\r]|\s\0|\0\s", "\0".join(["", *cells, ""])) is None:
-        return list(cells)
-    return [" ".join(text.split()) for text in cells]
+    tidied = [" ".join(text.split()) for text in cells.texts]
+    return list(map(tidied.__getitem__, cells.codes.tolist()))
 
 
-def _unread(index: int, reason: str, table: _Table, file: str, header: str) -> UnreadItem:
-    row = table.row_numbers[index]
-    text = " | ".join(cell.strip() for cell in table.row(index) if cell.strip())
+def _row(columns: Sequence[CodedCells], index: int) -> list[str]:
+    """Return the cells of a row that are not blank."""
+    return [text for column in columns if (text := column[index].strip())]
+
+
+def _unread(index: int, row: int, reason: str, columns: Sequence[CodedCells], file: str, header: str) -> UnreadItem:
+    text = " | ".join(_row(columns, index))
     return UnreadItem("", text[:200], f"Row {row} {shown(text)}: {reason}", Address(file, row, header))
 
 
-def _table(text: str, form: Form, layout: Layout, number_columns: Sequence[int], file: str) -> _Table:
-    table = _Table(len(layout.headers), () if form.comma else number_columns)
+def _table(text: str, form: Form, layout: Layout, file: str) -> _Table:
+    table = _Table(len(layout.headers))
     skip = layout.first_row - 1
     for block in read_blocks(text, delimiter=form.delimiter, file=file):
         above = max(0, min(skip - block.first, len(block.rows)))
@@ -172,9 +168,7 @@ def _refuse_damaged_header(block: Block, above: int, layout: Layout, form: Form,
         raise InputError(Problem(what, where=place(file, block.first + row + 1), remedy=remedy))
 
 
-def find_lines(
-    text: str, form: Form, layout: Layout, *, file: str, line_column: int, number_columns: Sequence[int]
-) -> Lines:
+def find_lines(text: str, form: Form, layout: Layout, *, file: str, line_column: int) -> Lines:
     """Read the rows beneath the header and return the lines, and the rows that are none.
 
     Parameters
@@ -187,26 +181,24 @@ def find_lines(
         Name of the file, for messages.
     line_column : int
         Column of the line number.
-    number_columns : sequence of int
-        Columns whose plain numbers are read on the way.
 
     Raises
     ------
     InputError
         If the table holds no line at all: nothing read is never nothing wrong.
     """
-    table = _table(text, form, layout, number_columns, file)
+    table = _table(text, form, layout, file)
     header = layout.headers[line_column]
-    columns = tuple(map(tuple, table.columns))
+    columns = tuple(collector.cells() for collector in table.collectors)
     numbers = _numbers(columns[line_column])
     keep = np.ones(len(numbers), dtype=np.bool_)
     unread: list[UnreadItem] = []
     for index in _suspects(numbers, header):
-        blank = not any(cell.strip() for cell in table.row(index))
+        blank = not _row(columns, index)
         reason = "" if blank else _why_no_line(numbers[index], header, columns, line_column, index)
         keep[index] = not (blank or reason)
         if reason:
-            unread.append(_unread(index, reason, table, file, header))
+            unread.append(_unread(index, table.row_numbers[index], reason, columns, file, header))
     if not keep.any():
         raise InputError(
             Problem(
@@ -220,7 +212,7 @@ def find_lines(
 
 def _kept(
     table: _Table,
-    columns: tuple[tuple[str, ...], ...],
+    columns: tuple[CodedCells, ...],
     numbers: Sequence[str],
     keep: BoolArray,
     unread: tuple[UnreadItem, ...],
@@ -230,15 +222,18 @@ def _kept(
     if table.short:
         notes.append(f"Rows shorter than the header, the rest taken as blank: {_named(table.short)}.")
     written = columns[line_column]
-    joined = [table.row_numbers[i] for i, number in enumerate(numbers) if number != written[i].strip() and keep[i]]
+    joined = [
+        table.row_numbers[index]
+        for index, (number, text) in enumerate(zip(numbers, written, strict=True))
+        if number != text.strip() and keep[index]
+    ]
     if joined:
         notes.append(f"Line numbers with line breaks or runs of blanks, joined by one blank: rows {_named(joined)}.")
     place_of = np.cumsum(keep) - 1
     return Lines(
         tuple(compress(numbers, keep)),
         np.asarray(table.row_numbers, dtype=np.int32)[keep],
-        columns if keep.all() else tuple(tuple(compress(column, keep)) for column in columns),
-        {index: column.taken(keep) for index, column in table.floats.items()},
+        tuple(column.kept(keep) for column in columns),
         {int(place_of[index]): reason for index, reason in table.broken.items() if keep[index]},
         unread,
         tuple(notes),

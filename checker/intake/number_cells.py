@@ -42,7 +42,6 @@ class CellReading(NamedTuple):
     gap: Gap
     reason: str = ""
     rests_on: int = 0
-    no_flow: bool = False
 
 
 @dataclass(frozen=True, slots=True)
@@ -130,7 +129,7 @@ def _special(text: str, context: NumberContext) -> CellReading | None:
     """Return the reading of a word that stands for a value, or that asks for one."""
     word, field = word_of(text), context.field
     if word in NO_FLOW and field.name in _FLOWS:
-        return CellReading(0.0, Gap.GIVEN, no_flow=True)
+        return CellReading(0.0, Gap.GIVEN)
     if word in ATMOSPHERE and field.dimension == "pressure":
         return CellReading(context.atmosphere, Gap.GIVEN)
     if word in FULL_VACUUM and field.dimension == "pressure":

@@ -6,7 +6,7 @@ import re
 
 from checker.model import Gap
 
-__all__ = ["AMBIENT", "ATMOSPHERE", "FULL_VACUUM", "NO_FLOW", "holds", "placeholder", "word_of"]
+__all__ = ["AMBIENT", "ATMOSPHERE", "FULL_VACUUM", "NO_FLOW", "OPEN_WORDS", "holds", "placeholder", "word_of"]
 
 _HOLD_WORD = re.compile(r"\bHOLDS?\b(?!\s*-?\s*UP\b)|\b(?:TBC|TBA|TBD|TBF)\b", re.IGNORECASE)
 _LETTERS = re.compile(r"[A-Za-z./\s_-]+")
@@ -19,6 +19,7 @@ _HOLD_CELLS = frozenset(
 )  # fmt: skip
 _NOT_APPLICABLE = frozenset({"na", "notapplicable", "nr", "notrequired", "none", "nil"})
 _ABSENT_WORDS = frozenset({"none", "nil"})
+OPEN_WORDS = ("HOLD", "TB", "VTA", "VTS", "LATER", "VENDOR", "OTHERS", "TO BE", "PENDING")
 ATMOSPHERE = frozenset({"atm", "atmos", "atmospheric", "atmosphere"})
 FULL_VACUUM = frozenset({"fv", "fullvac", "fullvacuum", "vacuum", "vac"})
 AMBIENT = frozenset({"amb", "ambient", "ambt"})

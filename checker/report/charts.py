@@ -20,6 +20,9 @@ NEAR_LIMIT = 0.9
 AT_LIMIT = 1.0 + 1e-9
 WIDEST_UTILISATION = 2.0
 BINS = 40
+PALEST = 0.15
+# Few cells over the limit must not fade beside the many below it.
+PALEST_OVER = 0.55
 GOLDEN = 0.6180339887498949
 PHASES = {0: "Liquid", 1: "Gas", 2: "Two-phase"}
 FloatArray = NDArray[np.float64]
@@ -184,10 +187,9 @@ def _shade(axes: Any, corners: FloatArray, size: tuple[float, float], used: Floa
     from matplotlib.colors import to_rgba
 
     outline = np.array([(0.0, 0.0), (1.0, 0.0), (1.0, 1.0), (0.0, 1.0)]) * size
-    colours = [
-        to_rgba(_colour_of(float(each)), 0.15 + 0.85 * float(np.sqrt(part)))
-        for each, part in zip(used, share, strict=True)
-    ]
+    palest = np.where(used > 1.0, PALEST_OVER, PALEST)
+    shades = palest + (1.0 - palest) * np.sqrt(share)
+    colours = [to_rgba(_colour_of(float(each)), float(shade)) for each, shade in zip(used, shades, strict=True)]
     cells = PolyCollection(list(corners[:, np.newaxis, :] + outline), facecolors=colours, linewidths=0.0)
     axes.add_collection(cells, autolim=False)
 

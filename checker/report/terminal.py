@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 import textwrap
 from collections.abc import Iterator
 
@@ -75,7 +76,7 @@ def _worst(review: ReviewLike) -> Iterator[str]:
 def _exception(row: OutcomeRow) -> str:
     case = row.case or "no case named"
     against = f"{row.value_shown} against {row.limit_shown}" if row.limit_shown else row.value_shown
-    used = f"utilisation {utilisation(row.utilisation)}"
+    used = "" if math.isnan(row.utilisation) else f"utilisation {utilisation(row.utilisation)}"
     return "; ".join(part for part in (f"{row.line_number}, {case}", row.title, against, used, row.force) if part)
 
 

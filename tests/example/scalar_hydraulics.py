@@ -307,16 +307,14 @@ def two_phase_step(terms: Callable[[float], Terms], at: float, step: float, halv
     stages = [terms(at)]
     for share in (0.5, 0.5, 1.0):
         stages.append(terms(at - share * step * stages[-1].parts[0]))
-    weighted = zip((1, 2, 2, 1), (stage.parts for stage in stages), strict=True)
-    gains = [
-        step / 6 * sum(column) for column in zip(*([w * part for part in parts] for w, parts in weighted), strict=True)
-    ]
+    columns = zip(*(stage.parts for stage in stages), strict=True)
+    gains = [step / 6 * (first + 2 * second + 2 * third + fourth) for first, second, third, fourth in columns]
     patterns = {stage.pattern for stage in stages} | {terms(at - gains[0]).pattern}
     if len(patterns) == 1 or halvings == 0:
         return gains
-    first = two_phase_step(terms, at, step / 2, halvings - 1)
-    second = two_phase_step(terms, at - first[0], step / 2, halvings - 1)
-    return [one + other for one, other in zip(first, second, strict=True)]
+    near = two_phase_step(terms, at, step / 2, halvings - 1)
+    far = two_phase_step(terms, at - near[0], step / 2, halvings - 1)
+    return [one + other for one, other in zip(near, far, strict=True)]
 
 
 def two_phase(pipe: Pipe, mixture: Mixture, basis: str) -> Result:

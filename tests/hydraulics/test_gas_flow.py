@@ -5,12 +5,12 @@ from __future__ import annotations
 import fluids
 import numpy as np
 import pytest
+from hydraulics_cases import GAS, one_case
 
 from checker.hydraulics.compose import STATUS_CODES, solve
 from checker.hydraulics.ends import pressure_before_entrance, pressure_behind_entrance
 from checker.hydraulics.gas import choking_pressure, inlet_from_outlet, mach_number, outlet_from_inlet
 from checker.hydraulics.gas_profile import along_line
-from hydraulics_cases import GAS, one_case
 
 COUNT = 4000
 

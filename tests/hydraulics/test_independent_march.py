@@ -13,9 +13,9 @@ import fluids
 import numpy as np
 import pytest
 from fluids.two_phase import Beggs_Brill
+from hydraulics_cases import GAS, TWO_PHASE, one_case
 
 from checker.hydraulics.compose import Methods, solve
-from hydraulics_cases import GAS, TWO_PHASE, one_case
 
 G = 9.80665
 SEGMENTS = 1000

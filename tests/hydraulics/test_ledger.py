@@ -4,13 +4,13 @@ from __future__ import annotations
 
 import numpy as np
 import pytest
+from hydraulics_cases import GAS, TWO_PHASE, line_cases, one_case
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
 from checker.hydraulics import bernoulli
 from checker.hydraulics.compose import Methods, solve
 from checker.hydraulics.ledger import closing_error, ledger
-from hydraulics_cases import GAS, TWO_PHASE, line_cases, one_case
 
 METHODS = [Methods(), Methods(two_phase="homogeneous"), Methods(downhill_recovery=True)]
 

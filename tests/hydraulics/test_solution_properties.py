@@ -8,9 +8,9 @@ import warnings
 
 import numpy as np
 import pytest
+from hydraulics_cases import GAS, TWO_PHASE, line_cases, one_case
 
 from checker.hydraulics.compose import STATUS_CODES, STATUS_SENTENCES, Methods, Solution, solve
-from hydraulics_cases import GAS, TWO_PHASE, line_cases, one_case
 
 NAMES = [field.name for field in dataclasses.fields(Solution)]
 NUMBERS = [name for name in NAMES if name not in ("status", "flow_regime", "transitional", "choked")]

@@ -5,11 +5,11 @@ from __future__ import annotations
 import numpy as np
 import pytest
 from fluids.two_phase import Beggs_Brill
+from hydraulics_cases import TWO_PHASE, one_case
 
 from checker.hydraulics.beggs_brill import FLOW_REGIMES, local_state, pressure_gradient
 from checker.hydraulics.compose import STATUS_CODES, Methods, solve
 from checker.hydraulics.two_phase import mixture_density, no_slip, void_fraction
-from hydraulics_cases import TWO_PHASE, one_case
 
 
 def states(count: int = 3000, seed: int = 3) -> tuple[dict[str, np.ndarray], np.ndarray, np.ndarray]:
@@ -20,7 +20,8 @@ def states(count: int = 3000, seed: int = 3) -> tuple[dict[str, np.ndarray], np.
     quality[::11] = 0.0
     given = {
         "mass_flux": 10.0 ** random.uniform(0.5, 3.7, count), "vapour_fraction": quality,
-        "liquid_density": random.uniform(400.0, 1200.0, count), "vapour_density": 10.0 ** random.uniform(-0.3, 2.0, count),
+        "liquid_density": random.uniform(400.0, 1200.0, count),
+        "vapour_density": 10.0 ** random.uniform(-0.3, 2.0, count),
         "liquid_viscosity": 10.0 ** random.uniform(-4.0, -2.0, count),
         "vapour_viscosity": random.uniform(8e-6, 2e-5, count), "surface_tension": random.uniform(0.005, 0.07, count),
         "inside_diameter": random.uniform(0.02, 0.6, count), "roughness": random.uniform(0.0, 5e-4, count),
@@ -37,7 +38,8 @@ def test_gradient_agrees_with_fluids_in_every_regime_and_slope() -> None:
     compared = np.isfinite(found) & ~((number >= 2000.0) & (number < 2040.0))
     reference = np.array([
         Beggs_Brill(
-            m=g * np.pi / 4.0 * d**2, x=x, rhol=rl, rhog=rg, mul=ml, mug=mg, sigma=s, P=p, D=d, angle=a, roughness=r, L=1.0
+            m=g * np.pi / 4.0 * d**2, x=x, rhol=rl, rhog=rg, mul=ml, mug=mg, sigma=s, P=p, D=d, angle=a, roughness=r,
+            L=1.0,
         )
         for g, x, rl, rg, ml, mg, s, d, r, a, p in zip(
             *(given[name] for name in (

@@ -49,7 +49,7 @@ def test_adopted_values_go_before_the_table() -> None:
 def test_by_line() -> None:
     material = Coded(np.array([1, -1, 0, 2], dtype=np.int32), ("SS316L", "CS", "?"))
     found = roughness_by_material(material=material, adopted={})
-    assert found[[0, 2]].tolist() == [4.5e-5, 5e-5]
+    assert found[[0, 2]] == pytest.approx([4.5e-5, 5e-5], rel=1e-14)
     assert np.isnan(found[[1, 3]]).all()
 
 

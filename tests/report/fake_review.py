@@ -278,7 +278,7 @@ def make_review(
         make_outcome(place, numbers[(place * 2 // 3) % lines], line_case=place, cell=written and HOSTILE[place % 10])
         for place in range(exceptions)
     )
-    spare = HOSTILE if hostile else ("HOLD 3", "n/a", "2\" SCH 40")
+    spare = HOSTILE if hostile else ("HOLD 3", "n/a", '2" SCH 40')
     address = Address(FILE, 17, "Flow Max [kg/h]" if not hostile else HOSTILE[2])
     settings: dict[str, Any] = {
         "tally": _tally(lines * 2 * len(RULES), exceptions),

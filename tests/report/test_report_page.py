@@ -195,8 +195,8 @@ def test_paper_says_what_it_leaves_out() -> None:
 def test_an_empty_review_still_gives_every_section() -> None:
     review = make_review(
         lines=1, exceptions=0, points=0, approved=(), approvals=(), not_checked_groups=(),
-        hold_items=(), unread_items=(), assumption_items=(), caution_items=(), service_matches=(), columns_matched=(), columns_unmatched=(),
-        understood=(), reasons=(), tally={},
+        hold_items=(), unread_items=(), assumption_items=(), caution_items=(), service_matches=(),
+        columns_matched=(), columns_unmatched=(), understood=(), reasons=(), tally={},
     )  # fmt: skip
     text = BeautifulSoup(render_html(review), "html.parser").get_text()
     assert "No outcome could be judged" in text
