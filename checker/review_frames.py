@@ -17,7 +17,7 @@ from checker.ruling.run import Judged
 if TYPE_CHECKING:
     import pandas as pd
 
-    from checker.review import Review
+    from checker.review_record import Review
 
 __all__ = ["deviations_frame", "holds_frame", "items_frame", "outcomes_frame", "unread_frame"]
 

@@ -6,7 +6,7 @@ from typing import NamedTuple
 
 import numpy as np
 
-from checker.hydraulics.arrays import GRAVITY, ArrayLike, CodeArray, FloatArray, floats
+from checker.hydraulics.arrays import GRAVITY, ArrayLike, BoolArray, CodeArray, FloatArray, floats
 from checker.hydraulics.friction import friction_factor
 from checker.hydraulics.two_phase import NoSlip, no_slip
 
@@ -32,6 +32,7 @@ class TwoPhaseState(NamedTuple):
     no_slip_factor: FloatArray
     friction_factor: FloatArray
     slip_density: FloatArray
+    near_one: BoolArray
     mixture: NoSlip
 
 
@@ -82,7 +83,8 @@ def local_state(
     -------
     TwoPhaseState
         NaN, and regime -1, where an argument is NaN or outside its range. `friction_factor` is the Darcy factor of the
-        two-phase flow, to be used with the no-slip density; `slip_density` is the density with hold-up.
+        two-phase flow, to be used with the no-slip density; `slip_density` is the density with hold-up; `near_one`
+        tells where the friction exponent takes its formula for ratios of 1 to 1.2, at the end of which it jumps.
 
     Notes
     -----
@@ -106,9 +108,10 @@ def local_state(
         reynolds=mixture.density * mixture.velocity * bore / mixture.viscosity,
         relative_roughness=floats(roughness) / bore,
     )
-    factor = plain * np.exp(_friction_exponent(groups.log_fraction, holdup, mixture.liquid_fraction))
+    exponent, near_one = _friction_exponent(groups.log_fraction, holdup, mixture.liquid_fraction)
+    factor = plain * np.exp(exponent)
     slip = floats(liquid_density) * holdup + floats(vapour_density) * (1.0 - holdup)
-    return TwoPhaseState(holdup, regime, plain, factor, slip, mixture)
+    return TwoPhaseState(holdup, regime, plain, factor, slip, near_one, mixture)
 
 
 def _groups(
@@ -177,14 +180,18 @@ def _regime_holdup(regime: CodeArray, groups: _Groups) -> FloatArray:
     return np.asarray(np.where(np.isnan(groups.log_velocity_number + groups.sine), np.nan, holdup))
 
 
-def _friction_exponent(log_fraction: FloatArray, holdup: FloatArray, fraction: FloatArray) -> FloatArray:
+def _friction_exponent(
+    log_fraction: FloatArray, holdup: FloatArray, fraction: FloatArray
+) -> tuple[FloatArray, BoolArray]:
+    """Exponent S of the two-phase friction factor, and where its formula for ratios just above one holds."""
     log_ratio = log_fraction - 2.0 * np.log(holdup)
     ratio = np.exp(log_ratio)
     square = log_ratio * log_ratio
     general = log_ratio / (-0.0523 + 3.182 * log_ratio - 0.8725 * square + 0.01853 * square * square)
     near = np.log(2.2 * ratio - 1.2)
-    exponent = np.where((ratio > 1.0) & (ratio < 1.2), near, general)
-    return np.where(fraction == 0.0, 0.0, np.minimum(exponent, _LARGEST_EXPONENT))
+    near_one = (ratio > 1.0) & (ratio < 1.2)
+    exponent = np.where(near_one, near, general)
+    return np.where(fraction == 0.0, 0.0, np.minimum(exponent, _LARGEST_EXPONENT)), near_one
 
 
 @np.errstate(all="ignore")

@@ -130,8 +130,7 @@ def _width(terms: Slice, pressure: FloatArray) -> FloatArray:
 
 def _advance(walk: _Walk, method: Method, ledger: bool, result: March) -> None:
     width = np.minimum(walk.width, walk.left)
-    ahead, gain, fast, dry = _step(walk.line, walk.point, walk.sign * width, method, ledger)
-    crosses = (ahead.terms.branch != walk.point.terms.branch) & ~(fast | dry)
+    ahead, gain, fast, dry, crosses = _step(walk.line, walk.point, walk.sign * width, method, ledger)
     narrow = width <= walk.full * _NARROWEST
     failed = fast | dry
     taken = ~failed & (~crosses | narrow)
@@ -151,8 +150,8 @@ def _advance(walk: _Walk, method: Method, ledger: bool, result: March) -> None:
 
 def _step(
     line: TwoPhaseLine, point: _Point, width: FloatArray, method: Method, ledger: bool
-) -> tuple[_Point, FloatArray, BoolArray, BoolArray]:
-    """One Runge-Kutta step: the point ahead, the parts gained, whether it choked or ran dry."""
+) -> tuple[_Point, FloatArray, BoolArray, BoolArray, BoolArray]:
+    """One Runge-Kutta step: the point ahead, the parts gained, whether it choked, ran dry or met another regime."""
     slices = [point.terms]
     middle, place = point.place + 0.5 * width, point.place + width
     for share in (0.5, 0.5, 1.0):
@@ -160,16 +159,17 @@ def _step(
         slices.append(slice_at(line, trial, middle if share < 1.0 else place, method))
     pressure = point.pressure - width * _mean([s.drop for s in slices])
     end = slice_at(line, pressure, place, method)
-    fast = end.acceleration_factor >= 1.0
+    fast, crosses = end.acceleration_factor >= 1.0, end.branch != point.terms.branch
     for one in slices[1:]:
         fast = fast | (one.acceleration_factor >= 1.0)
+        crosses = crosses | (one.branch != point.terms.branch)
     dry = ~np.isfinite(pressure) | ~np.isfinite(end.drop)
     ahead = _Point(pressure, place, end)
     gain = np.empty((len(PARTS), pressure.size))
     for row, name in enumerate(PARTS[:7]):
         gain[row] = width * _mean([getattr(s, name) for s in slices])
     gain[7] = _pressure_term(line, point, ahead, width) if ledger else 0.0
-    return ahead, gain, fast, dry
+    return ahead, gain, fast, dry, crosses & ~(fast | dry)
 
 
 def _mean(values: list[FloatArray]) -> FloatArray:

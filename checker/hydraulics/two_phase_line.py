@@ -84,6 +84,7 @@ class State(NamedTuple):
     viscosity: FloatArray
     holdup: FloatArray
     regime: CodeArray
+    near_one: BoolArray
 
 
 def state_at(line: TwoPhaseLine, pressure: FloatArray, place: FloatArray, method: Method) -> State:
@@ -98,14 +99,16 @@ def state_at(line: TwoPhaseLine, pressure: FloatArray, place: FloatArray, method
         number = line.mass_flux * line.inside_diameter / mixture.viscosity
         factor = friction_factor(reynolds=number, relative_roughness=line.roughness / line.inside_diameter)
         return State(factor, factor, mixture.density, mixture.density, mixture.velocity, mixture.vapour_velocity,
-                     mixture.viscosity, mixture.liquid_fraction, np.full(factor.shape, -1, dtype=np.int8))
+                     mixture.viscosity, mixture.liquid_fraction, np.full(factor.shape, -1, dtype=np.int8),
+                     np.zeros(factor.shape, dtype=np.bool_))
     found = local_state(
         **shared, surface_tension=line.surface_tension, inside_diameter=line.inside_diameter,
         roughness=line.roughness, sine=line.sine,
     )
     mixture = found.mixture
     return State(found.friction_factor, found.no_slip_factor, found.slip_density, mixture.density, mixture.velocity,
-                 mixture.vapour_velocity, mixture.viscosity, found.liquid_holdup, found.flow_regime)
+                 mixture.vapour_velocity, mixture.viscosity, found.liquid_holdup, found.flow_regime,
+                 found.near_one)
 
 
 def slice_at(line: TwoPhaseLine, pressure: FloatArray, place: FloatArray, method: Method) -> Slice:
@@ -142,4 +145,4 @@ def _branch(state: State, line: TwoPhaseLine) -> CodeArray:
     """Code of the formulas in use: where it changes along the line, a step is divided."""
     number = line.mass_flux * line.inside_diameter / state.viscosity
     laminar = np.where(number < LAMINAR_LIMIT, 8, 0)
-    return (state.regime + laminar).astype(np.int8)
+    return (state.regime + laminar + np.where(state.near_one, 16, 0)).astype(np.int8)

@@ -90,8 +90,7 @@ def _spread_numbers(
         mine = converted[column.index]
         assert isinstance(mine, ConvertedNumbers)
         values[:, position], gaps[:, position] = mine.values, mine.gaps
-        if mine.rests_on is not None:
-            rests_on[:, position] = mine.rests_on
+        rests_on[:, position] = mine.rests_on
         _refusal_texts(column, mine, grid, position, into)
     into.numbers[field_.name], into.gaps[field_.name] = values.ravel(), gaps.ravel()
     return rests_on.ravel()

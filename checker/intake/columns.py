@@ -10,7 +10,6 @@ from checker.criteria.hints import ColumnHint
 from checker.errors import InputError, Problem
 from checker.fields import Field, all_fields, field_named
 from checker.intake.case_names import canonical_case
-from checker.intake.cells import CodedCells
 from checker.intake.headers import read_header, unit_in_header
 from checker.intake.layout import Layout
 from checker.intake.sizes import column_basis
@@ -18,8 +17,9 @@ from checker.intake.texts import fold_words, key_of, place, shown
 from checker.intake.unit_words import settled_by, size_basis, unit_in_cell, unit_or_refusal
 from checker.units import Unit, read_unit
 
-__all__ = ["Plan", "PlannedColumn", "hint_fields", "plan_columns"]
+__all__ = ["Plan", "PlannedColumn", "hint_fields", "number_columns", "plan_columns"]
 
+DESCRIPTIVE = frozenset({"area", "drawing", "remarks", "revision"})
 UNITLESS = frozenset({"dimensionless", "fraction"})
 CELLS_LOOKED_AT = 2_000
 _CASE_ORDER = ("minimum", "normal", "maximum")
@@ -101,15 +101,20 @@ def _drafts(layout: Layout, hints: Mapping[str, ColumnHint], file: str) -> list[
     return drafts
 
 
+def number_columns(layout: Layout, hints: Mapping[str, ColumnHint], file: str) -> frozenset[int]:
+    """Return the columns whose headers promise numbers."""
+    return frozenset(draft.index for draft in _drafts(layout, hints, file) if draft.fields[0].kind == "number")
+
+
 def _knows(field: Field, unit: str) -> bool:
     reading = unit_or_refusal(unit, field.dimension) if unit and field.kind == "number" else ""
     return not isinstance(reading, str)
 
 
-def _by_cells(fields: Sequence[Field], cells: CodedCells) -> Field | None:
+def _by_cells(fields: Sequence[Field], cells: Sequence[str]) -> Field | None:
     """Return the field whose dimension knows the units that the cells themselves carry."""
     counts = dict.fromkeys(fields, 0)
-    for cell in cells.texts[:CELLS_LOOKED_AT]:
+    for cell in dict.fromkeys(islice(cells, CELLS_LOOKED_AT)):
         unit = cell.strip().lstrip("+-0123456789.,eE ")
         for field in fields:
             counts[field] += bool(unit) and not isinstance(unit_in_cell(unit, field.dimension), str)
@@ -117,7 +122,7 @@ def _by_cells(fields: Sequence[Field], cells: CodedCells) -> Field | None:
     return best if counts[best] else None
 
 
-def _one_field(draft: _Draft, row_unit: str, units: Mapping[str, str], cells: CodedCells) -> Field:
+def _one_field(draft: _Draft, row_unit: str, units: Mapping[str, str], cells: Sequence[str]) -> Field:
     """Return the one field of a header that fits several: its unit's dimension decides."""
     fields = draft.fields
     if len(fields) == 1:
@@ -154,7 +159,7 @@ def _with_unit(column: PlannedColumn, row_unit: str, units: Mapping[str, str]) -
 
 
 def _with_basis(
-    column: PlannedColumn, row_unit: str, units: Mapping[str, str], cells: CodedCells, comma: bool
+    column: PlannedColumn, row_unit: str, units: Mapping[str, str], cells: Sequence[str], comma: bool
 ) -> PlannedColumn:
     """Return a size column with the basis of its bare numbers, empty where nothing says it."""
     stated = (
@@ -165,7 +170,7 @@ def _with_basis(
 
 
 def _measured(
-    column: PlannedColumn, layout: Layout, units: Mapping[str, str], cells: CodedCells, comma: bool
+    column: PlannedColumn, layout: Layout, units: Mapping[str, str], cells: Sequence[str], comma: bool
 ) -> PlannedColumn:
     row_unit = layout.units[column.index]
     if column.field.kind == "number":
@@ -195,6 +200,17 @@ def _without_overruled(columns: list[PlannedColumn]) -> list[PlannedColumn]:
     """Leave out a column whose field and case the criteria give to another one."""
     taken = {(column.field.name, column.case) for column in columns if column.hinted}
     return [column for column in columns if column.hinted or (column.field.name, column.case) not in taken]
+
+
+def _without_repeated(columns: list[PlannedColumn]) -> tuple[list[PlannedColumn], list[PlannedColumn]]:
+    """Return the columns with the first one only of each descriptive field that no check reads, and the others."""
+    seen: set[str] = set()
+    kept, repeated = [], []
+    for column in columns:
+        name = column.field.name
+        (repeated if name in seen and name in DESCRIPTIVE else kept).append(column)
+        seen.add(name)
+    return kept, repeated
 
 
 def _refuse_duplicates(columns: Sequence[PlannedColumn], file: str, row: int) -> None:
@@ -248,7 +264,7 @@ def _notes(
 
 def plan_columns(
     layout: Layout,
-    cells: Sequence[CodedCells],
+    cells: Sequence[Sequence[str]],
     *,
     file: str,
     hints: Mapping[str, ColumnHint],
@@ -291,10 +307,14 @@ def plan_columns(
     columns = _without_overruled(_normal_named(columns))
     by_rows = any(column.field.name == "case" for column in columns)
     left_out = [column for column in columns if by_rows and column.case]
-    columns = [column for column in columns if column not in left_out]
+    columns, repeated = _without_repeated([column for column in columns if column not in left_out])
     _refuse_duplicates(columns, file, layout.header_row)
     cases = _cases(columns)
     columns = [_measured(c, layout, units, cells[c.index], comma) for c in _one_case(columns, cases)]
     read = {column.index for column in columns}
     unmatched = tuple(header for index, header in enumerate(layout.headers) if header and index not in read)
-    return Plan(tuple(columns), unmatched, cases, tuple(_notes(columns, left_out, cases, layout)))
+    notes = [
+        f"Column {shown(column.header)}: the field {column.field.name} is read from an earlier column, not from this one."
+        for column in repeated
+    ]
+    return Plan(tuple(columns), unmatched, cases, (*_notes(columns, left_out, cases, layout), *notes))

@@ -6,9 +6,10 @@ from collections.abc import Callable, Mapping, Sequence
 from dataclasses import dataclass, field
 
 import numpy as np
+from numpy.typing import NDArray
 
 from checker.fields import Field
-from checker.intake.cells import CodedCells, plain_numbers
+from checker.intake.cells import CodedCells, NumberCells
 from checker.intake.columns import PlannedColumn
 from checker.intake.number_cells import NumberContext, read_number_cell, unit_rests_on
 from checker.intake.placeholders import OPEN_WORDS, holds, placeholder
@@ -27,6 +28,7 @@ __all__ = [
     "convert_texts",
 ]
 
+IndexArray = NDArray[np.intp]
 NAN = float("nan")
 _PHASES = {
     "liquid": "l liq liquid liquidphase liqphase",
@@ -51,9 +53,9 @@ class ConvertedNumbers:
     values: FloatArray
     gaps: CodeArray
     column_refusal: str
+    rests_on: CodeArray
     reasons: dict[int, str] = field(default_factory=dict)
     holds: list[int] = field(default_factory=list)
-    rests_on: CodeArray | None = None
 
 
 @dataclass
@@ -67,14 +69,14 @@ class ConvertedTexts:
 
 
 def convert_numbers(
-    cells: CodedCells, column: PlannedColumn, *, atmosphere: float, delimiter: str, comma: bool
+    cells: CodedCells | NumberCells, column: PlannedColumn, *, atmosphere: float, delimiter: str, comma: bool
 ) -> ConvertedNumbers:
     """Convert a column of number cells to SI.
 
     Parameters
     ----------
-    cells : CodedCells
-        The cells as written.
+    cells : CodedCells or NumberCells
+        The cells as written; the plain numbers beside them, if any, are converted in one step.
     column : PlannedColumn
         Field and unit of the column.
     atmosphere : float
@@ -82,50 +84,59 @@ def convert_numbers(
     delimiter : str
         Delimiter of the file.
     comma : bool
-        Whether the list is written with decimal commas: then no text is taken as plain.
+        Whether the list is written with decimal commas: then no cell is taken as plain.
 
     Returns
     -------
     ConvertedNumbers
-        SI values. Plain numbers are converted in one step and every other distinct text is read once; values outside
-        the field's bounds are refused.
+        SI values. Every distinct text that is no plain number is read once; values outside the field's bounds are
+        refused.
     """
     context = NumberContext(column.field, column.reading, column.refusal, atmosphere, delimiter, comma)
+    texts = cells.texts if isinstance(cells, CodedCells) else cells.written
+    plain = np.full(len(texts), NAN) if isinstance(cells, CodedCells) or comma else cells.numbers
     with np.errstate(all="ignore"):
-        distinct = _distinct_numbers(cells.texts, context)
-        _check_bounds(cells.texts, distinct, column.field, atmosphere)
-    return _spread(distinct, cells.codes)
+        converted = _in_si(plain, context)
+        _read_odd(texts, np.flatnonzero(np.isnan(plain)), converted, context)
+        _check_bounds(texts, converted, column.field, atmosphere)
+    if isinstance(cells, CodedCells):
+        return _spread(converted, cells.codes)
+    converted.holds = np.flatnonzero(converted.gaps == Gap.HOLD).tolist()
+    return converted
 
 
-def _distinct_numbers(texts: Sequence[str], context: NumberContext) -> ConvertedNumbers:
-    """Return the numbers of distinct texts, before any look at what is possible."""
-    values, odd = (np.full(len(texts), NAN), list(range(len(texts)))) if context.comma else plain_numbers(texts)
-    gaps = np.full(len(texts), Gap.GIVEN, dtype=np.int8)
-    if context.unit is None:
-        gaps[:], values[:] = Gap.REFUSED, NAN
-    else:
-        values = to_si(values, context.unit, atmosphere=context.atmosphere)
-    rests_on = np.full(len(texts), unit_rests_on(context.unit), dtype=np.int8)
-    converted = ConvertedNumbers(values, gaps, context.refusal, rests_on=rests_on)
-    for index in odd:
-        reading = read_number_cell(texts[index], context)
-        values[index], gaps[index], rests_on[index] = reading.value, reading.gap, reading.rests_on
+def _in_si(plain: FloatArray, context: NumberContext) -> ConvertedNumbers:
+    """Return the plain numbers of a column in SI; all of them refused where the column has no unit."""
+    known = context.unit is not None
+    values = to_si(plain, context.unit, atmosphere=context.atmosphere) if context.unit else np.full(plain.shape, NAN)
+    gaps = np.full(plain.shape, Gap.GIVEN if known else Gap.REFUSED, dtype=np.int8)
+    rests_on = np.full(plain.shape, unit_rests_on(context.unit), dtype=np.int8)
+    return ConvertedNumbers(values, gaps, context.refusal, rests_on)
+
+
+def _read_odd(texts: Sequence[str], odd: IndexArray, converted: ConvertedNumbers, context: NumberContext) -> None:
+    """Read the cells that are no plain numbers, each distinct text once."""
+    mine = [texts[index] for index in odd.tolist()]
+    readings = {text: read_number_cell(text, context) for text in dict.fromkeys(mine)}
+    found = [readings[text] for text in mine]
+    converted.values[odd] = [reading.value for reading in found]
+    converted.gaps[odd] = [reading.gap for reading in found]
+    converted.rests_on[odd] = [reading.rests_on for reading in found]
+    for index, reading in zip(odd.tolist(), found, strict=True):
         if reading.gap is Gap.REFUSED and reading.reason is not context.refusal:
             converted.reasons[index] = reading.reason
-    return converted
 
 
 def _spread(distinct: ConvertedNumbers, codes: IntArray) -> ConvertedNumbers:
     """Return the numbers of all cells from those of the distinct texts."""
     gaps = distinct.gaps[codes]
-    rests_on = distinct.rests_on[codes] if distinct.rests_on is not None and distinct.rests_on.any() else None
     return ConvertedNumbers(
         distinct.values[codes],
         gaps,
         distinct.column_refusal,
+        distinct.rests_on[codes],
         _spread_reasons(distinct.reasons, codes, distinct.gaps.size),
         np.flatnonzero(gaps == Gap.HOLD).tolist(),
-        rests_on,
     )
 
 
@@ -173,7 +184,7 @@ def convert_sizes(cells: CodedCells, column: PlannedColumn, *, comma: bool) -> C
     values = np.array([reading.nps for reading in readings], dtype=np.float64)
     gaps = np.array([reading.gap for reading in readings], dtype=np.int8)
     reasons = {index: reading.reason for index, reading in enumerate(readings) if reading.gap is Gap.REFUSED}
-    return _spread(ConvertedNumbers(values, gaps, "", reasons), cells.codes)
+    return _spread(ConvertedNumbers(values, gaps, "", np.zeros(gaps.shape, dtype=np.int8), reasons), cells.codes)
 
 
 def _plain(text: str, field_: Field) -> tuple[str, Gap, str]:
@@ -221,8 +232,10 @@ def find_open_items(cells: CodedCells, *, certain: BoolArray | None = None) -> l
     return np.flatnonzero(found[cells.codes]).tolist()
 
 
-def convert_line_numbers(cells: CodedCells) -> ConvertedTexts:
+def convert_line_numbers(cells: Sequence[str]) -> ConvertedTexts:
     """Return the open items of the line numbers, whose texts are kept as written beside the table."""
     count = len(cells)
     missing = Coded(np.full(count, -1, dtype=np.int32), ())
-    return ConvertedTexts(missing, np.zeros(count, dtype=np.int8), {}, find_open_items(cells))
+    codes = np.arange(count, dtype=np.int32)
+    open_items = find_open_items(CodedCells(codes, tuple(cells)))
+    return ConvertedTexts(missing, np.zeros(count, dtype=np.int8), {}, open_items)

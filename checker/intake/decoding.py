@@ -72,7 +72,7 @@ def _refuse_containers(path: Path, content: bytes) -> None:
 
 def _undecodable(path: Path, error: UnicodeDecodeError, encoding: str) -> InputError:
     row = error.object.count(b"\n", 0, error.start) + 1
-    what = f"Byte {error.start} (0x{error.object[error.start]:02x}, text row {row}) is not {encoding}."
+    what = f"Byte {error.start} (0x{error.object[error.start]:02x}, text row {row}) is {encoding}."
     return _refuse(path, what, "Save the list as CSV in UTF-8.")
 
 
@@ -83,7 +83,7 @@ def _decode(path: Path, content: bytes) -> tuple[str, str, str]:
             try:
                 text = content[len(mark) :].decode("utf-8") if encoding == "utf-8" else content.decode(encoding)
             except UnicodeDecodeError as error:
-                raise _undecodable(path, error, encoding.upper()) from error
+                raise _undecodable(path, error, f"not {encoding.upper()}") from error
             return text, encoding, f"Encoding {encoding.upper()}, stated by the file's byte-order mark."
     try:
         return content.decode("utf-8"), "utf-8", "Encoding UTF-8."
@@ -92,7 +92,7 @@ def _decode(path: Path, content: bytes) -> tuple[str, str, str]:
     try:
         text = content.decode("cp1252")
     except UnicodeDecodeError as error:
-        raise _undecodable(path, error, "UTF-8 nor Windows-1252") from error
+        raise _undecodable(path, error, "neither UTF-8 nor Windows-1252") from error
     note = f"Not UTF-8 (byte {position}): read as Windows-1252; check signs such as the degree sign, or save as UTF-8."
     return text, "cp1252", note
 

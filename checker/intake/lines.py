@@ -3,14 +3,14 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Iterator, Sequence
+from collections.abc import Collection, Iterable, Iterator, Sequence
 from dataclasses import dataclass
 from itertools import compress
 
 import numpy as np
 
 from checker.errors import InputError, Problem
-from checker.intake.cells import CellCollector, CodedCells
+from checker.intake.cells import CellCollector, CodedCells, NumberCells, NumberCollector
 from checker.intake.layout import Layout
 from checker.intake.records import MOST_COLUMNS, Block, Form, read_blocks
 from checker.intake.texts import place, shown
@@ -31,6 +31,9 @@ _BREAKS = re.compile("[\x0b\x0c\x1c-\x1e\x85\u2028\u2029]")
 NAMED_ROWS = 6
 
 
+Cells = CodedCells | NumberCells
+
+
 @dataclass(frozen=True)
 class Lines:
     """Lines of the list.
@@ -41,7 +44,7 @@ class Lines:
 
     numbers: tuple[str, ...]
     row: IntArray
-    columns: tuple[CodedCells, ...]
+    columns: tuple[Cells, ...]
     broken: dict[int, str]
     unread: tuple[UnreadItem, ...]
     notes: tuple[str, ...]
@@ -50,9 +53,9 @@ class Lines:
 class _Table:
     """Rows of the table turned into columns, block by block."""
 
-    def __init__(self, width: int) -> None:
+    def __init__(self, width: int, number_columns: Collection[int]) -> None:
         self.width = width
-        self.collectors = [CellCollector() for _ in range(width)]
+        self.collectors = [NumberCollector() if i in number_columns else CellCollector() for i in range(width)]
         self.row_numbers: list[int] = []
         self.broken: dict[int, str] = {}
         self.short: list[int] = []
@@ -124,24 +127,23 @@ def _suspects(numbers: Sequence[str], header: str) -> list[int]:
     return [index for index, number in enumerate(numbers) if doubtful(number)]
 
 
-def _numbers(cells: CodedCells) -> list[str]:
+def _numbers(cells: Iterable[str]) -> list[str]:
     """Return line numbers with runs of blanks and line breaks as one blank."""
-    tidied = [" ".join(text.split()) for text in cells.texts]
-    return list(map(tidied.__getitem__, cells.codes.tolist()))
+    return [" ".join(text.split()) for text in cells]
 
 
-def _row(columns: Sequence[CodedCells], index: int) -> list[str]:
+def _row(columns: Sequence[Cells], index: int) -> list[str]:
     """Return the cells of a row that are not blank."""
     return [text for column in columns if (text := column[index].strip())]
 
 
-def _unread(index: int, row: int, reason: str, columns: Sequence[CodedCells], file: str, header: str) -> UnreadItem:
+def _unread(index: int, row: int, reason: str, columns: Sequence[Cells], file: str, header: str) -> UnreadItem:
     text = " | ".join(_row(columns, index))
     return UnreadItem("", text[:200], f"Row {row} {shown(text)}: {reason}", Address(file, row, header))
 
 
-def _table(text: str, form: Form, layout: Layout, file: str) -> _Table:
-    table = _Table(len(layout.headers))
+def _table(text: str, form: Form, layout: Layout, number_columns: Collection[int], file: str) -> _Table:
+    table = _Table(len(layout.headers), number_columns)
     skip = layout.first_row - 1
     for block in read_blocks(text, delimiter=form.delimiter, file=file):
         above = max(0, min(skip - block.first, len(block.rows)))
@@ -168,7 +170,9 @@ def _refuse_damaged_header(block: Block, above: int, layout: Layout, form: Form,
         raise InputError(Problem(what, where=place(file, block.first + row + 1), remedy=remedy))
 
 
-def find_lines(text: str, form: Form, layout: Layout, *, file: str, line_column: int) -> Lines:
+def find_lines(
+    text: str, form: Form, layout: Layout, *, file: str, line_column: int, number_columns: Collection[int]
+) -> Lines:
     """Read the rows beneath the header and return the lines, and the rows that are none.
 
     Parameters
@@ -181,13 +185,15 @@ def find_lines(text: str, form: Form, layout: Layout, *, file: str, line_column:
         Name of the file, for messages.
     line_column : int
         Column of the line number.
+    number_columns : collection of int
+        Columns whose plain numbers are read on the way.
 
     Raises
     ------
     InputError
         If the table holds no line at all: nothing read is never nothing wrong.
     """
-    table = _table(text, form, layout, file)
+    table = _table(text, form, layout, number_columns, file)
     header = layout.headers[line_column]
     columns = tuple(collector.cells() for collector in table.collectors)
     numbers = _numbers(columns[line_column])
@@ -212,7 +218,7 @@ def find_lines(text: str, form: Form, layout: Layout, *, file: str, line_column:
 
 def _kept(
     table: _Table,
-    columns: tuple[CodedCells, ...],
+    columns: tuple[Cells, ...],
     numbers: Sequence[str],
     keep: BoolArray,
     unread: tuple[UnreadItem, ...],
@@ -233,7 +239,7 @@ def _kept(
     return Lines(
         tuple(compress(numbers, keep)),
         np.asarray(table.row_numbers, dtype=np.int32)[keep],
-        tuple(column.kept(keep) for column in columns),
+        columns if keep.all() else tuple(column.kept(keep) for column in columns),
         {int(place_of[index]): reason for index, reason in table.broken.items() if keep[index]},
         unread,
         tuple(notes),

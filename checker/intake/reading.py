@@ -13,7 +13,8 @@ import numpy as np
 from checker.criteria.hints import ColumnHint
 from checker.errors import InputError, Problem
 from checker.intake.assemble import Assembly, Converted, assemble
-from checker.intake.columns import Plan, PlannedColumn, hint_fields, plan_columns
+from checker.intake.cells import NumberCells
+from checker.intake.columns import Plan, PlannedColumn, hint_fields, number_columns, plan_columns
 from checker.intake.convert import ConvertedNumbers, convert_line_numbers, convert_numbers, convert_sizes, convert_texts
 from checker.intake.decoding import Decoded, read_text
 from checker.intake.layout import Layout, find_layout, line_number_columns
@@ -91,6 +92,7 @@ def read_line_list(
             layout,
             file=file,
             line_column=line_number_columns(layout.headers, fields)[0],
+            number_columns=frozenset() if form.comma else number_columns(layout, hints, file),
         )
         plan = plan_columns(layout, lines.columns, file=file, hints=hints, units=units or {}, comma=form.comma)
         return _line_list(_Opened(file, decoded, form, layout), lines, plan, atmosphere)
@@ -110,11 +112,11 @@ def _converted(column: PlannedColumn, lines: Lines, form: Form, atmosphere: floa
     cells = lines.columns[column.index]
     if column.field.name == "line_number":
         return convert_line_numbers(cells)
-    if column.field.kind == "text":
-        return convert_texts(cells, column.field)
+    if isinstance(cells, NumberCells) or column.field.kind == "number":
+        return convert_numbers(cells, column, atmosphere=atmosphere, delimiter=form.delimiter, comma=form.comma)
     if column.field.kind == "size":
         return convert_sizes(cells, column, comma=form.comma)
-    return convert_numbers(cells, column, atmosphere=atmosphere, delimiter=form.delimiter, comma=form.comma)
+    return convert_texts(cells, column.field)
 
 
 def _refuse_broken(converted: Converted, column: PlannedColumn, broken: Mapping[int, str]) -> None:

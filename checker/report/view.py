@@ -9,7 +9,7 @@ from checker.report.charts import Picture
 from checker.report.numbers import percentage
 from checker.report.review_contract import ResultLike, ReviewLike
 from checker.report.states import TALLY_ORDER, State, state_of
-from checker.review_model import AssumptionItem, OutcomeRow
+from checker.review_model import AssumptionItem, CellValue, OutcomeRow
 
 __all__ = ["ON_PAPER", "ON_SCREEN", "AssumptionGroup", "Bounds", "LineExceptions", "Section", "View", "build_view"]
 
@@ -60,11 +60,15 @@ class Section:
 
 @dataclass(frozen=True, slots=True)
 class LineExceptions:
-    """Exceptions of one line, each with its rank in the whole list (1 is the worst)."""
+    """Exceptions of one line, each with its rank in the whole list (1 is the worst).
+
+    `cells` holds every number that went into them once, with the ranks of the exceptions that rest on it.
+    """
 
     line_number: str
     service: str
     ranked: tuple[tuple[int, OutcomeRow], ...]
+    cells: tuple[tuple[CellValue, tuple[int, ...]], ...]
 
 
 @dataclass(frozen=True, slots=True)
@@ -184,7 +188,18 @@ def _by_line(ranked: Iterable[tuple[int, OutcomeRow]]) -> tuple[LineExceptions, 
     groups: dict[str, list[tuple[int, OutcomeRow]]] = {}
     for rank, row in ranked:
         groups.setdefault(row.line_number, []).append((rank, row))
-    return tuple(LineExceptions(line, members[0][1].service, tuple(members)) for line, members in groups.items())
+    return tuple(
+        LineExceptions(line, members[0][1].service, tuple(members), _cells_once(members))
+        for line, members in groups.items()
+    )
+
+
+def _cells_once(members: Iterable[tuple[int, OutcomeRow]]) -> tuple[tuple[CellValue, tuple[int, ...]], ...]:
+    ranks: dict[CellValue, list[int]] = {}
+    for rank, row in members:
+        for cell in dict.fromkeys(row.cells):
+            ranks.setdefault(cell, []).append(rank)
+    return tuple((cell, tuple(mine)) for cell, mine in ranks.items())
 
 
 def _assumption_groups(items: Iterable[AssumptionItem]) -> tuple[AssumptionGroup, ...]:

@@ -57,13 +57,13 @@ def test_a_folder_of_modules_comes_by_the_same_door(tmp_path: Path) -> None:
 
 
 def test_an_id_used_twice_names_both_origins(tmp_path: Path) -> None:
-    with pytest.raises(ToolFaultError, match="rules.velocity") as caught:
+    with pytest.raises(ToolFaultError, match=r"rules\.velocity") as caught:
         load_rules(known_fields=known_fields(), folder=own_folder(tmp_path, id="liquid-velocity"))
     assert "linelist_rules_own" in str(caught.value)
 
 
 def test_an_unknown_field_is_named_with_its_rule(tmp_path: Path) -> None:
-    with pytest.raises(ToolFaultError, match="own-length.*lenght"):
+    with pytest.raises(ToolFaultError, match=r"own-length.*lenght"):
         load_rules(known_fields=known_fields(), folder=own_folder(tmp_path, field="lenght"))
 
 

@@ -58,10 +58,14 @@ def test_larger_of_both_in_the_critical_zone() -> None:
 
 
 def test_outside_the_domain_is_nan() -> None:
-    assert np.isnan(friction_factor(reynolds=[0.0, -5.0, np.nan, 1e5, 1e5, 1e5],
-                                    relative_roughness=[0.0, 0.0, 0.0, -1e-4, 1.0, np.nan])).all()
-    assert np.isnan(reynolds(mass_flux=[-1.0, 1.0, 1.0], inside_diameter=[1.0, 0.0, 1.0],
-                             viscosity=[1.0, 1.0, 0.0])).all()
+    assert np.isnan(
+        friction_factor(
+            reynolds=[0.0, -5.0, np.nan, 1e5, 1e5, 1e5], relative_roughness=[0.0, 0.0, 0.0, -1e-4, 1.0, np.nan]
+        )
+    ).all()
+    assert np.isnan(
+        reynolds(mass_flux=[-1.0, 1.0, 1.0], inside_diameter=[1.0, 0.0, 1.0], viscosity=[1.0, 1.0, 0.0])
+    ).all()
     assert np.isnan(fully_rough(relative_roughness=[0.0, -1.0, 1.0, np.nan])).all()
     assert np.isnan(crane_turbulent_factor(inside_diameter=[0.0, np.nan])).all()
 

@@ -21,9 +21,12 @@ def lines(seed: int = 5) -> dict[str, np.ndarray]:
     rise = random.uniform(-300.0, 300.0, COUNT)
     rise[::3] = 0.0
     return {
-        "pressure_inlet": pressure, "mass_flux": pressure / np.sqrt(energy) * 10.0 ** random.uniform(-3.5, -0.1, COUNT),
-        "pressure_over_density": energy, "loss_coefficient": 10.0 ** random.uniform(-2.0, 4.0, COUNT),
-        "elevation_change": rise, "kinetic_energy_factor": random.uniform(1.0, 2.0, COUNT),
+        "pressure_inlet": pressure,
+        "mass_flux": pressure / np.sqrt(energy) * 10.0 ** random.uniform(-3.5, -0.1, COUNT),
+        "pressure_over_density": energy,
+        "loss_coefficient": 10.0 ** random.uniform(-2.0, 4.0, COUNT),
+        "elevation_change": rise,
+        "kinetic_energy_factor": random.uniform(1.0, 2.0, COUNT),
     }
 
 
@@ -49,8 +52,12 @@ def test_agrees_with_the_isothermal_gas_equation_of_fluids() -> None:
     ratio = found.pressure_drop / found.pressure_inlet
     for row in np.flatnonzero(~found.choked & (ratio > 1e-3) & (ratio < 0.8))[:200]:
         flow = fluids.compressible.isothermal_gas(
-            rho=found.pressure_inlet[row] / given["pressure_over_density"][row], fd=given["loss_coefficient"][row],
-            P1=found.pressure_inlet[row], P2=found.pressure_outlet[row], L=1.0, D=1.0,
+            rho=found.pressure_inlet[row] / given["pressure_over_density"][row],
+            fd=given["loss_coefficient"][row],
+            P1=found.pressure_inlet[row],
+            P2=found.pressure_outlet[row],
+            L=1.0,
+            D=1.0,
         )
         assert flow / (np.pi / 4.0) == pytest.approx(given["mass_flux"][row], rel=1e-9)
 
@@ -69,7 +76,8 @@ def test_parts_add_up_and_cover_the_line() -> None:
     found = outlet_from_inlet(**given)
     solved = ~found.choked
     profile = along_line(
-        pressure_outlet=found.pressure_outlet, path=found.path,
+        pressure_outlet=found.pressure_outlet,
+        path=found.path,
         **{name: values for name, values in given.items()},
     )
     dynamic = given["kinetic_energy_factor"] * given["mass_flux"] ** 2 * given["pressure_over_density"]
@@ -108,13 +116,22 @@ def test_fall_in_balance_with_friction_keeps_the_pressure() -> None:
     energy, flux, loss, pressure = 5e4, 300.0, 4.0, 2e6
     rise = -loss * flux**2 * energy**2 / (2.0 * 9.80665 * pressure**2)
     found = outlet_from_inlet(
-        pressure_inlet=pressure, mass_flux=flux, pressure_over_density=energy, loss_coefficient=loss,
+        pressure_inlet=pressure,
+        mass_flux=flux,
+        pressure_over_density=energy,
+        loss_coefficient=loss,
         elevation_change=rise,
     )
     assert float(found.pressure_outlet) == pytest.approx(pressure, rel=1e-12)
     profile = along_line(
-        pressure_inlet=pressure, pressure_outlet=found.pressure_outlet, path=found.path, mass_flux=flux,
-        pressure_over_density=energy, loss_coefficient=loss, elevation_change=rise, kinetic_energy_factor=1.0,
+        pressure_inlet=pressure,
+        pressure_outlet=found.pressure_outlet,
+        path=found.path,
+        mass_flux=flux,
+        pressure_over_density=energy,
+        loss_coefficient=loss,
+        elevation_change=rise,
+        kinetic_energy_factor=1.0,
     )
     assert float(profile.friction) == pytest.approx(-float(profile.elevation), rel=1e-10)
     assert float(profile.friction) == pytest.approx(loss * flux**2 * energy / (2.0 * pressure), rel=1e-10)
@@ -140,10 +157,16 @@ def test_outlet_below_the_choking_pressure_floats_up() -> None:
     assert bool(found.choked[0])
     assert found.pressure_outlet[0] > 1.01e5
     assert found.mach_outlet[0] == pytest.approx(1.0 / np.sqrt(1.3 * found.kinetic_energy_factor[0]), rel=1e-12)
-    again = solve(**one_case(**GAS | {
-        "flow_mass": 30.0, "pressure": float(found.pressure_inlet[0]) * 1.000001,
-        "density": 0.9 * float(found.pressure_inlet[0]) * 1.000001 / 1.01e5,
-    }))
+    again = solve(
+        **one_case(
+            **GAS
+            | {
+                "flow_mass": 30.0,
+                "pressure": float(found.pressure_inlet[0]) * 1.000001,
+                "density": 0.9 * float(found.pressure_inlet[0]) * 1.000001 / 1.01e5,
+            }
+        )
+    )
     assert int(again.status[0]) == 0
     assert again.pressure_outlet[0] == pytest.approx(found.pressure_outlet[0], rel=5e-3)
 

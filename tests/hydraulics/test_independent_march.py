@@ -53,8 +53,13 @@ def known(values: dict[str, float]) -> dict[str, float]:
 @pytest.mark.parametrize("viscosity", [1e-3, 0.2])
 @pytest.mark.parametrize("basis", [0, 1])
 def test_liquid(rise: float, viscosity: float, basis: int) -> None:
-    case = {"elevation_change": rise, "viscosity": viscosity, "fittings_coefficient_n": 90.0, "pressure_basis": basis,
-            "fittings_length": 12.0}
+    case = {
+        "elevation_change": rise,
+        "viscosity": viscosity,
+        "fittings_coefficient_n": 90.0,
+        "pressure_basis": basis,
+        "fittings_length": 12.0,
+    }
     x = known(case)
     flux = x["flow_mass"] / (math.pi / 4 * x["inside_diameter"] ** 2)
     number = flux * x["inside_diameter"] / viscosity
@@ -71,8 +76,15 @@ def test_liquid(rise: float, viscosity: float, basis: int) -> None:
     (2.0, 1e6, 0), (4.2, 1e6, 0), (2.0, 1e6, 1), (3.0, 2e5, 1), (10.0, 6e5, 1), (0.001, 1e6, 0),
 ])  # fmt: skip
 def test_gas(rise: float, flow: float, pressure: float, basis: int) -> None:
-    case = GAS | {"elevation_change": rise, "flow_mass": flow, "pressure": pressure, "pressure_basis": basis,
-                  "density": 8.0 * pressure / 1e6, "fittings_coefficient_n": 60.0, "length": 150.0}
+    case = GAS | {
+        "elevation_change": rise,
+        "flow_mass": flow,
+        "pressure": pressure,
+        "pressure_basis": basis,
+        "density": 8.0 * pressure / 1e6,
+        "fittings_coefficient_n": 60.0,
+        "length": 150.0,
+    }
     x = known(case)
     flux, energy = flow / (math.pi / 4 * x["inside_diameter"] ** 2), 1e6 / 8.0
     number = flux * x["inside_diameter"] / x["viscosity"]
@@ -94,16 +106,30 @@ def test_gas(rise: float, flow: float, pressure: float, basis: int) -> None:
 @pytest.mark.parametrize(("flow", "quality"), [(12.0, 0.05), (4.0, 0.3), (6.0, 0.002)])
 def test_beggs_and_brill(rise: float, basis: int, flow: float, quality: float) -> None:
     """Cases that stay within one regime, where the gradient is smooth; tolerance 1e-6 of the far-end pressure."""
-    case = TWO_PHASE | {"elevation_change": rise, "flow_mass": flow, "vapour_fraction": quality, "length": 120.0,
-                        "pressure_basis": basis}
+    case = TWO_PHASE | {
+        "elevation_change": rise,
+        "flow_mass": flow,
+        "vapour_fraction": quality,
+        "length": 120.0,
+        "pressure_basis": basis,
+    }
     x = known(case)
 
     def gradient(p: float) -> float:
         length = x["length"]
         return -Beggs_Brill(
-            m=flow, x=quality, rhol=x["liquid_density"], rhog=x["vapour_density"] * p / x["pressure"],
-            mul=x["liquid_viscosity"], mug=x["vapour_viscosity"], sigma=x["surface_tension"], P=p,
-            D=x["inside_diameter"], angle=math.degrees(math.asin(rise / length)), roughness=x["roughness"], L=length,
+            m=flow,
+            x=quality,
+            rhol=x["liquid_density"],
+            rhog=x["vapour_density"] * p / x["pressure"],
+            mul=x["liquid_viscosity"],
+            mug=x["vapour_viscosity"],
+            sigma=x["surface_tension"],
+            P=p,
+            D=x["inside_diameter"],
+            angle=math.degrees(math.asin(rise / length)),
+            roughness=x["roughness"],
+            L=length,
         )
 
     far = marched(x["pressure"], gradient, downstream=basis == 0)
@@ -114,8 +140,12 @@ def test_beggs_and_brill(rise: float, basis: int, flow: float, quality: float) -
 @pytest.mark.parametrize("rise", [-30.0, 0.0, 30.0])
 @pytest.mark.parametrize("basis", [0, 1])
 def test_homogeneous(rise: float, basis: int) -> None:
-    case = TWO_PHASE | {"elevation_change": rise, "pressure_basis": basis, "length": 80.0,
-                        "fittings_coefficient_k": 3.0}
+    case = TWO_PHASE | {
+        "elevation_change": rise,
+        "pressure_basis": basis,
+        "length": 80.0,
+        "fittings_coefficient_k": 3.0,
+    }
     x = known(case)
     flux = x["flow_mass"] / (math.pi / 4 * x["inside_diameter"] ** 2)
     quality, bore = x["vapour_fraction"], x["inside_diameter"]
@@ -143,11 +173,21 @@ def test_a_line_that_crosses_regimes_agrees_with_a_fine_march() -> None:
     """Across a jump of the gradient the plain march is good to a segment of it: 1e-4 of the pressure drop."""
     case = TWO_PHASE | {"elevation_change": 20.0, "flow_mass": 5.0, "vapour_fraction": 0.02, "length": 3000.0}
     x = known(case)
+
     def gradient(p: float) -> float:
         return -Beggs_Brill(
-            m=5.0, x=0.02, rhol=x["liquid_density"], rhog=x["vapour_density"] * p / x["pressure"],
-            mul=x["liquid_viscosity"], mug=x["vapour_viscosity"], sigma=x["surface_tension"], P=p,
-            D=x["inside_diameter"], angle=math.degrees(math.asin(20.0 / 3000.0)), roughness=x["roughness"], L=3000.0,
+            m=5.0,
+            x=0.02,
+            rhol=x["liquid_density"],
+            rhog=x["vapour_density"] * p / x["pressure"],
+            mul=x["liquid_viscosity"],
+            mug=x["vapour_viscosity"],
+            sigma=x["surface_tension"],
+            P=p,
+            D=x["inside_diameter"],
+            angle=math.degrees(math.asin(20.0 / 3000.0)),
+            roughness=x["roughness"],
+            L=3000.0,
         )
 
     far = marched(x["pressure"], gradient, downstream=True)

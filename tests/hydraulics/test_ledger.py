@@ -34,8 +34,18 @@ def test_a_wrong_pressure_does_not_close() -> None:
     cases = one_case(fittings_coefficient_n=50.0, elevation_change=3.0)
     found = solve(**cases)
     book = ledger(solution=found, rows=[0], **cases)
-    terms = {name: getattr(book, name) for name in (
-        "kinetic_term", "elevation_term", "loss_pipe", "loss_fittings", "loss_exit", "loss_slip", "shaft_work")}
+    terms = {
+        name: getattr(book, name)
+        for name in (
+            "kinetic_term",
+            "elevation_term",
+            "loss_pipe",
+            "loss_fittings",
+            "loss_exit",
+            "loss_slip",
+            "shaft_work",
+        )
+    }
     assert closing_error(pressure_term=1.001 * book.pressure_term, **terms)[0] > 1e-4
 
 
@@ -61,8 +71,10 @@ def test_terms_in_pascals_and_metres() -> None:
 def test_pump_work_is_negative() -> None:
     """Shaft work done by the fluid: a pump raising 3 bar in water does work on it."""
     work = bernoulli.shaft_work(
-        pressure_term=bernoulli.pressure_term(pressure_drop=-3e5, density=1000.0), kinetic_term=0.0,
-        elevation_term=0.0, viscous_loss=0.0,
+        pressure_term=bernoulli.pressure_term(pressure_drop=-3e5, density=1000.0),
+        kinetic_term=0.0,
+        elevation_term=0.0,
+        viscous_loss=0.0,
     )
     assert float(work) == -300.0
     assert float(bernoulli.power(energy=work, flow_mass=10.0)) == -3000.0
@@ -72,9 +84,7 @@ def test_wall_shear_force_carries_the_friction() -> None:
     """Macroscopic momentum balance of a level line: pressure drop times area is the force on the wall."""
     cases = one_case()
     found = solve(**cases)
-    force = bernoulli.wall_shear_force(
-        wall_shear_stress=found.wall_shear_stress, inside_diameter=0.10226, length=100.0
-    )
+    force = bernoulli.wall_shear_force(wall_shear_stress=found.wall_shear_stress, inside_diameter=0.10226, length=100.0)
     assert force[0] == pytest.approx(found.dp_friction[0] * np.pi / 4 * 0.10226**2, rel=1e-12)
 
 

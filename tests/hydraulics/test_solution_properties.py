@@ -80,8 +80,16 @@ USES = {
 def test_a_missing_input_makes_nan_of_all_that_depends_on_it(phase: str, name: str) -> None:
     """Whatever changes when the input changes is NaN when the input is missing."""
     base, known = USES[phase]
-    full = one_case(**base | {"fittings_coefficient_n": 30.0, "fittings_coefficient_k": 1.0, "fittings_length": 2.0,
-                              "elevation_change": 2.0, "entrance": 1.0 if name == "entrance" else 0.0})
+    full = one_case(
+        **base
+        | {
+            "fittings_coefficient_n": 30.0,
+            "fittings_coefficient_k": 1.0,
+            "fittings_length": 2.0,
+            "elevation_change": 2.0,
+            "entrance": 1.0 if name == "entrance" else 0.0,
+        }
+    )
     complete = solve(**full)
     assert int(complete.status[0]) == 0
     changed = solve(**full | {name: full[name] * 1.01 if name != "entrance" else np.array([0.0])})

@@ -19,12 +19,15 @@ def states(count: int = 3000, seed: int = 3) -> tuple[dict[str, np.ndarray], np.
     quality = 10.0 ** random.uniform(-5.0, -0.01, count)
     quality[::11] = 0.0
     given = {
-        "mass_flux": 10.0 ** random.uniform(0.5, 3.7, count), "vapour_fraction": quality,
+        "mass_flux": 10.0 ** random.uniform(0.5, 3.7, count),
+        "vapour_fraction": quality,
         "liquid_density": random.uniform(400.0, 1200.0, count),
         "vapour_density": 10.0 ** random.uniform(-0.3, 2.0, count),
         "liquid_viscosity": 10.0 ** random.uniform(-4.0, -2.0, count),
-        "vapour_viscosity": random.uniform(8e-6, 2e-5, count), "surface_tension": random.uniform(0.005, 0.07, count),
-        "inside_diameter": random.uniform(0.02, 0.6, count), "roughness": random.uniform(0.0, 5e-4, count),
+        "vapour_viscosity": random.uniform(8e-6, 2e-5, count),
+        "surface_tension": random.uniform(0.005, 0.07, count),
+        "inside_diameter": random.uniform(0.02, 0.6, count),
+        "roughness": random.uniform(0.0, 5e-4, count),
         "sine": np.sin(np.radians(angle)),
     }
     return given, angle, 10.0 ** random.uniform(6.5, 8.0, count)
@@ -58,8 +61,14 @@ def test_no_slip_limits() -> None:
     assert density[:2] == pytest.approx([800.0, 5.0])
     assert np.isnan(density[2:]).all()
     assert void_fraction(vapour_fraction=[0.0, 1.0], liquid_density=800.0, vapour_density=5.0).tolist() == [0.0, 1.0]
-    mixture = no_slip(mass_flux=[100.0, 0.0], vapour_fraction=0.5, liquid_density=800.0, vapour_density=5.0,
-                      liquid_viscosity=1e-3, vapour_viscosity=1e-5)
+    mixture = no_slip(
+        mass_flux=[100.0, 0.0],
+        vapour_fraction=0.5,
+        liquid_density=800.0,
+        vapour_density=5.0,
+        liquid_viscosity=1e-3,
+        vapour_viscosity=1e-5,
+    )
     assert mixture.velocity[0] == pytest.approx(100.0 * (0.5 / 800.0 + 0.5 / 5.0))
     assert np.isnan(mixture.velocity[1])
 
@@ -73,10 +82,13 @@ def test_without_vapour_it_is_the_liquid(method: str) -> None:
 
 
 def test_without_liquid_the_homogeneous_line_is_the_gas_line() -> None:
-    two = solve(**one_case(**TWO_PHASE | {"vapour_fraction": 1.0, "flow_mass": 2.0, "elevation_change": 10.0}),
-                methods=Methods(two_phase="homogeneous"))
-    gas = solve(**one_case(phase=1, flow_mass=2.0, density=15.0, viscosity=1.2e-5, pressure=1.5e6,
-                           elevation_change=10.0))
+    two = solve(
+        **one_case(**TWO_PHASE | {"vapour_fraction": 1.0, "flow_mass": 2.0, "elevation_change": 10.0}),
+        methods=Methods(two_phase="homogeneous"),
+    )
+    gas = solve(
+        **one_case(phase=1, flow_mass=2.0, density=15.0, viscosity=1.2e-5, pressure=1.5e6, elevation_change=10.0)
+    )
     assert two.pressure_outlet[0] == pytest.approx(gas.pressure_outlet[0], rel=1e-9)
     for name in ("dp_friction", "dp_elevation", "dp_acceleration"):
         assert getattr(two, name)[0] == pytest.approx(getattr(gas, name)[0], rel=1e-6)
@@ -102,8 +114,9 @@ def test_no_downhill_recovery_unless_asked() -> None:
 def test_known_outlet_reproduces_the_known_inlet() -> None:
     down = solve(**one_case(**TWO_PHASE))
     outlet = float(down.pressure_outlet[0])
-    up = solve(**one_case(**TWO_PHASE | {
-        "pressure": outlet, "vapour_density": 15.0 * outlet / 1.5e6, "pressure_basis": 1}))
+    up = solve(
+        **one_case(**TWO_PHASE | {"pressure": outlet, "vapour_density": 15.0 * outlet / 1.5e6, "pressure_basis": 1})
+    )
     assert up.pressure_inlet[0] == pytest.approx(1.5e6, rel=1e-9)
     assert up.velocity[0] == pytest.approx(down.velocity[0], rel=1e-9)
 

@@ -27,8 +27,11 @@ def test_no_row_twice_and_diameters_grow_with_size() -> None:
     keys = [(row["nps"], row["schedule"]) for row in ROWS]
     assert len(set(keys)) == len(keys)
     for schedule in schedules():
-        rows = sorted((float(row["nps"]), float(row["outside_diameter_mm"]), float(row["wall_thickness_mm"]))
-                      for row in ROWS if row["schedule"] == schedule)
+        rows = sorted(
+            (float(row["nps"]), float(row["outside_diameter_mm"]), float(row["wall_thickness_mm"]))
+            for row in ROWS
+            if row["schedule"] == schedule
+        )
         outside, wall = np.array([row[1] for row in rows]), np.array([row[2] for row in rows])
         assert (np.diff(outside) > 0.0).all()
         assert (wall < outside / 2.0).all()
@@ -65,8 +68,11 @@ def test_spellings_of_schedules(text: str, schedule: str) -> None:
 
 
 def test_what_is_in_no_standard_has_no_wall() -> None:
-    found = look_up(nps=[2, 2, 2, 22, 7, np.nan, np.inf, -2, 2.0001], schedule_code=[-1, 1, 5, 0, 0, 0, 0, 0, 0],
-                    schedule_names=["40", "whatever"])
+    found = look_up(
+        nps=[2, 2, 2, 22, 7, np.nan, np.inf, -2, 2.0001],
+        schedule_code=[-1, 1, 5, 0, 0, 0, 0, 0, 0],
+        schedule_names=["40", "whatever"],
+    )
     assert not found.exists.any()
     assert np.isnan(found.wall_thickness).all()
     assert found.outside_diameter[:4].tolist() == [0.0603, 0.0603, 0.0603, 0.559]

@@ -32,8 +32,9 @@ def test_what_names_no_material_has_no_roughness(text: str) -> None:
     assert np.isnan(roughness_of_texts([text])[0])
 
 
-@pytest.mark.parametrize(("text", "printed_mm"), [
-    ("commercial steel", 0.046), ("galvanized", 0.15), ("cast iron", 0.26), ("copper", 0.0015)])
+@pytest.mark.parametrize(
+    ("text", "printed_mm"), [("commercial steel", 0.046), ("galvanized", 0.15), ("cast iron", 0.26), ("copper", 0.0015)]
+)
 def test_handbook_values(text: str, printed_mm: float) -> None:
     """Moody's table as in White, Fluid Mechanics, table 6.1 (from memory)."""
     assert roughness_of_texts([text])[0] * 1e3 == pytest.approx(printed_mm, rel=0.03)

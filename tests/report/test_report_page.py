@@ -82,6 +82,17 @@ def test_every_exception_shows_value_limit_case_calculation_cell_and_source(soup
         assert not [part for part in wanted if part not in text]
 
 
+def test_paper_shows_the_numbers_of_a_line_once_with_the_exceptions_that_rest_on_them() -> None:
+    review = make_review(lines=3, exceptions=6, points=0)
+    soup = BeautifulSoup(render_html(review, paged=True), "html.parser")
+    for group in soup.select(".line-group"):
+        ranks = [int(card["id"].removeprefix("exception-")) for card in group.select(".card")]
+        rows = [[cell.get_text() for cell in row.find_all("td")] for row in group.select(".cells tbody tr")]
+        for rank in ranks:
+            mine = {row[0] for row in rows if row[4] == "all" or str(rank) in row[4].split(", ")}
+            assert mine == {cell.field for cell in review.exceptions[rank - 1].cells}
+
+
 def test_exceptions_of_one_line_stand_together(soup: BeautifulSoup) -> None:
     lines = [heading.get_text() for heading in soup.select("#exceptions .line-number")]
     assert len(lines) == len(set(lines)) == len({row.line_number for row in make_review().exceptions})
