@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
+
 import numpy as np
 
 from checker.hydraulics.arrays import BoolArray, FloatArray, positive
@@ -31,11 +33,12 @@ class TwoPhaseCases:
             vapour_fraction=self.known_quality, liquid_density=cases.liquid_density,
             vapour_density=cases.vapour_density,
         )
-        self.line = self._line(quality, quality_outlet - quality)
-        self.listed = state_at(self._at_listed(), self.stated, np.zeros_like(self.stated), methods.two_phase)
-        number = self.line.mass_flux * self.line.inside_diameter / self.listed.viscosity
+        line = self._line(quality, quality_outlet - quality)
+        at_listed = replace(line, quality_inlet=self.known_quality, quality_change=0.0 * self.known_quality)
+        self.listed = state_at(at_listed, self.stated, np.zeros_like(self.stated), methods.two_phase)
+        number = line.mass_flux * line.inside_diameter / self.listed.viscosity
         alpha = kinetic_energy_factor(reynolds=number, friction_factor=self.listed.plain_factor)
-        object.__setattr__(self.line, "kinetic_energy_factor", alpha)
+        self.line = replace(line, kinetic_energy_factor=alpha)
         self.entrance_step = self.fittings.entrance_step(alpha)
 
     def _line(self, quality: FloatArray, quality_change: FloatArray) -> TwoPhaseLine:
@@ -53,10 +56,6 @@ class TwoPhaseCases:
             rise=cases.elevation_change, sine=sine, kinetic_energy_factor=np.ones_like(length),
             recovery=np.full(length.shape, self.methods.downhill_recovery, dtype=np.bool_),
         )
-
-    def _at_listed(self) -> TwoPhaseLine:
-        known = {**self.line.__dict__, "quality_inlet": self.known_quality, "quality_change": 0.0 * self.known_quality}
-        return TwoPhaseLine(**known)
 
     def volume(self) -> tuple[FloatArray, FloatArray]:
         """Return a and b of 1/rho = a + b/p of the no-slip mixture at the inlet."""

@@ -205,7 +205,8 @@ def _without_overruled(columns: list[PlannedColumn]) -> list[PlannedColumn]:
 def _without_repeated(columns: list[PlannedColumn]) -> tuple[list[PlannedColumn], list[PlannedColumn]]:
     """Return the columns with the first one only of each descriptive field that no check reads, and the others."""
     seen: set[str] = set()
-    kept, repeated = [], []
+    kept: list[PlannedColumn] = []
+    repeated: list[PlannedColumn] = []
     for column in columns:
         name = column.field.name
         (repeated if name in seen and name in DESCRIPTIVE else kept).append(column)
@@ -314,7 +315,7 @@ def plan_columns(
     read = {column.index for column in columns}
     unmatched = tuple(header for index, header in enumerate(layout.headers) if header and index not in read)
     notes = [
-        f"Column {shown(column.header)}: the field {column.field.name} is read from an earlier column, not from this one."
+        f"Column {shown(column.header)}: the field {column.field.name} is read from an earlier column, not here."
         for column in repeated
     ]
     return Plan(tuple(columns), unmatched, cases, (*_notes(columns, left_out, cases, layout), *notes))

@@ -1,6 +1,6 @@
 """Nominal sizes as lists write them: NPS with fractions, DN, inch marks; held as NPS inches.
 
-The pairs of NPS and DN stand in `tables/nominal_sizes.csv`, after ASME B36.10M-2022, table 1.
+The pairs of NPS and DN stand in `tables/nominal_sizes.csv`, after ASME B36.10M (DN as in ISO 6708).
 """
 
 from __future__ import annotations

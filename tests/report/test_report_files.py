@@ -61,8 +61,8 @@ def test_pdf_is_made_with_the_network_refused(monkeypatch: pytest.MonkeyPatch, *
     def refused(*_: Any, **__: Any) -> NoReturn:
         raise AssertionError("the network was asked for")
 
-    monkeypatch.setattr(socket, "socket", refused)
-    monkeypatch.setattr(socket, "create_connection", refused)
+    monkeypatch.setattr(socket.socket, "connect", refused)
+    monkeypatch.setattr(socket, "getaddrinfo", refused)
     reader = PdfReader(io.BytesIO(render_pdf(small(hostile=hostile))))
     texts = [" ".join(page.extract_text().split()) for page in reader.pages]
     assert "Revise and resubmit" in texts[0]
