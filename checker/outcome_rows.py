@@ -20,7 +20,7 @@ from checker.ruling.tristate import UNKNOWN
 from checker.shown import meaning_of, shown_at, shown_number
 from checker.units import from_si, read_unit
 
-__all__ = ["outcome_row", "reason_for"]
+__all__ = ["calculation_in_words", "calculation_text", "exceeded", "outcome_row", "reason_for"]
 
 _PLACEHOLDER = re.compile(r"\{(\w+)\}")
 _LOOKED_UP = ("schedule_used", "outside_diameter", "wall_thickness", "inside_diameter", "material_used", "roughness")
@@ -33,6 +33,11 @@ def calculation_text(rule: Rule, values: Values, line_case: int) -> str:
         return shown_at(match[1], values[match[1]], line_case)
 
     return _PLACEHOLDER.sub(put, rule.calculation)
+
+
+def calculation_in_words(rule: Rule) -> str:
+    """Return the rule's equation with what each number means in its place."""
+    return _PLACEHOLDER.sub(lambda match: meaning_of(match[1]), rule.calculation)
 
 
 def _names_of(rule: Rule) -> tuple[str, ...]:
@@ -154,7 +159,7 @@ def reason_for(rule: Rule, values: Values, line_case: int, *, applies: int, faul
 
 def _shown(rule: Rule, number: float) -> str:
     if rule.sense == "condition":
-        return ""
+        return "not known" if math.isnan(number) else "no" if number > 0.0 else "yes"
     if not rule.dimension or rule.dimension == "dimensionless":
         return shown_number(number)
     unit = read_unit(rule.unit, rule.dimension)
@@ -193,8 +198,8 @@ def outcome_row(
         limit=limit,
         utilisation=float(judged.utilisation[line_case]),
         unit="" if rule.unit in ("", "-") else rule.unit,
-        value_shown="contradicts" if rule.sense == "condition" and value > 0.0 else _shown(rule, value),
-        limit_shown=_shown(rule, limit),
+        value_shown=_shown(rule, value),
+        limit_shown=_limit_shown(rule, limit),
         limit_origin=_limit_origin(rule, values, line_case),
         reason=reason,
         calculation=calculation_text(rule, values, line_case),
@@ -209,10 +214,19 @@ def outcome_row(
 def _reason(rule: Rule, judged: Judged, values: Values, line_case: int, outcome: Outcome) -> str:
     if outcome == Outcome.NOT_CHECKED:
         return reason_for(rule, values, line_case, applies=int(judged.applies[line_case]), fault=judged.fault)
-    if outcome != Outcome.DOES_NOT_MEET:
-        return ""
+    return "" if outcome != Outcome.DOES_NOT_MEET else exceeded(rule, judged, values, line_case)
+
+
+def _limit_shown(rule: Rule, limit: float) -> str:
     if rule.sense == "condition":
-        return f"{rule.title}: it does not ({calculation_text(rule, values, line_case)})"
+        return "yes"
+    return _shown(rule, limit) if math.isnan(limit) else f"{rule.sense} {_shown(rule, limit)}"
+
+
+def exceeded(rule: Rule, judged: Judged, values: Values, line_case: int) -> str:
+    """Return in a sentence by how much a limit is passed."""
+    if rule.sense == "condition":
+        return f"no: {calculation_text(rule, values, line_case)}"
     used = float(judged.utilisation[line_case])
     value, limit = _shown(rule, float(judged.value[line_case])), _shown(rule, float(judged.limit[line_case]))
     over = "" if not math.isfinite(used) else f", {used:.2f} of the limit"

@@ -11,6 +11,7 @@ import numpy as np
 from checker.evaluation.assumptions import ASSUMABLE, shown_assumption
 from checker.evaluation.values import Values
 from checker.model import Source
+from checker.outcome_rows import calculation_in_words
 from checker.review_model import AssumptionItem, Basis, RuleSummary, ServiceMatch
 from checker.ruling.contract import Outcome
 from checker.ruling.run import Judgement
@@ -111,7 +112,7 @@ def rule_summaries(judgement: Judgement) -> tuple[RuleSummary, ...]:
             title=rule.title,
             force=rule.force,
             source=str(rule.source),
-            calculation=rule.calculation,
+            calculation=calculation_in_words(rule),
             origin=rule.origin,
             counts={outcome.words: int((judgement.outcome[index] == outcome).sum()) for outcome in Outcome},
         )

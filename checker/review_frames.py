@@ -10,9 +10,10 @@ import numpy as np
 
 from checker.deviations import Deviation
 from checker.model import HoldItem, UnreadItem
-from checker.outcome_rows import calculation_text, reason_for
+from checker.outcome_rows import calculation_text, exceeded, reason_for
 from checker.ruling.contract import FORCES, Outcome, Rule
 from checker.ruling.run import Judged
+from checker.shown import si_unit_of_dimension
 
 if TYPE_CHECKING:
     import pandas as pd
@@ -37,7 +38,10 @@ def _texts(
         index = int(line_case)
         unchecked = outcome[index] == Outcome.NOT_CHECKED
         applies = int(judged.applies[index])
-        reasons.append(reason_for(rule, values, index, applies=applies, fault=judged.fault) if unchecked else "")
+        if unchecked:
+            reasons.append(reason_for(rule, values, index, applies=applies, fault=judged.fault))
+        else:
+            reasons.append(exceeded(rule, judged, values, index) if outcome[index] != Outcome.MEETS else "")
         wanted = full or outcome[index] == Outcome.DOES_NOT_MEET
         calculations.append(calculation_text(rule, values, index) if wanted and not judged.fault else "")
     return {"reason": reasons, "calculation": calculations}
@@ -62,7 +66,7 @@ def _of_rule(done: Review, index: int, full: bool) -> pd.DataFrame:
             "value": judged.value[cases],
             "limit": judged.limit[cases],
             "utilisation": judged.utilisation[cases],
-            "unit": rule.unit,
+            "unit": si_unit_of_dimension(rule.dimension),
             **_texts(done, rule, judged, cases, outcome, full),
             "line_case": cases,
         }

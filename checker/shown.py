@@ -12,7 +12,15 @@ from checker.fields import field_named
 from checker.model import Coded
 from checker.units import Unit, from_si, read_unit
 
-__all__ = ["meaning_of", "shown_number", "shown_value", "si_unit_of", "unit_of"]
+__all__ = [
+    "meaning_of",
+    "shown_at",
+    "shown_number",
+    "shown_value",
+    "si_unit_of",
+    "si_unit_of_dimension",
+    "unit_of",
+]
 
 NOT_GIVEN = "not given"
 
@@ -98,13 +106,18 @@ def unit_of(name: str) -> str:
 
 def si_unit_of(name: str) -> str:
     """Return the SI unit in which a field is held."""
+    return si_unit_of_dimension(_entry(name)[0])
+
+
+def si_unit_of_dimension(dimension: str) -> str:
+    """Return the SI unit of a dimension, a dash where it has none."""
     return {
         "velocity": "m/s", "density": "kg/m3", "pressure": "Pa", "pressure difference": "Pa", "length": "m",
         "pressure gradient": "Pa/m", "momentum flux": "Pa", "diameter": "m", "mass flow": "kg/s",
         "volume flow": "m3/s", "temperature": "K", "viscosity": "Pa s", "molar mass": "kg/mol",
         "standard flow": "mol/s", "surface tension": "N/m", "stress": "Pa", "time": "s",
         "erosional constant": "kg^0.5 m^-0.5 s^-1",
-    }.get(_entry(name)[0], "-")  # fmt: skip
+    }.get(dimension, "-")  # fmt: skip
 
 
 def shown_number(value: float, unit: str = "") -> str:

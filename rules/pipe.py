@@ -23,7 +23,7 @@ def _scheduled(*, schedule_given: TriState) -> TriState:
     sense="condition",
     source=Source("ASME B36.10M and B36.19M", "2022"),
     applies=_scheduled,
-    calculation="NPS {size}, schedule {schedule_used}: in the tables",
+    calculation="{size}, schedule {schedule_used}, looked up in the tables of both standards",
 )
 def schedule_exists(*, size: NDArray[np.float64], schedule_used: Coded, schedule_exists: NDArray[np.int8]) -> BoolArray:
     """Contradict where the standards' tables hold no such schedule for the size."""

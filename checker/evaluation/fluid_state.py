@@ -22,7 +22,8 @@ IDEAL_GAS_BELOW = 1.0e6
 
 def _open(*gaps: CodeArray) -> NDArray[np.bool_]:
     """Return True where a cell is on HOLD or could not be read: then no other value may stand in."""
-    return np.logical_or.reduce(np.isin(np.stack(gaps), (Gap.HOLD, Gap.REFUSED)), axis=0)
+    held: NDArray[np.bool_] = np.isin(np.stack(gaps), (Gap.HOLD, Gap.REFUSED)).any(axis=0)
+    return held
 
 
 def compressibility(

@@ -36,7 +36,8 @@ SOLVED = (
 
 
 def _open(*gaps: CodeArray) -> NDArray[np.bool_]:
-    return np.logical_or.reduce(np.isin(np.stack(gaps), (Gap.HOLD, Gap.REFUSED)), axis=0)
+    held: NDArray[np.bool_] = np.isin(np.stack(gaps), (Gap.HOLD, Gap.REFUSED)).any(axis=0)
+    return held
 
 
 def route(

@@ -16,10 +16,17 @@ _SEGREGATED, _TRANSITION, _INTERMITTENT, _DISTRIBUTED = range(4)
 # Level hold-up a, b, c and uphill inclination d, e, f, g by flow regime (Beggs and Brill 1973, tables 1 and 2), one
 # column a regime; the column of the transition is that of segregated flow, with which its interpolation begins.
 # d = 1 and zeros for distributed flow uphill stand for "no correction". Logarithms of a and d.
-_LEVEL = (np.log([0.98, 0.98, 0.845, 1.065]), np.array([0.4846, 0.4846, 0.5351, 0.5824]),
-          np.array([0.0868, 0.0868, 0.0173, 0.0609]))
-_UPHILL = (np.log([0.011, 0.011, 2.96, 1.0]), np.array([-3.768, -3.768, 0.305, 0.0]),
-           np.array([3.539, 3.539, -0.4473, 0.0]), np.array([-1.614, -1.614, 0.0978, 0.0]))
+_LEVEL = (
+    np.log([0.98, 0.98, 0.845, 1.065]),
+    np.array([0.4846, 0.4846, 0.5351, 0.5824]),
+    np.array([0.0868, 0.0868, 0.0173, 0.0609]),
+)
+_UPHILL = (
+    np.log([0.011, 0.011, 2.96, 1.0]),
+    np.array([-3.768, -3.768, 0.305, 0.0]),
+    np.array([3.539, 3.539, -0.4473, 0.0]),
+    np.array([-1.614, -1.614, 0.0978, 0.0]),
+)
 _DOWNHILL = (np.log(4.70), -0.3692, 0.1244, -0.5056)
 _LARGEST_EXPONENT = 7.0
 
@@ -98,8 +105,12 @@ def local_state(
     """
     bore, slope = floats(inside_diameter), floats(sine)
     mixture = no_slip(
-        mass_flux=mass_flux, vapour_fraction=vapour_fraction, liquid_density=liquid_density,
-        vapour_density=vapour_density, liquid_viscosity=liquid_viscosity, vapour_viscosity=vapour_viscosity,
+        mass_flux=mass_flux,
+        vapour_fraction=vapour_fraction,
+        liquid_density=liquid_density,
+        vapour_density=vapour_density,
+        liquid_viscosity=liquid_viscosity,
+        vapour_viscosity=vapour_viscosity,
     )
     groups = _groups(mixture, floats(liquid_density), floats(surface_tension), bore, slope)
     regime = _flow_regime(groups)
@@ -169,9 +180,7 @@ def _regime_holdup(regime: CodeArray, groups: _Groups) -> FloatArray:
     constant, one, two, three = (
         np.where(up, column[regime], downhill) for column, downhill in zip(_UPHILL, _DOWNHILL, strict=True)
     )
-    logarithm = (
-        constant + one * groups.log_fraction + two * groups.log_velocity_number + three * groups.log_froude
-    )
+    logarithm = constant + one * groups.log_fraction + two * groups.log_velocity_number + three * groups.log_froude
     inclination = np.maximum((1.0 - groups.fraction) * logarithm, 0.0)
     bend = np.sin(1.8 * np.arcsin(groups.sine))
     factor = 1.0 + inclination * bend * (1.0 - bend * bend / 3.0)
@@ -233,9 +242,16 @@ def pressure_gradient(
     .. [1] Beggs, H.D., Brill, J.P., J. Pet. Technol. 25 (1973) 607-617, doi:10.2118/4007-PA.
     """
     state = local_state(
-        mass_flux=mass_flux, vapour_fraction=vapour_fraction, liquid_density=liquid_density,
-        vapour_density=vapour_density, liquid_viscosity=liquid_viscosity, vapour_viscosity=vapour_viscosity,
-        surface_tension=surface_tension, inside_diameter=inside_diameter, roughness=roughness, sine=sine,
+        mass_flux=mass_flux,
+        vapour_fraction=vapour_fraction,
+        liquid_density=liquid_density,
+        vapour_density=vapour_density,
+        liquid_viscosity=liquid_viscosity,
+        vapour_viscosity=vapour_viscosity,
+        surface_tension=surface_tension,
+        inside_diameter=inside_diameter,
+        roughness=roughness,
+        sine=sine,
     )
     velocity = state.mixture.velocity
     friction = state.friction_factor / floats(inside_diameter) * 0.5 * state.mixture.density * velocity * velocity

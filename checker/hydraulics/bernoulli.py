@@ -1,6 +1,6 @@
 """Terms of the engineering Bernoulli balance, each its own function, in J/kg; wall shear and dynamic thrust.
 
-    integral of dp/rho from 2 to 1 = (alpha2 v2^2 - alpha1 v1^2)/2 + g (z2 - z1) + l_v + w_s
+integral of dp/rho from 2 to 1 = (alpha2 v2^2 - alpha1 v1^2)/2 + g (z2 - z1) + l_v + w_s
 """
 
 from __future__ import annotations
@@ -112,8 +112,9 @@ def exit_loss(*, kinetic_energy_factor: ArrayLike, velocity: ArrayLike) -> Float
 
 
 @np.errstate(all="ignore")
-def shaft_work(*, pressure_term: ArrayLike, kinetic_term: ArrayLike, elevation_term: ArrayLike,
-               viscous_loss: ArrayLike) -> FloatArray:
+def shaft_work(
+    *, pressure_term: ArrayLike, kinetic_term: ArrayLike, elevation_term: ArrayLike, viscous_loss: ArrayLike
+) -> FloatArray:
     """Shaft work done by the fluid that closes a balance: negative where a pump does work on the fluid.
 
     Parameters

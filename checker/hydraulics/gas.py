@@ -93,9 +93,7 @@ def choking_pressure(
 
 
 @np.errstate(all="ignore")
-def mach_number(
-    *, velocity: ArrayLike, pressure_over_density: ArrayLike, heat_capacity_ratio: ArrayLike
-) -> FloatArray:
+def mach_number(*, velocity: ArrayLike, pressure_over_density: ArrayLike, heat_capacity_ratio: ArrayLike) -> FloatArray:
     r"""Mach number of a gas.
 
     .. math:: Ma = \frac{v}{\sqrt{k Z R T / M}}, \quad Z R T / M = p / \rho
@@ -166,8 +164,17 @@ def outlet_from_inlet(
     .. [2] Geankoplis, C.J., "Transport Processes and Unit Operations", 3rd ed., section 2.11.
     """
     first, flux, energy, loss, rise, alpha = np.broadcast_arrays(
-        *map(floats, (pressure_inlet, mass_flux, pressure_over_density, loss_coefficient, elevation_change,
-                      kinetic_energy_factor))
+        *map(
+            floats,
+            (
+                pressure_inlet,
+                mass_flux,
+                pressure_over_density,
+                loss_coefficient,
+                elevation_change,
+                kinetic_energy_factor,
+            ),
+        )
     )
     line = _line(first, flux, energy, loss, rise, alpha)
     limit = _path_to_choking(line)
@@ -212,8 +219,17 @@ def inlet_from_outlet(
     .. [2] API Standard 521, 7th ed., 2020, section 5.5 (isothermal sizing of relief headers from the outlet).
     """
     last, flux, energy, loss, rise, alpha = np.broadcast_arrays(
-        *map(floats, (pressure_outlet, mass_flux, pressure_over_density, loss_coefficient, elevation_change,
-                      kinetic_energy_factor))
+        *map(
+            floats,
+            (
+                pressure_outlet,
+                mass_flux,
+                pressure_over_density,
+                loss_coefficient,
+                elevation_change,
+                kinetic_energy_factor,
+            ),
+        )
     )
     floor = choking_pressure(mass_flux=flux, pressure_over_density=energy, kinetic_energy_factor=alpha)
     choked = last < floor

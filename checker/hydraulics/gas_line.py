@@ -38,8 +38,11 @@ class GasLine:
     def known_end(self) -> tuple[FloatArray, FloatArray]:
         """Pressure of the plane in the pipe at the end that is known, inlet or outlet; NaN at the other."""
         behind = pressure_behind_entrance(
-            pressure_vessel=self.stated, mass_flux=self.flux, coefficient=self.entrance_step,
-            volume_constant=0.0, volume_slope=self.energy,
+            pressure_vessel=self.stated,
+            mass_flux=self.flux,
+            coefficient=self.entrance_step,
+            volume_constant=0.0,
+            volume_slope=self.energy,
         )
         inlet = np.where(self.cases.pressure_basis == INLET, behind, np.nan)
         outlet = np.where(self.cases.pressure_basis == OUTLET, self.stated, np.nan)
@@ -49,15 +52,18 @@ class GasLine:
         """End pressures of the planes in the pipe."""
         inlet, outlet = self.known_end()
         shared = {
-            "mass_flux": self.flux, "pressure_over_density": self.energy,
+            "mass_flux": self.flux,
+            "pressure_over_density": self.energy,
             "loss_coefficient": self.loss_pipe + self.loss_fittings,
-            "elevation_change": self.cases.elevation_change, "kinetic_energy_factor": self.alpha,
+            "elevation_change": self.cases.elevation_change,
+            "kinetic_energy_factor": self.alpha,
         }
         downstream = outlet_from_inlet(pressure_inlet=inlet, **shared)
         upstream = inlet_from_outlet(pressure_outlet=outlet, **shared)
         from_inlet = self.cases.pressure_basis == INLET
-        return GasFlow(*(np.where(from_inlet, first, second)
-                         for first, second in zip(downstream, upstream, strict=True)))
+        return GasFlow(
+            *(np.where(from_inlet, first, second) for first, second in zip(downstream, upstream, strict=True))
+        )
 
 
 def solve_gas(cases: Cases) -> Results:
@@ -79,22 +85,34 @@ def solve_gas(cases: Cases) -> Results:
         friction_factor=line.factor, mass_flux=line.flux, density=density, inside_diameter=line.bore
     )
     outside = pressure_before_entrance(
-        pressure_pipe=first, mass_flux=line.flux, coefficient=line.entrance_step, volume_constant=0.0,
+        pressure_pipe=first,
+        mass_flux=line.flux,
+        coefficient=line.entrance_step,
+        volume_constant=0.0,
         volume_slope=line.energy,
     )
     lowest = np.minimum(density, density_outlet)
     result |= {
-        "velocity": velocity, "velocity_outlet": velocity_outlet,
-        "velocity_at_stated_pressure": line.flux / line.listed_density, "reynolds": line.number,
-        "friction_factor": line.factor, "kinetic_energy_factor": line.alpha, "density": density,
-        "density_outlet": density_outlet, "pressure_gradient": gradient,
-        "pressure_inlet": np.where(from_inlet, line.stated, outside), "pressure_outlet": last,
-        "momentum_flux": line.flux * line.flux / lowest, "wall_shear_stress": 0.25 * gradient * line.bore,
-        "transitional": transitional(reynolds=line.number), "choked": blocked | flow.choked,
+        "velocity": velocity,
+        "velocity_outlet": velocity_outlet,
+        "velocity_at_stated_pressure": line.flux / line.listed_density,
+        "reynolds": line.number,
+        "friction_factor": line.factor,
+        "kinetic_energy_factor": line.alpha,
+        "density": density,
+        "density_outlet": density_outlet,
+        "pressure_gradient": gradient,
+        "pressure_inlet": np.where(from_inlet, line.stated, outside),
+        "pressure_outlet": last,
+        "momentum_flux": line.flux * line.flux / lowest,
+        "wall_shear_stress": 0.25 * gradient * line.bore,
+        "transitional": transitional(reynolds=line.number),
+        "choked": blocked | flow.choked,
     }
     for name, speed in (("mach", velocity), ("mach_outlet", velocity_outlet)):
-        result[name] = mach_number(velocity=speed, pressure_over_density=line.energy,
-                                   heat_capacity_ratio=cases.heat_capacity_ratio)
+        result[name] = mach_number(
+            velocity=speed, pressure_over_density=line.energy, heat_capacity_ratio=cases.heat_capacity_ratio
+        )
     result["status"] = _status(line, flow, blocked)
     return result
 
@@ -124,9 +142,14 @@ def _planes(line: GasLine, flow: GasFlow) -> tuple[FloatArray, FloatArray, BoolA
 def _drops(line: GasLine, flow: GasFlow, blocked: BoolArray) -> Results:
     loss = line.loss_pipe + line.loss_fittings
     profile = along_line(
-        pressure_inlet=flow.pressure_inlet, pressure_outlet=flow.pressure_outlet, path=flow.path,
-        mass_flux=line.flux, pressure_over_density=line.energy, loss_coefficient=loss,
-        elevation_change=line.cases.elevation_change, kinetic_energy_factor=line.alpha,
+        pressure_inlet=flow.pressure_inlet,
+        pressure_outlet=flow.pressure_outlet,
+        path=flow.path,
+        mass_flux=line.flux,
+        pressure_over_density=line.energy,
+        loss_coefficient=loss,
+        elevation_change=line.cases.elevation_change,
+        kinetic_energy_factor=line.alpha,
     )
     share = np.where(loss == 0.0, 0.0, line.loss_pipe / loss)
     head = 0.5 * line.flux * line.flux * line.energy / flow.pressure_inlet
@@ -147,15 +170,17 @@ def _drops(line: GasLine, flow: GasFlow, blocked: BoolArray) -> Results:
 
 def _status(line: GasLine, flow: GasFlow, blocked: BoolArray) -> FloatArray:
     cases = line.cases
-    status = first_reason({
-        "flow": ~(cases.flow_mass >= 0.0),
-        "bore": ~(cases.inside_diameter > 0.0),
-        "density": ~(cases.density > 0.0),
-        "viscosity": ~(cases.viscosity > 0.0),
-        "roughness": np.isnan(line.factor) & (line.flux != 0.0),
-        **common_reasons(cases, line.fittings),
-        "choked": blocked,
-        "no inlet pressure": np.isnan(flow.pressure_inlet) | np.isnan(flow.pressure_outlet),
-    })
+    status = first_reason(
+        {
+            "flow": ~(cases.flow_mass >= 0.0),
+            "bore": ~(cases.inside_diameter > 0.0),
+            "density": ~(cases.density > 0.0),
+            "viscosity": ~(cases.viscosity > 0.0),
+            "roughness": np.isnan(line.factor) & (line.flux != 0.0),
+            **common_reasons(cases, line.fittings),
+            "choked": blocked,
+            "no inlet pressure": np.isnan(flow.pressure_inlet) | np.isnan(flow.pressure_outlet),
+        }
+    )
     # Sonic flow at a stated inlet is certain without the length: say that rather than what is missing.
     return np.where(blocked, STATUS_CODES["choked"], status).astype(np.float64)

@@ -68,8 +68,19 @@ def along_line(
     .. [1] Bird, R.B., Stewart, W.E., Lightfoot, E.N., "Transport Phenomena", 2nd ed., sections 7.4 and 15.4.
     """
     first, last, end, flux, energy, loss, rise, alpha = np.broadcast_arrays(
-        *map(floats, (pressure_inlet, pressure_outlet, path, mass_flux, pressure_over_density, loss_coefficient,
-                      elevation_change, kinetic_energy_factor))
+        *map(
+            floats,
+            (
+                pressure_inlet,
+                pressure_outlet,
+                path,
+                mass_flux,
+                pressure_over_density,
+                loss_coefficient,
+                elevation_change,
+                kinetic_energy_factor,
+            ),
+        )
     )
     dynamic = flux * flux * energy
     climb = 2.0 * GRAVITY * rise / energy

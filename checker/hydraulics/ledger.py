@@ -60,8 +60,16 @@ class Ledger:
         return bernoulli.as_head(energy=getattr(self, term))
 
 
-_TERMS = ("pressure_term", "kinetic_term", "elevation_term", "loss_pipe", "loss_fittings", "loss_exit", "loss_slip",
-          "shaft_work")
+_TERMS = (
+    "pressure_term",
+    "kinetic_term",
+    "elevation_term",
+    "loss_pipe",
+    "loss_fittings",
+    "loss_exit",
+    "loss_slip",
+    "shaft_work",
+)
 
 
 @np.errstate(all="ignore")
@@ -114,8 +122,16 @@ def closing_error(*, pressure_term: ArrayLike, **terms: ArrayLike) -> FloatArray
 
 
 def _solved(solution: Solution, rows: IndexArray) -> dict[str, FloatArray]:
-    names = ("velocity", "velocity_outlet", "kinetic_energy_factor", "friction_factor", "dp_total",
-             "fittings_coefficient", "status", "density")
+    names = (
+        "velocity",
+        "velocity_outlet",
+        "kinetic_energy_factor",
+        "friction_factor",
+        "dp_total",
+        "fittings_coefficient",
+        "status",
+        "density",
+    )
     return {name: np.asarray(getattr(solution, name)[rows]) for name in names}
 
 
@@ -137,13 +153,16 @@ def _ends(
     alpha, first, last = solved["kinetic_energy_factor"], solved["velocity"], solved["velocity_outlet"]
     leaves = np.nan_to_num(cases.exit) > 0.0
     kinetic = bernoulli.kinetic_term(
-        velocity_inlet=np.where(fittings.entrance > 0.0, 0.0, first), velocity_outlet=np.where(leaves, 0.0, last),
-        kinetic_energy_factor_inlet=alpha, kinetic_energy_factor_outlet=alpha,
+        velocity_inlet=np.where(fittings.entrance > 0.0, 0.0, first),
+        velocity_outlet=np.where(leaves, 0.0, last),
+        kinetic_energy_factor_inlet=alpha,
+        kinetic_energy_factor_outlet=alpha,
     )
     jet = np.where(leaves, bernoulli.exit_loss(kinetic_energy_factor=alpha, velocity=last), 0.0)
     known = np.where(np.isnan(pressure_term), np.nan, 1.0)
     return {
-        "kinetic_term": known * kinetic, "loss_exit": known * jet,
+        "kinetic_term": known * kinetic,
+        "loss_exit": known * jet,
         "elevation_term": known * bernoulli.elevation_term(elevation_change=cases.elevation_change),
     }
 
@@ -166,9 +185,14 @@ def _gas(cases: Cases, fittings: Fittings) -> dict[str, FloatArray]:
     flow = line.solve()
     loss = line.loss_pipe + line.loss_fittings
     profile = along_line(
-        pressure_inlet=flow.pressure_inlet, pressure_outlet=flow.pressure_outlet, path=flow.path,
-        mass_flux=line.flux, pressure_over_density=line.energy, loss_coefficient=loss,
-        elevation_change=cases.elevation_change, kinetic_energy_factor=line.alpha,
+        pressure_inlet=flow.pressure_inlet,
+        pressure_outlet=flow.pressure_outlet,
+        path=flow.path,
+        mass_flux=line.flux,
+        pressure_over_density=line.energy,
+        loss_coefficient=loss,
+        elevation_change=cases.elevation_change,
+        kinetic_energy_factor=line.alpha,
     )
     share = np.where(loss == 0.0, 0.0, line.loss_pipe / loss)
     head = 0.5 * (line.flux * line.energy / flow.pressure_inlet) ** 2
@@ -178,8 +202,10 @@ def _gas(cases: Cases, fittings: Fittings) -> dict[str, FloatArray]:
         pressure_inlet=flow.pressure_inlet, pressure_drop=flow.pressure_drop, pressure_over_density=line.energy
     )
     return {
-        "pressure_term": along + step, "loss_pipe": profile.loss * share,
-        "loss_fittings": profile.loss * (1.0 - share) + entrance, "loss_slip": np.zeros_like(along),
+        "pressure_term": along + step,
+        "loss_pipe": profile.loss * share,
+        "loss_fittings": profile.loss * (1.0 - share) + entrance,
+        "loss_slip": np.zeros_like(along),
     }
 
 
@@ -192,8 +218,10 @@ def _two_phase(cases: Cases, fittings: Fittings, methods: Methods) -> dict[str, 
     entrance = np.where(fittings.entrance == 0.0, 0.0, fittings.entrance_coefficient * head)
     step = np.where(fittings.entrance == 0.0, 0.0, known.entrance_step * head)
     return {
-        "pressure_term": found.parts[7] + step, "loss_pipe": found.parts[4],
-        "loss_fittings": found.parts[5] + entrance, "loss_slip": found.parts[6],
+        "pressure_term": found.parts[7] + step,
+        "loss_pipe": found.parts[4],
+        "loss_fittings": found.parts[5] + entrance,
+        "loss_slip": found.parts[6],
     }
 
 

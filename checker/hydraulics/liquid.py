@@ -13,8 +13,9 @@ from checker.hydraulics.solution import INLET, OUTLET, STATUS_CODES
 
 
 @np.errstate(all="ignore")
-def pressure_gradient(*, friction_factor: ArrayLike, mass_flux: ArrayLike, density: ArrayLike,
-                      inside_diameter: ArrayLike) -> FloatArray:
+def pressure_gradient(
+    *, friction_factor: ArrayLike, mass_flux: ArrayLike, density: ArrayLike, inside_diameter: ArrayLike
+) -> FloatArray:
     r"""Friction pressure gradient of straight pipe (Darcy and Weisbach).
 
     .. math:: \frac{dp}{dL} = \frac{f}{D} \frac{G^2}{2 \rho}
@@ -55,10 +56,18 @@ def solve_liquid(cases: Cases) -> Results:
     alpha = kinetic_energy_factor(reynolds=number, friction_factor=factor)
     gradient = pressure_gradient(friction_factor=factor, mass_flux=flux, density=density, inside_diameter=bore)
     result: Results = {
-        "velocity": velocity, "velocity_outlet": velocity, "velocity_at_stated_pressure": velocity,
-        "reynolds": number, "friction_factor": factor, "kinetic_energy_factor": alpha, "density": density,
-        "density_outlet": density, "pressure_gradient": gradient, "momentum_flux": flux * velocity,
-        "wall_shear_stress": 0.25 * gradient * bore, "transitional": transitional(reynolds=number),
+        "velocity": velocity,
+        "velocity_outlet": velocity,
+        "velocity_at_stated_pressure": velocity,
+        "reynolds": number,
+        "friction_factor": factor,
+        "kinetic_energy_factor": alpha,
+        "density": density,
+        "density_outlet": density,
+        "pressure_gradient": gradient,
+        "momentum_flux": flux * velocity,
+        "wall_shear_stress": 0.25 * gradient * bore,
+        "transitional": transitional(reynolds=number),
     }
     result |= _drops(cases, bore, density, flux, factor, alpha, gradient)
     result |= _pressures(cases, result["dp_total"])
@@ -66,8 +75,15 @@ def solve_liquid(cases: Cases) -> Results:
     return result
 
 
-def _drops(cases: Cases, bore: FloatArray, density: FloatArray, flux: FloatArray, factor: FloatArray,
-           alpha: FloatArray, gradient: FloatArray) -> Results:
+def _drops(
+    cases: Cases,
+    bore: FloatArray,
+    density: FloatArray,
+    flux: FloatArray,
+    factor: FloatArray,
+    alpha: FloatArray,
+    gradient: FloatArray,
+) -> Results:
     fittings = fittings_of(cases)
     length = np.where(cases.length >= 0.0, cases.length, np.nan)
     head = 0.5 * flux * flux / density
@@ -78,8 +94,12 @@ def _drops(cases: Cases, bore: FloatArray, density: FloatArray, flux: FloatArray
     elevation = density * 9.80665 * cases.elevation_change
     acceleration = np.where(fittings.entrance == 0.0, 0.0, fittings.entrance * alpha * head)
     return {
-        "dp_friction": friction, "dp_fittings": losses, "dp_elevation": elevation, "dp_acceleration": acceleration,
-        "dp_total": friction + losses + elevation + acceleration, "fittings_coefficient": coefficient,
+        "dp_friction": friction,
+        "dp_fittings": losses,
+        "dp_elevation": elevation,
+        "dp_acceleration": acceleration,
+        "dp_total": friction + losses + elevation + acceleration,
+        "fittings_coefficient": coefficient,
     }
 
 
@@ -93,15 +113,16 @@ def _pressures(cases: Cases, drop: FloatArray) -> Results:
 
 def _status(cases: Cases, result: Results) -> FloatArray:
     fittings = fittings_of(cases)
-    status = first_reason({
-        "flow": ~(cases.flow_mass >= 0.0),
-        "bore": ~(cases.inside_diameter > 0.0),
-        "density": ~(cases.density > 0.0),
-        "viscosity": ~(cases.viscosity > 0.0),
-        "roughness": np.isnan(result["pressure_gradient"]),
-        **common_reasons(cases, fittings),
-    })
+    status = first_reason(
+        {
+            "flow": ~(cases.flow_mass >= 0.0),
+            "bore": ~(cases.inside_diameter > 0.0),
+            "density": ~(cases.density > 0.0),
+            "viscosity": ~(cases.viscosity > 0.0),
+            "roughness": np.isnan(result["pressure_gradient"]),
+            **common_reasons(cases, fittings),
+        }
+    )
     lost = (status == 0) & (np.isnan(result["pressure_inlet"]) | np.isnan(result["pressure_outlet"]))
-    other = np.where(cases.pressure_basis == INLET, STATUS_CODES["pressure used up"],
-                     STATUS_CODES["no inlet pressure"])
+    other = np.where(cases.pressure_basis == INLET, STATUS_CODES["pressure used up"], STATUS_CODES["no inlet pressure"])
     return np.where(lost, other, status)

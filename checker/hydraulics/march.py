@@ -109,8 +109,10 @@ def march(
     """
     walk = _Walk(line, start, method, downstream)
     result = March(
-        np.full_like(start, np.nan), np.full((len(PARTS), start.size), np.nan),
-        walk.point.terms.acceleration_factor >= 1.0, np.zeros(start.shape, dtype=np.bool_),
+        np.full_like(start, np.nan),
+        np.full((len(PARTS), start.size), np.nan),
+        walk.point.terms.acceleration_factor >= 1.0,
+        np.zeros(start.shape, dtype=np.bool_),
     )
     walk.keep(np.isfinite(walk.full))
     for _ in range(_LIMIT):

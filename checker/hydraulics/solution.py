@@ -44,16 +44,44 @@ STATUS_CODES = {
     name: code
     for code, name in enumerate(
         (
-            "solved", "phase", "flow", "bore", "density", "vapour fraction", "outlet vapour fraction",
-            "liquid density", "vapour density", "viscosity", "surface tension", "roughness", "length", "fittings",
-            "elevation", "slope", "pressure", "pressure basis", "no flow", "choked", "choked two-phase",
-            "pressure used up", "no inlet pressure", "method range",
+            "solved",
+            "phase",
+            "flow",
+            "bore",
+            "density",
+            "vapour fraction",
+            "outlet vapour fraction",
+            "liquid density",
+            "vapour density",
+            "viscosity",
+            "surface tension",
+            "roughness",
+            "length",
+            "fittings",
+            "elevation",
+            "slope",
+            "pressure",
+            "pressure basis",
+            "no flow",
+            "choked",
+            "choked two-phase",
+            "pressure used up",
+            "no inlet pressure",
+            "method range",
         )
     )
 }
 
 __all__ = [
-    "FLOW_REGIMES", "GAS", "INLET", "LIQUID", "OUTLET", "STATUS_CODES", "STATUS_SENTENCES", "TWO_PHASE", "Methods",
+    "FLOW_REGIMES",
+    "GAS",
+    "INLET",
+    "LIQUID",
+    "OUTLET",
+    "STATUS_CODES",
+    "STATUS_SENTENCES",
+    "TWO_PHASE",
+    "Methods",
     "Solution",
 ]
 
@@ -81,9 +109,7 @@ class Methods:
         if self.gas != "isothermal":
             raise ValueError(f"methods: gas={self.gas!r} is not known; use 'isothermal'")
         if self.two_phase not in ("beggs-brill", "homogeneous"):
-            raise ValueError(
-                f"methods: two_phase={self.two_phase!r} is not known; use 'beggs-brill' or 'homogeneous'"
-            )
+            raise ValueError(f"methods: two_phase={self.two_phase!r} is not known; use 'beggs-brill' or 'homogeneous'")
 
 
 @dataclass(frozen=True)

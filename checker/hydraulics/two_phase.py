@@ -21,9 +21,7 @@ class NoSlip(NamedTuple):
 
 
 @np.errstate(all="ignore")
-def mixture_density(
-    *, vapour_fraction: ArrayLike, liquid_density: ArrayLike, vapour_density: ArrayLike
-) -> FloatArray:
+def mixture_density(*, vapour_fraction: ArrayLike, liquid_density: ArrayLike, vapour_density: ArrayLike) -> FloatArray:
     r"""Density of the no-slip mixture.
 
     .. math:: \frac{1}{\rho_n} = \frac{1 - x}{\rho_L} + \frac{x}{\rho_G}

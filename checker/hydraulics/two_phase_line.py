@@ -52,7 +52,8 @@ class TwoPhaseLine:
     def density(self, pressure: FloatArray, place: FloatArray) -> FloatArray:
         """No-slip density at a pressure and place."""
         return mixture_density(
-            vapour_fraction=self.quality(place), liquid_density=self.liquid_density,
+            vapour_fraction=self.quality(place),
+            liquid_density=self.liquid_density,
             vapour_density=pressure / self.energy,
         )
 
@@ -90,25 +91,49 @@ class State(NamedTuple):
 def state_at(line: TwoPhaseLine, pressure: FloatArray, place: FloatArray, method: Method) -> State:
     """Friction factor, densities, velocities, hold-up and regime at a pressure and place."""
     shared: Mapping[str, FloatArray] = {
-        "mass_flux": line.mass_flux, "vapour_fraction": line.quality(place), "liquid_density": line.liquid_density,
-        "vapour_density": pressure / line.energy, "liquid_viscosity": line.liquid_viscosity,
+        "mass_flux": line.mass_flux,
+        "vapour_fraction": line.quality(place),
+        "liquid_density": line.liquid_density,
+        "vapour_density": pressure / line.energy,
+        "liquid_viscosity": line.liquid_viscosity,
         "vapour_viscosity": line.vapour_viscosity,
     }
     if method == "homogeneous":
         mixture = no_slip(**shared)
         number = line.mass_flux * line.inside_diameter / mixture.viscosity
         factor = friction_factor(reynolds=number, relative_roughness=line.roughness / line.inside_diameter)
-        return State(factor, factor, mixture.density, mixture.density, mixture.velocity, mixture.vapour_velocity,
-                     mixture.viscosity, mixture.liquid_fraction, np.full(factor.shape, -1, dtype=np.int8),
-                     np.zeros(factor.shape, dtype=np.bool_))
+        return State(
+            factor,
+            factor,
+            mixture.density,
+            mixture.density,
+            mixture.velocity,
+            mixture.vapour_velocity,
+            mixture.viscosity,
+            mixture.liquid_fraction,
+            np.full(factor.shape, -1, dtype=np.int8),
+            np.zeros(factor.shape, dtype=np.bool_),
+        )
     found = local_state(
-        **shared, surface_tension=line.surface_tension, inside_diameter=line.inside_diameter,
-        roughness=line.roughness, sine=line.sine,
+        **shared,
+        surface_tension=line.surface_tension,
+        inside_diameter=line.inside_diameter,
+        roughness=line.roughness,
+        sine=line.sine,
     )
     mixture = found.mixture
-    return State(found.friction_factor, found.no_slip_factor, found.slip_density, mixture.density, mixture.velocity,
-                 mixture.vapour_velocity, mixture.viscosity, found.liquid_holdup, found.flow_regime,
-                 found.near_one)
+    return State(
+        found.friction_factor,
+        found.no_slip_factor,
+        found.slip_density,
+        mixture.density,
+        mixture.velocity,
+        mixture.vapour_velocity,
+        mixture.viscosity,
+        found.liquid_holdup,
+        found.flow_regime,
+        found.near_one,
+    )
 
 
 def slice_at(line: TwoPhaseLine, pressure: FloatArray, place: FloatArray, method: Method) -> Slice:
@@ -136,8 +161,16 @@ def slice_at(line: TwoPhaseLine, pressure: FloatArray, place: FloatArray, method
     drop = (friction + fittings + static + evaporation) / (1.0 - factor)
     slip = static / state.density - GRAVITY * line.rise + (factor - plain) * drop / state.density
     return Slice(
-        drop, friction, fittings, static, factor * drop + evaporation, friction / state.density,
-        fittings / state.density, slip, factor, _branch(state, line),
+        drop,
+        friction,
+        fittings,
+        static,
+        factor * drop + evaporation,
+        friction / state.density,
+        fittings / state.density,
+        slip,
+        factor,
+        _branch(state, line),
     )
 
 

@@ -30,7 +30,8 @@ class TwoPhaseCases:
         quality, quality_outlet = _qualities(cases)
         self.known_quality = np.where(self.from_outlet, quality_outlet, quality)
         self.listed_density = mixture_density(
-            vapour_fraction=self.known_quality, liquid_density=cases.liquid_density,
+            vapour_fraction=self.known_quality,
+            liquid_density=cases.liquid_density,
             vapour_density=cases.vapour_density,
         )
         line = self._line(quality, quality_outlet - quality)
@@ -48,12 +49,21 @@ class TwoPhaseCases:
         bore = positive(cases.inside_diameter)
         return TwoPhaseLine(
             mass_flux=positive(mass_flux(flow_mass=cases.flow_mass, inside_diameter=bore)),
-            quality_inlet=quality, quality_change=quality_change, liquid_density=positive(cases.liquid_density),
+            quality_inlet=quality,
+            quality_change=quality_change,
+            liquid_density=positive(cases.liquid_density),
             energy=self.stated / positive(cases.vapour_density),
-            liquid_viscosity=positive(cases.liquid_viscosity), vapour_viscosity=positive(cases.vapour_viscosity),
-            surface_tension=positive(cases.surface_tension), inside_diameter=bore, roughness=cases.roughness,
-            length=length, extra_length=fittings.extra_length, cell_coefficient=fittings.cell,
-            rise=cases.elevation_change, sine=sine, kinetic_energy_factor=np.ones_like(length),
+            liquid_viscosity=positive(cases.liquid_viscosity),
+            vapour_viscosity=positive(cases.vapour_viscosity),
+            surface_tension=positive(cases.surface_tension),
+            inside_diameter=bore,
+            roughness=cases.roughness,
+            length=length,
+            extra_length=fittings.extra_length,
+            cell_coefficient=fittings.cell,
+            rise=cases.elevation_change,
+            sine=sine,
+            kinetic_energy_factor=np.ones_like(length),
             recovery=np.full(length.shape, self.methods.downhill_recovery, dtype=np.bool_),
         )
 
@@ -66,8 +76,11 @@ class TwoPhaseCases:
         """Pressure of the first plane in the pipe where the inlet pressure is stated."""
         constant, slope = self.volume()
         behind = pressure_behind_entrance(
-            pressure_vessel=self.stated, mass_flux=self.line.mass_flux, coefficient=self.entrance_step,
-            volume_constant=constant, volume_slope=slope,
+            pressure_vessel=self.stated,
+            mass_flux=self.line.mass_flux,
+            coefficient=self.entrance_step,
+            volume_constant=constant,
+            volume_slope=slope,
         )
         return np.where(self.from_inlet, behind, np.nan)
 
@@ -100,14 +113,22 @@ def solve_two_phase(cases: Cases, methods: Methods) -> Results:
     result = _drops(known, found, first)
     result |= _end_pressures(known, first, last)
     result |= {
-        "velocity": line.mass_flux / density, "velocity_outlet": line.mass_flux / density_outlet,
-        "velocity_at_stated_pressure": line.mass_flux / known.listed_density, "reynolds": number,
-        "friction_factor": inlet.factor, "kinetic_energy_factor": line.kinetic_energy_factor, "density": density,
-        "density_outlet": density_outlet, "pressure_gradient": gradient,
+        "velocity": line.mass_flux / density,
+        "velocity_outlet": line.mass_flux / density_outlet,
+        "velocity_at_stated_pressure": line.mass_flux / known.listed_density,
+        "reynolds": number,
+        "friction_factor": inlet.factor,
+        "kinetic_energy_factor": line.kinetic_energy_factor,
+        "density": density,
+        "density_outlet": density_outlet,
+        "pressure_gradient": gradient,
         "momentum_flux": line.mass_flux**2 / np.minimum(density, density_outlet),
-        "wall_shear_stress": 0.25 * gradient * line.inside_diameter, "liquid_holdup": inlet.holdup,
-        "flow_regime": inlet.regime.astype(np.float64), "transitional": transitional(reynolds=number),
-        "choked": found.choked, "status": _status(known, found),
+        "wall_shear_stress": 0.25 * gradient * line.inside_diameter,
+        "liquid_holdup": inlet.holdup,
+        "flow_regime": inlet.regime.astype(np.float64),
+        "transitional": transitional(reynolds=number),
+        "choked": found.choked,
+        "status": _status(known, found),
     }
     return result
 
@@ -124,8 +145,11 @@ def _densities(known: TwoPhaseCases, first: FloatArray, last: FloatArray) -> tup
 def _end_pressures(known: TwoPhaseCases, first: FloatArray, last: FloatArray) -> Results:
     constant, slope = known.volume()
     outside = pressure_before_entrance(
-        pressure_pipe=first, mass_flux=known.line.mass_flux, coefficient=known.entrance_step,
-        volume_constant=constant, volume_slope=slope,
+        pressure_pipe=first,
+        mass_flux=known.line.mass_flux,
+        coefficient=known.entrance_step,
+        volume_constant=constant,
+        volume_slope=slope,
     )
     return {"pressure_inlet": np.where(known.from_inlet, known.stated, outside), "pressure_outlet": last}
 
@@ -139,7 +163,9 @@ def _drops(known: TwoPhaseCases, found: March, first: FloatArray) -> Results:
     factor = known.listed.factor
     in_line = fittings.coefficient(friction_factor=factor, inside_diameter=line.inside_diameter)
     return {
-        "dp_friction": friction, "dp_fittings": losses + entry_loss, "dp_elevation": elevation,
+        "dp_friction": friction,
+        "dp_fittings": losses + entry_loss,
+        "dp_elevation": elevation,
         "dp_acceleration": acceleration + taken_up,
         "dp_total": friction + losses + elevation + acceleration + entry_loss + taken_up,
         "fittings_coefficient": in_line + fittings.entrance_coefficient,
@@ -151,23 +177,25 @@ def _status(known: TwoPhaseCases, found: March) -> FloatArray:
     tension = np.isnan(line.surface_tension) & (known.methods.two_phase == "beggs-brill")
     rough = cases.roughness / line.inside_diameter
     given = cases.vapour_fraction_outlet
-    status = first_reason({
-        "flow": ~(cases.flow_mass >= 0.0),
-        "no flow": cases.flow_mass == 0.0,
-        "bore": ~(cases.inside_diameter > 0.0),
-        "vapour fraction": np.isnan(line.quality_inlet),
-        "outlet vapour fraction": ~np.isnan(given) & ~((given >= 0.0) & (given <= 1.0)),
-        "liquid density": ~(cases.liquid_density > 0.0),
-        "vapour density": ~(cases.vapour_density > 0.0),
-        "viscosity": ~((cases.liquid_viscosity > 0.0) & (cases.vapour_viscosity > 0.0)),
-        "surface tension": tension,
-        "roughness": ~((rough >= 0.0) & (rough < 1.0)),
-        **common_reasons(cases, known.fittings),
-        "slope": ~(np.abs(line.sine) <= 1.0),
-        "choked two-phase": found.choked | _stopped_at_entrance(known),
-        "pressure used up": found.used_up,
-        "method range": np.isnan(found.pressure),
-    })
+    status = first_reason(
+        {
+            "flow": ~(cases.flow_mass >= 0.0),
+            "no flow": cases.flow_mass == 0.0,
+            "bore": ~(cases.inside_diameter > 0.0),
+            "vapour fraction": np.isnan(line.quality_inlet),
+            "outlet vapour fraction": ~np.isnan(given) & ~((given >= 0.0) & (given <= 1.0)),
+            "liquid density": ~(cases.liquid_density > 0.0),
+            "vapour density": ~(cases.vapour_density > 0.0),
+            "viscosity": ~((cases.liquid_viscosity > 0.0) & (cases.vapour_viscosity > 0.0)),
+            "surface tension": tension,
+            "roughness": ~((rough >= 0.0) & (rough < 1.0)),
+            **common_reasons(cases, known.fittings),
+            "slope": ~(np.abs(line.sine) <= 1.0),
+            "choked two-phase": found.choked | _stopped_at_entrance(known),
+            "pressure used up": found.used_up,
+            "method range": np.isnan(found.pressure),
+        }
+    )
     return status.astype(np.float64)
 
 

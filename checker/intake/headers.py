@@ -8,7 +8,7 @@ from dataclasses import dataclass
 from functools import cache, lru_cache
 
 from checker.fields import Field, all_fields
-from checker.intake.case_names import canonical_case, split_case
+from checker.intake.case_names import split_case
 from checker.intake.texts import fold_words, key_of
 from checker.intake.unit_words import is_unit_text, size_basis, unit_or_refusal
 
@@ -76,6 +76,7 @@ def _brackets(header: str) -> tuple[str, list[tuple[str, str]]]:
 
 def _bracket_splits(header: str) -> Iterator[_Split]:
     outside, contents = _brackets(header)
+    contents = [(sign, text.strip()) for sign, text in contents]
     contents = [(sign, text) for sign, text in contents if not _NOTE.fullmatch(fold_words(text)) or is_unit_text(text)]
     units = [text for sign, text in contents if is_unit_text(text)] or [text for sign, text in contents if sign == "["]
     words = [text for sign, text in contents if text not in units]
@@ -84,21 +85,33 @@ def _bracket_splits(header: str) -> Iterator[_Split]:
     yield _Split(outside, unit or next(iter(words), ""), True)
 
 
+def _signs(header: str) -> Iterator[_Split]:
+    """Yield the splits at units that are mere signs (``%``, an inch mark), which folding would drop unseen."""
+    words = header.split()
+    for position, word in enumerate(words[1:], start=1):
+        if not fold_words(word) and is_unit_text(word):
+            yield _Split(" ".join(words[:position] + words[position + 1 :]), word, False)
+
+
 def _splits(header: str) -> Iterator[_Split]:
-    yield _Split(header, "", False)
-    if any(sign in header for sign in _OPENING):
+    """Yield every way to part a header into its name and its unit, the likeliest first."""
+    _, contents = _brackets(header)
+    yield from _signs(header)
+    if not any(sign == "[" or is_unit_text(text) for sign, text in contents):
+        yield _Split(header, "", False)
+    if contents:
         yield from _bracket_splits(header)
     if "," in header:
         name, _, unit = header.rpartition(",")
-        yield _Split(name, unit, True)
+        yield _Split(name, unit.strip(), True)
     words = header.split()
     if len(words) > _MOST_WORDS:
         return
     for count in range(1, _LONGEST_UNIT_WORDS + 1):
         for start in range(len(words) - count, 0, -1):
-            unit = " ".join(words[start : start + count])
-            if is_unit_text(unit.strip(",;:")):
-                yield _Split(" ".join(words[:start] + words[start + count :]), unit.strip(",;:"), False)
+            unit = " ".join(words[start : start + count]).strip(",;:")
+            if is_unit_text(unit):
+                yield _Split(" ".join(words[:start] + words[start + count :]), unit, False)
 
 
 def _named(name: str) -> tuple[tuple[Field, ...], str]:
@@ -177,8 +190,3 @@ def unit_in_header(header: str, field: Field) -> str:
     fitting = [unit for unit in units if _fits(field, unit)]
     bracketed = [split.unit for split in _splits(header) if split.unit and split.bracketed]
     return next(iter(fitting or bracketed), "")
-
-
-def case_in_header(header: str) -> str:
-    """Return the case that a header names, whatever its field."""
-    return next((case for case, _ in split_case(fold_words(header)) if canonical_case(case) == case), "")

@@ -23,15 +23,16 @@ NAN = float("nan")
 LONGEST_NUMBER = 60
 KINEMATIC, SPECIFIC_GRAVITY = 1, 2
 _SHAPE = re.compile(
-    r"([-+]?)\s?((?:\d[\d.,]*|[.,]\d[\d.,]*)(?:[ ']\d{3}(?!\d)[\d.,]*)*)([eE][-+]?\d{1,4}(?!\d))?(.*)", re.DOTALL
+    r"([-+]?)\s?((?:\d[\d.,]*|[.,]\d[\d.,]*)(?:[ ']\d{3}(?!\d)[\d.,]*)*)([eE][-+]?\d{1,4}(?!\d))?(.*)",
+    re.DOTALL | re.ASCII,
 )
 _LIMIT = re.compile(
     r"(?:[<>~\u2264\u2265\u2248\u00b1=@]|ca\.?\s|approx|abt|about|max|min|up to|less|more)", re.IGNORECASE
 )
 _SECOND = re.compile(
-    r"(?:[-~/\u00b1x\u00d7&;:]|to\b|\.\.+|and\b|or\b)\s*[-+]?\s*[\d.]|/\s*[A-Za-z]{2,3}$", re.IGNORECASE
+    r"(?:[-~/\u00b1x\u00d7&;:]|to\b|\.\.+|and\b|or\b)\s*[-+]?\s*[\d.]|/\s*[A-Za-z]{2,3}$", re.IGNORECASE | re.ASCII
 )
-_THOUSANDS = re.compile(r"\d{1,3}(?:[ ']\d{3})+(?:[.,]\d+)?")
+_THOUSANDS = re.compile(r"\d{1,3}(?:[ ']\d{3})+(?:[.,]\d+)?", re.ASCII)
 _FLOWS = frozenset({"flow_mass", "flow_volume", "flow_standard"})
 
 
@@ -118,7 +119,7 @@ def _split(text: str, context: NumberContext) -> tuple[float, str]:
     if match is None:
         raise _Refusal("is not a number.")
     sign, body, exponent, rest = match[1], match[2], match[3] or "", match[4].strip()
-    if _SECOND.match(rest) or re.match(r"\d", rest):
+    if _SECOND.match(rest) or rest[:1].isdigit():
         raise _Refusal("holds two readings (a range, two values or a broken number): give one value per case.")
     if rest[:1] in ("*", "+"):
         raise _Refusal("is a limit or carries a mark: give one value per case and put notes into the remarks.")

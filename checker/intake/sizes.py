@@ -21,11 +21,13 @@ __all__ = ["SizeReading", "column_basis", "read_size"]
 TABLE = Path(__file__).parent.parent / "tables" / "nominal_sizes.csv"
 NAN = float("nan")
 _VULGAR = {"\u00bc": "1/4", "\u00bd": "1/2", "\u00be": "3/4", "\u215b": "1/8", "\u215c": "3/8"}
-_DN = re.compile(r"(?:DN|ND)\s*[-.=:]?\s*(\d{1,4})(?:\s*mm)?|(\d{1,4})\s*(?:NB|mm|DN|mm\s*NB)", re.IGNORECASE)
+_DN = re.compile(
+    r"(?:DN|ND)\s*[-.=:]?\s*(\d{1,4})(?:\s*mm)?|(\d{1,4})\s*(?:NB|mm|DN|mm\s*NB)", re.IGNORECASE | re.ASCII
+)
 _INCHES = re.compile(
     r"(NPS\s*)?(?:(\d{1,2})(?:\s*[-.\s]\s*)(\d)\s*/\s*(\d)|(\d)\s*/\s*(\d)|(\d{1,3}(?:[.,]\d{1,4})?|\.\d{1,4}))"
     r"\s*(\"|''|inch(?:es)?\.?|ins?\.?|NPS)?",
-    re.IGNORECASE,
+    re.IGNORECASE | re.ASCII,
 )
 _TWO_SIZES = re.compile(r".*\d.*[xX\u00d7/&+~].*\d.*|.*\d\s*(?:to|-|and)\s*\d.*")
 _ASK_BASIS = "write 6\" or DN 150, head the column 'Size (NPS)' or 'Size (DN)', or set [units] size in the criteria."
@@ -110,9 +112,9 @@ def read_size(text: str, basis: str, comma: bool) -> SizeReading:
     dn_match = _DN.fullmatch(plain)
     if dn_match:
         return _listed(float(dn_match[1] or dn_match[2]), "DN", text, "DN")
-    if re.fullmatch(r"0\d{2,4}|\d{4}", plain) and basis != "DN":
+    if re.fullmatch(r"0[0-9]{2,4}|[0-9]{4}", plain) and basis != "DN":
         return _refused(text, 'looks like a coded size (inches x 100 or mm?): write 6" or DN 150.')
-    if re.fullmatch(r"\d{4}", plain):
+    if re.fullmatch(r"[0-9]{4}", plain):
         return _listed(float(plain), "DN", text, "")
     match = _INCHES.fullmatch(plain)
     if match:

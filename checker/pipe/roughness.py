@@ -34,8 +34,11 @@ def materials() -> tuple[Material, ...]:
     """Return every known material, from ``tables/roughness.csv``; the first whose words are met counts."""
     return tuple(
         Material(
-            row["material"], row["family"], float(row["roughness_mm"]) / 1000.0,
-            tuple(_words(phrase) for phrase in row["words"].split(";")), row["source"],
+            row["material"],
+            row["family"],
+            float(row["roughness_mm"]) / 1000.0,
+            tuple(_words(phrase) for phrase in row["words"].split(";")),
+            row["source"],
         )
         for row in read_table("roughness")
     )

@@ -82,9 +82,12 @@ def missing_in(held: Any) -> BoolArray:
     if isinstance(held, Coded):
         return np.less(held.codes, 0)
     array = np.asarray(held)
+    missing: BoolArray = np.zeros(array.shape, dtype=np.bool_)
     if array.dtype.kind == "f":
-        return ~np.isfinite(array)
-    return np.less(array, 0) if array.dtype.kind == "i" else np.zeros(array.shape, dtype=np.bool_)
+        missing = ~np.isfinite(array)
+    elif array.dtype.kind == "i":
+        missing = array < 0
+    return missing
 
 
 def applies_to(rule: Rule, values: Values) -> CodeArray:

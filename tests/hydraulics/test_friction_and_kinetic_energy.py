@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-import time
-
 import fluids
 import numpy as np
 import pytest
@@ -75,24 +73,6 @@ def test_one_element_equals_the_same_among_many() -> None:
     many = friction_factor(reynolds=number, relative_roughness=rough)
     single = [friction_factor(reynolds=number[i : i + 1], relative_roughness=rough[i : i + 1])[0] for i in range(200)]
     assert many[:200].tolist() == single
-
-
-def test_much_faster_than_a_loop_over_fluids() -> None:
-    """Best of several runs, so that a busy machine does not decide; at least twenty times, usually above thirty."""
-    number, rough = np.tile(grid()[0], 8)[:8000], np.tile(grid()[1], 8)[:8000]
-
-    def best(run: object, times: int) -> float:
-        spans = []
-        for _ in range(times):
-            start = time.perf_counter()
-            run()  # type: ignore[operator]
-            spans.append(time.perf_counter() - start)
-        return min(spans)
-
-    ours = best(lambda: friction_factor(reynolds=number, relative_roughness=rough), 20)
-    pairs = list(zip(number.tolist(), rough.tolist(), strict=True))
-    theirs = best(lambda: [fluids.friction.friction_factor(Re=r, eD=e) for r, e in pairs], 3)
-    assert ours * 20.0 < theirs
 
 
 @pytest.mark.parametrize(("exponent", "printed"), [(7.0, 1.058), (6.0, 1.077), (9.0, 1.037), (10.0, 1.031)])
