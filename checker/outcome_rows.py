@@ -227,7 +227,8 @@ def exceeded(rule: Rule, judged: Judged, values: Values, line_case: int) -> str:
     """Return in a sentence by how much a limit is passed."""
     if rule.sense == "condition":
         return f"no: {calculation_text(rule, values, line_case)}"
-    used = float(judged.utilisation[line_case])
-    value, limit = _shown(rule, float(judged.value[line_case])), _shown(rule, float(judged.limit[line_case]))
-    over = "" if not math.isfinite(used) else f", {used:.2f} of the limit"
-    return f"{value} where {rule.sense} {limit} is asked{over}"
+    number, bound = float(judged.value[line_case]), float(judged.limit[line_case])
+    words = "short of" if rule.sense == "at least" else "over"
+    share = abs(number - bound) / abs(bound) if bound else math.inf
+    part = f"{100.0 * share:.3g} % {words} the limit" if math.isfinite(share) else f"{words} the limit"
+    return f"{part}: {_shown(rule, number)} where {rule.sense} {_shown(rule, bound)} is asked"

@@ -22,7 +22,9 @@ IDEAL_GAS_BELOW = 1.0e6
 
 def _open(*gaps: CodeArray) -> NDArray[np.bool_]:
     """Return True where a cell is on HOLD or could not be read: then no other value may stand in."""
-    held: NDArray[np.bool_] = np.isin(np.stack(gaps), (Gap.HOLD, Gap.REFUSED)).any(axis=0)
+    held = np.zeros(gaps[0].shape, dtype=np.bool_)
+    for gap in gaps:
+        held |= np.isin(gap, (Gap.HOLD, Gap.REFUSED))
     return held
 
 

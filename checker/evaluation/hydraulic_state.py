@@ -36,7 +36,9 @@ SOLVED = (
 
 
 def _open(*gaps: CodeArray) -> NDArray[np.bool_]:
-    held: NDArray[np.bool_] = np.isin(np.stack(gaps), (Gap.HOLD, Gap.REFUSED)).any(axis=0)
+    held = np.zeros(gaps[0].shape, dtype=np.bool_)
+    for gap in gaps:
+        held |= np.isin(gap, (Gap.HOLD, Gap.REFUSED))
     return held
 
 

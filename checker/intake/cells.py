@@ -36,6 +36,9 @@ class CodedCells(Sequence[str]):
     def __len__(self) -> int:
         return int(self.codes.size)
 
+    def __iter__(self) -> Iterator[str]:
+        return map(self.texts.__getitem__, self.codes.tolist())
+
     @overload
     def __getitem__(self, index: int) -> str: ...
 
@@ -100,16 +103,15 @@ class CellCollector:
 
     def __init__(self) -> None:
         self._codes = _Codes()
-        self._blocks: list[IntArray] = []
+        self._cells: list[int] = []
 
     def add(self, cells: Sequence[str]) -> None:
         """Append the cells of a block."""
-        self._blocks.append(np.fromiter(map(self._codes.__getitem__, cells), dtype=np.int32, count=len(cells)))
+        self._cells.extend(map(self._codes.__getitem__, cells))
 
     def cells(self) -> CodedCells:
         """Return all cells collected."""
-        codes = np.concatenate(self._blocks) if self._blocks else np.zeros(0, dtype=np.int32)
-        return CodedCells(codes, tuple(self._codes))
+        return CodedCells(np.array(self._cells, dtype=np.int32), tuple(self._codes))
 
 
 class NumberCollector:

@@ -89,7 +89,7 @@ def _signs(header: str) -> Iterator[_Split]:
     """Yield the splits at units that are mere signs (``%``, an inch mark), which folding would drop unseen."""
     words = header.split()
     for position, word in enumerate(words[1:], start=1):
-        if not fold_words(word) and is_unit_text(word):
+        if word[0] not in _OPENING and not fold_words(word) and is_unit_text(word):
             yield _Split(" ".join(words[:position] + words[position + 1 :]), word, False)
 
 

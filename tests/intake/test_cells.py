@@ -17,7 +17,7 @@ from checker.model import Gap
 from checker.units import read_unit, to_si
 
 GIVEN = [
-    ("12", 12.0), (" 12 ", 12.0), ("+60", 60.0), ("-45", -45.0), ("−45", -45.0), ("1.5E+2", 150.0), ("1.5e-3", 0.0015),
+    ("12", 12.0), (" 12 ", 12.0), ("+60", 60.0), ("-45", -45.0), ("\u221245", -45.0), ("1.5E+2", 150.0), ("1.5e-3", 0.0015),
     (".5", 0.5), ("5.", 5.0), ("1 234.5", 1234.5), ("1'234.5", 1234.5), ("12\u00a0345", 12345.0), ("1,234.5", 1234.5),
     ("1,234,567", 1234567.0), ("1,87,000", 187000.0), ("45 °C", 45.0), ("45 degC", 45.0), ("318.15 K", 45.0),
     ("113 °F", 45.0), ("53.26851056519498", 53.26851056519498), ("-0", 0.0),
@@ -28,12 +28,12 @@ REFUSED = [
     ("٣", "not a number"), ("1٣", "٣"), ("Ⅳ", "not a number"), ("½", "not a number"), ("50¹", "¹"),
     ("9" * 400, "too long"), ("9" * 5000, "too long"), ("1e400", "not a finite number"), ("1.2.3", "not one number"),
     ("1,2,3", "not one number"), ("1,234", "reads as 1.234 or as 1234"), ("10,5", "write 10.5"),
-    ("5-7", "two readings"), ("5 – 7", "two readings"), ("5~7", "two readings"), ("5 to 7", "two readings"),
+    ("5-7", "two readings"), ("5 \u2013 7", "two readings"), ("5~7", "two readings"), ("5 to 7", "two readings"),
     ("-29/+60", "two readings"), ("50 / 60", "two readings"), ("-172-47", "two readings"), ("50±5", "two readings"),
     ("60 0C", "two readings"), ("<5", "limit"), ("≥ 5", "limit"), ("~50", "limit"), ("ca. 50", "limit"),
     ("max 50", "limit"), ("380+", "mark"), ("50*", "mark"), ("3.5/FV", "two readings"), ("true", "not a number"),
     ("#N/A", "not a number"), ("#REF!", "not a number"), ("=1+1", "limit"), ("?", "not a number"),
-    ("see note 3", "not a number"), ("60 barg", "not a unit of temperature"), ("60 С", "not a unit"),
+    ("see note 3", "not a number"), ("60 barg", "not a unit of temperature"), ("60 \u0421", "not a unit"),
     ("AMB", "range of the site"), ("Saturated", "not a number"), ("∞", "not a number"),
 ]  # fmt: skip
 GAPS = [
@@ -137,8 +137,8 @@ def test_smallest_possible_values_are_kept(tmp_path: Path) -> None:
 
 COMMAS = [
     ("10,5", 10.5, ""), ("0,125", 0.125, ""), ("50.000,5", 50000.5, ""), ("1 234,5", 1234.5, ""), ("12", 12.0, ""),
-    ("1,234", None, "reads as 1.234 or as 1234"), ("1.234", None, "reads as 1.234 or as 1234"), ("12,3456", 12.3456, ""),
-    ("1.234.567", 1234567.0, ""), ("1.5", 1.5, ""), ("10,5 kg/h", 10.5, ""),
+    ("1,234", None, "reads as 1.234 or as 1234"), ("1.234", None, "reads as 1.234 or as 1234"),
+    ("12,3456", 12.3456, ""), ("1.234.567", 1234567.0, ""), ("1.5", 1.5, ""), ("10,5 kg/h", 10.5, ""),
 ]  # fmt: skip
 
 
@@ -155,7 +155,8 @@ def test_decimal_comma(tmp_path: Path, cell: str, number: float | None, words: s
 
 
 SIZES = [
-    ('6"', 6.0), ("1-1/2\"", 1.5), ("1 1/2", 1.5), ("1½", 1.5), ("1½\"", 1.5), ('1.1/2"', 1.5), ("3/4", 0.75), ("¾", 0.75),
+    ('6"', 6.0), ("1-1/2\"", 1.5), ("1 1/2", 1.5), ("1½", 1.5), ("1½\"", 1.5), ('1.1/2"', 1.5), ("3/4", 0.75),
+    ("¾", 0.75),
     ("DN 150", 6.0), ("DN150", 6.0), ("DN-150", 6.0), ("150NB", 6.0), ("150 mm", 6.0), ("14″", 14.0), ("0.5″", 0.5),
     ("NPS 24", 24.0), ("2 in", 2.0), ("2 inch", 2.0), ("6''", 6.0), ("1.5", 1.5),
 ]  # fmt: skip
@@ -221,7 +222,8 @@ def test_nominal_sizes_are_those_of_the_pipe_dimensions() -> None:
 @pytest.mark.parametrize(
     ("cell", "word"),
     [
-        ("L", "liquid"), ("LIQ", "liquid"), ("Liquid", "liquid"), ("Liquid Phase", "liquid"), ("V", "gas"), ("G", "gas"),
+        ("L", "liquid"), ("LIQ", "liquid"), ("Liquid", "liquid"), ("Liquid Phase", "liquid"), ("V", "gas"),
+        ("G", "gas"),
         ("Vapour", "gas"), ("VAPOR", "gas"), ("GAS", "gas"), ("M", "two-phase"), ("Mixed", "two-phase"),
         ("2PH", "two-phase"), ("TWO PHASE", "two-phase"), ("two-phase", "two-phase"), ("V/L", "two-phase"),
         ("L+G", "two-phase"), ("2-phase", "two-phase"), ("S", None), ("solid", None), ("yes", None),
@@ -274,8 +276,6 @@ def test_offending_text_is_shortened_and_escaped(tmp_path: Path) -> None:
     assert "'\\x1b[31mxxx" in sentence
     assert "(305 characters)" in sentence
 
-
-# ---- any number, any text ---------------------------------------------------------------------------------------------
 
 UNITS = [
     ("pressure", "pressure", ("barg", "bara", "psig", "kg/cm2g", "kPaa", "mbarg", "MPag")),
@@ -331,11 +331,7 @@ def test_any_text_gives_a_number_a_gap_or_a_refusal(text: str) -> None:
 
 
 @settings(max_examples=150, deadline=None, suppress_health_check=[HealthCheck.function_scoped_fixture])
-@given(
-    st.lists(
-        st.text(alphabet=st.characters(exclude_characters="\0", exclude_categories=("Cs",)), max_size=20), min_size=1
-    )
-)
+@given(st.lists(st.text(alphabet=st.characters(exclude_characters="\0", codec="utf-8"), max_size=20), min_size=1))
 def test_any_cells_make_a_list_never_a_fault(tmp_path: Path, cells: list[str]) -> None:
     text = one_column("Temp [degC]", *(cell.replace("\r", " ").replace("\n", " ") for cell in cells))
     listed = read(tmp_path, text)
