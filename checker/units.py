@@ -12,12 +12,15 @@ import re
 from collections.abc import Mapping
 from functools import cache
 from pathlib import Path
-from typing import NamedTuple
+from typing import TYPE_CHECKING, NamedTuple
 
 import numpy as np
 from numpy.typing import NDArray
 
 from checker.unit_spelling import fold_unit
+
+if TYPE_CHECKING:
+    import pint as pint_types
 
 __all__ = [
     "STANDARD_ATMOSPHERE",
@@ -115,13 +118,20 @@ def _in_any_case(folded: str, dimension: str) -> Unit | None:
     return candidates[0] if len(meanings) == 1 else None
 
 
+@cache
+def _registry() -> pint_types.UnitRegistry[float]:
+    import pint
+
+    return pint.UnitRegistry()
+
+
 def _from_pint(folded: str, dimension: str) -> Unit | None:
     """Ask pint for a spelling the table does not hold; None where pint does not know it either."""
     if dimension not in _PINT_DIMENSION or not _PLAIN_UNIT.fullmatch(folded):
         return None
     import pint
 
-    registry: pint.UnitRegistry[float] = pint.UnitRegistry()
+    registry = _registry()
     try:
         one, two = (registry.Quantity(number, re.sub(r"([23])", r"**\1", folded)) for number in (1.0, 2.0))
         if not one.check(_PINT_DIMENSION[dimension]):
@@ -188,7 +198,7 @@ def from_si(values: FloatArray | float, unit: Unit, *, atmosphere: float = STAND
     return (np.asarray(values, dtype=np.float64) - shift) / unit.scale
 
 
-_QUANTITY = re.compile(r"\s*([-+]?(?:\d+\.?\d*|\.\d+)(?:[eE][-+]?\d{1,3})?)\s*(.*?)\s*")
+_QUANTITY = re.compile(r"\s*([-+]?(?:\d+\.?\d*|\.\d+)(?:[eE][-+]?\d{1,3})?)\s*(.*?)\s*", re.ASCII)
 
 
 def read_quantity(text: str, dimension: str, *, atmosphere: float = STANDARD_ATMOSPHERE) -> float:

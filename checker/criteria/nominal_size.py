@@ -1,22 +1,21 @@
 """Nominal pipe sizes as people write them, read into NPS inches.
 
-The pairs of NPS and DN stand in `nominal_sizes.csv` (ASME B36.10M-2018, table 1; DN by ISO 6708).
+The pairs of NPS and DN stand in `tables/nominal_sizes.csv` (ASME B36.10M-2018, table 1; DN by ISO 6708).
 """
 
 from __future__ import annotations
 
-import csv
 import math
 import re
 import unicodedata
 from collections.abc import Mapping
 from fractions import Fraction
 from functools import cache
-from pathlib import Path
+
+from checker.tables.reading import read_table
 
 __all__ = ["nominal_sizes", "read_nominal_size"]
 
-TABLE = Path(__file__).parent / "nominal_sizes.csv"
 LONGEST_SIZE = 24
 _NUMBER = r"(?P<number>\d{1,4}(?:\.\d{1,4})?|(?:\d{1,2}[- ])?\d{1,2}/\d{1,2})"
 _INCHES = re.compile(rf"(?:NPS\s*)?{_NUMBER}\s*(?:\"|''|IN|IN\.|INCH|INCHES|NPS)?", re.IGNORECASE)
@@ -35,8 +34,7 @@ def _inches(text: str) -> float:
 @cache
 def nominal_sizes() -> Mapping[float, int]:
     """Return the DN of every nominal size, by its NPS in inches, ascending."""
-    with TABLE.open(encoding="utf-8", newline="") as handle:
-        return {_inches(row["nps"]): int(row["dn"]) for row in csv.DictReader(handle)}
+    return {float(row["nps"]): int(row["dn"]) for row in read_table("nominal_sizes")}
 
 
 @cache

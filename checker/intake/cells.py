@@ -124,11 +124,12 @@ class NumberCollector:
     def add(self, cells: Sequence[str]) -> None:
         """Append the cells of a block.
 
-        ``extend`` keeps what it has when a cell is no number, and ``map`` goes on behind that cell.
+        ``extend`` keeps what it has when a cell is no number, and ``map`` goes on behind that cell. Blank cells are
+        common, so they are put as NaN rather than left to fail one by one.
         """
         numbers, start, odd = self._numbers, len(self._numbers), []
         self._written.extend(cells)
-        remaining = map(float, cells)
+        remaining = map(float, [cell or "nan" for cell in cells] if "" in cells else cells)
         while True:
             try:
                 numbers.extend(remaining)
