@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 import re
 from collections.abc import Iterator
+from functools import cache
 
 from checker.criteria.limits import LIMIT_DIMENSION, limit_origin
 from checker.evaluation.assumptions import ASSUMABLE, assumptions_behind, shown_assumption
@@ -44,9 +45,14 @@ def _names_of(rule: Rule) -> tuple[str, ...]:
     return tuple(dict.fromkeys((*rule.applies_parameters, *rule.parameters)))
 
 
+@cache
+def _reached(names: tuple[str, ...], phase: int) -> frozenset[str]:
+    return frozenset().union(*(behind(name, phase) for name in names))
+
+
 def _listed_cells(rule: Rule, values: Values, line_case: int) -> Iterator[CellValue]:
     phase = int(values["phase"][line_case])
-    reached = frozenset().union(*(behind(name, phase) for name in _names_of(rule)))
+    reached = _reached(_names_of(rule), phase)
     for field in all_fields():
         if field.name not in reached and f"{field.name}_listed" not in reached:
             continue
@@ -61,7 +67,7 @@ def _listed_cells(rule: Rule, values: Values, line_case: int) -> Iterator[CellVa
 
 def _looked_up(rule: Rule, values: Values, line_case: int) -> Iterator[CellValue]:
     phase = int(values["phase"][line_case])
-    reached = frozenset().union(*(behind(name, phase) for name in _names_of(rule)))
+    reached = _reached(_names_of(rule), phase)
     for name in _LOOKED_UP:
         listed = name.removesuffix("_used")
         given = values.line_list.gap(listed)[line_case] == Gap.GIVEN
