@@ -7,6 +7,7 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 
+from checker.evaluation.gaps import given_state
 from checker.evaluation.provider import provider
 from checker.hydraulics.erosion import erosional_velocity as erosional_velocity_of
 from checker.hydraulics.suction import npsh_available as npsh_from_terms
@@ -125,22 +126,14 @@ def erosional_velocity(*, density_lowest: FloatArray, erosional_constant: FloatA
     return erosional_velocity_of(density=density_lowest, erosional_constant=erosional_constant)
 
 
-def _given(gap: CodeArray) -> CodeArray:
-    """Return 1 where given, 0 where the list asks for nothing (no column, or N/A written), -1 where it is missing."""
-    table = np.full(len(Gap), UNKNOWN, dtype=np.int8)
-    table[Gap.GIVEN] = YES
-    table[[Gap.NOT_APPLICABLE, Gap.NO_COLUMN]] = NO
-    return table[gap]
-
-
 def pressure_drop_allowed_given(*, pressure_drop_allowed_gap: CodeArray) -> CodeArray:
     """Return whether the row states an allowance."""
-    return _given(pressure_drop_allowed_gap)
+    return given_state(pressure_drop_allowed_gap)
 
 
 def vapour_pressure_given(*, vapour_pressure_gap: CodeArray) -> CodeArray:
     """Return whether the row states a vapour pressure."""
-    return _given(vapour_pressure_gap)
+    return given_state(vapour_pressure_gap)
 
 
 def npsh_required_given(*, npsh_required_gap: CodeArray) -> CodeArray:
@@ -179,9 +172,9 @@ def stated_difference(
     hide behind another that agrees.
     """
     pairs = (
-        (velocity_stated, velocity_at_stated_pressure, _given(velocity_stated_gap)),
-        (pressure_drop_stated, pressure_loss, _given(pressure_drop_stated_gap)),
-        (pressure_gradient_stated, pressure_gradient, _given(pressure_gradient_stated_gap)),
+        (velocity_stated, velocity_at_stated_pressure, given_state(velocity_stated_gap)),
+        (pressure_drop_stated, pressure_loss, given_state(pressure_drop_stated_gap)),
+        (pressure_gradient_stated, pressure_gradient, given_state(pressure_gradient_stated_gap)),
     )
     differences = np.stack([_difference(*pair) for pair in pairs])
     states = np.stack([pair[2] for pair in pairs])

@@ -7,10 +7,11 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 
+from checker.evaluation.gaps import is_open
 from checker.evaluation.provider import provider
 from checker.fluid.flow import mass_flow
 from checker.fluid.gas_density import gas_density, resolved_gas_density
-from checker.model import Gap, Phase
+from checker.model import Phase
 
 __all__ = ["PROVIDERS"]
 
@@ -18,14 +19,6 @@ FloatArray = NDArray[np.float64]
 CodeArray = NDArray[np.int8]
 Named = dict[str, NDArray[Any]]
 IDEAL_GAS_BELOW = 1.0e6
-
-
-def _open(*gaps: CodeArray) -> NDArray[np.bool_]:
-    """Return True where a cell is on HOLD or could not be read: then no other value may stand in."""
-    held = np.zeros(gaps[0].shape, dtype=np.bool_)
-    for gap in gaps:
-        held |= np.isin(gap, (Gap.HOLD, Gap.REFUSED))
-    return held
 
 
 def compressibility(
@@ -37,7 +30,7 @@ def compressibility(
     phase: CodeArray,
 ) -> Named:
     """Return Z: listed, else 1.0 assumed for a gas below 10 bar absolute (common practice), else NaN."""
-    missing = np.isnan(compressibility_listed) & ~_open(compressibility_gap)
+    missing = np.isnan(compressibility_listed) & ~is_open(compressibility_gap)
     assumed = missing & (phase == Phase.GAS) & (pressure < IDEAL_GAS_BELOW) & np.isnan(density_listed)
     return {
         "compressibility": np.where(assumed, 1.0, compressibility_listed),
@@ -49,7 +42,7 @@ def heat_capacity_ratio(
     *, heat_capacity_ratio_listed: FloatArray, heat_capacity_ratio_gap: CodeArray, phase: CodeArray
 ) -> Named:
     """Return Cp/Cv: listed, else 1.0 assumed for a gas: the lower bound, by which the Mach number is an upper bound."""
-    missing = np.isnan(heat_capacity_ratio_listed) & ~_open(heat_capacity_ratio_gap)
+    missing = np.isnan(heat_capacity_ratio_listed) & ~is_open(heat_capacity_ratio_gap)
     assumed = missing & (phase == Phase.GAS)
     return {
         "heat_capacity_ratio": np.where(assumed, 1.0, heat_capacity_ratio_listed),
@@ -71,7 +64,7 @@ def density_stated(
     computed = gas_density(
         pressure=pressure, temperature=temperature, molar_mass=molar_mass, compressibility=compressibility
     )
-    computed = np.where((phase == Phase.GAS) & ~_open(density_gap), computed, np.nan)
+    computed = np.where((phase == Phase.GAS) & ~is_open(density_gap), computed, np.nan)
     density, contradictory = resolved_gas_density(listed=density_listed, computed=computed)
     single = (phase == Phase.LIQUID) | (phase == Phase.GAS)
     return {
@@ -99,7 +92,7 @@ def flow(
         density=density_stated,
         molar_mass=molar_mass,
     )
-    held = _open(flow_mass_gap, flow_volume_gap, flow_standard_gap)
+    held = is_open(flow_mass_gap, flow_volume_gap, flow_standard_gap)
     return {"flow_mass": np.where(held, np.nan, flow_mass), "flow_contradictory": contradictory}
 
 

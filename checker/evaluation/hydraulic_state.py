@@ -8,6 +8,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from checker.criteria.criteria import Criteria
+from checker.evaluation.gaps import is_open
 from checker.evaluation.provider import provider
 from checker.hydraulics.compose import Methods, solve
 from checker.hydraulics.fittings import read_fittings
@@ -35,13 +36,6 @@ SOLVED = (
 )  # fmt: skip
 
 
-def _open(*gaps: CodeArray) -> NDArray[np.bool_]:
-    held = np.zeros(gaps[0].shape, dtype=np.bool_)
-    for gap in gaps:
-        held |= np.isin(gap, (Gap.HOLD, Gap.REFUSED))
-    return held
-
-
 def route(
     *,
     criteria: Criteria,
@@ -59,7 +53,7 @@ def route(
     criteria adopt one. On HOLD or unreadable: NaN.
     """
     by_length = np.isfinite(equivalent_length)
-    straight = np.where(by_length & np.isnan(length_listed) & ~_open(length_gap), equivalent_length, length_listed)
+    straight = np.where(by_length & np.isnan(length_listed) & ~is_open(length_gap), equivalent_length, length_listed)
     surplus = np.where(by_length, equivalent_length - straight, np.nan)
     read = read_fittings(list(fittings.texts))
     counted = ("n", "k", "entrances", "exits", "entrance_coefficient")
@@ -69,7 +63,7 @@ def route(
     extra = np.where(by_length, np.where(surplus >= 0.0, surplus, np.nan), by_allowance)
     by_cell = ~by_length & (fittings.codes >= 0)
     extra = np.where(by_cell, 0.0, extra)
-    unknown = np.isnan(extra) | _open(equivalent_length_gap, fittings_gap)
+    unknown = np.isnan(extra) | is_open(equivalent_length_gap, fittings_gap)
     use = {name: np.where(by_cell, values, 0.0) for name, values in cell.items()}
     return {
         "pipe_length": straight,

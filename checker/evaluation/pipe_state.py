@@ -9,6 +9,7 @@ from numpy.typing import NDArray
 
 from checker.criteria.classes import Classes, ClassValues
 from checker.criteria.criteria import Criteria
+from checker.evaluation.gaps import asked_for, is_open
 from checker.evaluation.provider import provider
 from checker.model import Coded, Gap, Source
 from checker.pipe.roughness import roughness_by_material
@@ -26,16 +27,6 @@ NO_CLASSES = Classes(Source("no class file", ""), ())
 STANDARD_WALL = "STD"
 STAINLESS_WALL = "40S"
 STAINLESS_WORDS = ("stainless", "ss", "a312", "304", "316", "duplex")
-
-
-def _open(gap: CodeArray) -> BoolArray:
-    """Return True where a cell is on HOLD or could not be read: then no other value may stand in."""
-    return np.isin(gap, (Gap.HOLD, Gap.REFUSED))
-
-
-def _asked(gap: CodeArray) -> BoolArray:
-    """Return True where the list has the column: a value from elsewhere is then an assumption."""
-    return np.not_equal(gap, Gap.NO_COLUMN)
 
 
 def class_values(*, classes: Classes | None, piping_class_listed: Coded, size: FloatArray) -> ClassValues:
@@ -59,9 +50,9 @@ def material_used(
     *, material_listed: Coded, material_gap: CodeArray, piping_class_gap: CodeArray, class_values: ClassValues
 ) -> Named:
     """Return the material: the list's, else the class's (assumed where the list leaves its own column blank)."""
-    from_class = _blank_where(class_values.material, _open(material_gap) | _open(piping_class_gap))
+    from_class = _blank_where(class_values.material, is_open(material_gap) | is_open(piping_class_gap))
     material = merged(material_listed, from_class)
-    assumed = (material_listed.codes < 0) & (material.codes >= 0) & _asked(material_gap)
+    assumed = (material_listed.codes < 0) & (material.codes >= 0) & asked_for(material_gap)
     return {"material_used": material, "material_used_assumed": assumed}
 
 
@@ -87,7 +78,7 @@ def schedule_used(
     The class serves as of right where the list has no schedule column; where it has one and leaves the cell blank the
     class's schedule is an assumption. A HOLD or unreadable schedule, class or wall lets nothing stand in.
     """
-    barred = _open(schedule_gap) | _open(piping_class_gap)
+    barred = is_open(schedule_gap) | is_open(piping_class_gap)
     from_class = _blank_where(class_values.schedule, barred)
     listed_or_class = merged(schedule_listed, from_class)
     wall_by_class = np.isfinite(class_values.wall_thickness) & (schedule_listed.codes < 0) & ~barred
@@ -100,7 +91,7 @@ def schedule_used(
     state = np.select(choices, [SCHEDULE_LISTED, SCHEDULE_CLASS, SCHEDULE_NONE], SCHEDULE_NOT_KNOWN)
     return {
         "schedule_used": schedule,
-        "schedule_used_assumed": nothing | (by_class & _asked(schedule_gap)),
+        "schedule_used_assumed": nothing | (by_class & asked_for(schedule_gap)),
         "schedule_state": state.astype(np.int8),
         "wall_by_class": np.where(wall_by_class, class_values.wall_thickness, np.nan),
     }
@@ -121,16 +112,16 @@ def pipe(
 ) -> Named:
     """Return outside diameter, wall and bore; an explicit bore or wall wins over the schedule."""
     found = look_up(nps=size, schedule_code=schedule_used.codes, schedule_names=list(schedule_used.texts))
-    no_diameter = _open(outside_diameter_gap)
+    no_diameter = is_open(outside_diameter_gap)
     outside = np.where(np.isfinite(outside_diameter_listed), outside_diameter_listed, found.outside_diameter)
     outside = np.where(no_diameter, np.nan, outside)
     wall = np.where(np.isfinite(wall_by_class), wall_by_class, found.wall_thickness)
     wall = np.where(np.isfinite(wall_thickness_listed), wall_thickness_listed, wall)
-    wall = np.where(_open(wall_thickness_gap), np.nan, wall)
+    wall = np.where(is_open(wall_thickness_gap), np.nan, wall)
     bore = outside - 2.0 * wall
     bore = np.where(bore > 0.0, bore, np.nan)
     inside = np.where(np.isfinite(inside_diameter_listed), inside_diameter_listed, bore)
-    inside = np.where(_open(inside_diameter_gap), np.nan, inside)
+    inside = np.where(is_open(inside_diameter_gap), np.nan, inside)
     by_schedule = np.isnan(inside_diameter_listed) & np.isnan(wall_thickness_listed) & np.isfinite(inside)
     return {
         "outside_diameter": outside,
@@ -152,13 +143,13 @@ def roughness(
     material_used_assumed: BoolArray,
 ) -> Named:
     """Return the roughness: the list's, else the class's, else the adopted value of the material."""
-    from_class = np.where(_open(piping_class_gap), np.nan, class_values.roughness)
+    from_class = np.where(is_open(piping_class_gap), np.nan, class_values.roughness)
     adopted = roughness_by_material(material=material_used, adopted=criteria.roughness)
     other = np.where(np.isfinite(from_class), from_class, adopted)
-    value = np.where(np.isfinite(roughness_listed), roughness_listed, np.where(_open(roughness_gap), np.nan, other))
+    value = np.where(np.isfinite(roughness_listed), roughness_listed, np.where(is_open(roughness_gap), np.nan, other))
     from_elsewhere = np.isnan(roughness_listed) & np.isfinite(value)
     by_material = from_elsewhere & np.isnan(from_class)
-    assumed = from_elsewhere & _asked(roughness_gap) | by_material & material_used_assumed
+    assumed = from_elsewhere & asked_for(roughness_gap) | by_material & material_used_assumed
     return {"roughness": value, "roughness_assumed": assumed}
 
 
