@@ -8,7 +8,7 @@ from checker.evaluation.values import Values
 from checker.model import Phase
 from checker.review_model import CautionItem
 
-__all__ = ["USUAL_CAUTION", "cautions_of"]
+__all__ = ["USUAL_CAUTION", "cautions_of", "twin_rows"]
 
 USUAL_CAUTION = (
     "A screening check of a line list. It does not replace the codes in force, hazard studies, detailed calculation or "
@@ -23,6 +23,36 @@ def _counted(where: np.ndarray, values: Values) -> str:
     first = ", ".join(values.line_list.line_number[int(line)] for line in lines[:5])
     more = f" and {lines.size - 5} more" if lines.size > 5 else ""
     return f"{lines.size} line{'' if lines.size == 1 else 's'}: {first}{more}"
+
+
+def twin_rows(values: Values) -> tuple[tuple[str, str, tuple[int, ...]], ...]:
+    """Return line number, case and rows wherever one line number states one case on several rows."""
+    line_list = values.line_list
+    case = line_list.case.codes.astype(np.int64)
+    key = values["line_group"].astype(np.int64) * (len(line_list.case.texts) + 1) + case + 1
+    order = np.argsort(key, kind="stable")
+    _, first, counts = np.unique(key[order], return_index=True, return_counts=True)
+    twins = []
+    for start, count in zip(first[counts > 1], counts[counts > 1], strict=True):
+        cases = order[start : start + count]
+        number = line_list.line_number[int(line_list.line[cases[0]])]
+        rows = tuple(int(line_list.row[line_list.line[each]]) for each in cases)
+        twins.append((number, line_list.case.text(int(cases[0])), rows))
+    return tuple(twins)
+
+
+def _twins(values: Values) -> list[CautionItem]:
+    found: dict[str, tuple[int, ...]] = {}
+    for number, _, rows in twin_rows(values):
+        found.setdefault(number, rows)
+    text = (
+        "One line number on several rows for the same case: each row is judged by itself. "
+        "Segments of one line are in order; anything else is a doubled number to take up with the originator."
+    )
+    shown = [f"{number} (rows {', '.join(map(str, rows[:6]))})" for number, rows in list(found.items())[:5]]
+    more = f" and {len(found) - 5} more" if len(found) > 5 else ""
+    count = f"{len(found)} line number{'' if len(found) == 1 else 's'}"
+    return [CautionItem(f"{count}: {', '.join(shown)}{more}", text, COMMON_PRACTICE)] if found else []
 
 
 def _jurisdiction(name: str) -> CautionItem:
@@ -62,4 +92,4 @@ def cautions_of(values: Values) -> tuple[CautionItem, ...]:
         ),
     )
     items += [CautionItem(_counted(where, values), text, source) for where, text, source in notes if where.any()]
-    return tuple(items)
+    return (*items, *_twins(values))

@@ -72,6 +72,24 @@ def _inputs(command: Callable[..., None]) -> Callable[..., None]:
     return click.argument("line_list", metavar="LIST", type=PATH)(command)
 
 
+def _spare_the_inputs(targets: list[Path], line_list: Path, options: dict[str, Any]) -> None:
+    """Refuse, before anything is computed, an output that would stand where an input stands.
+
+    Raises
+    ------
+    InputError
+        If a target is one of the inputs.
+    """
+    from checker.errors import InputError, Problem
+
+    given = [line_list, *(path for path in options.values() if isinstance(path, Path))]
+    inputs = {path.resolve() for path in given}
+    for target in targets:
+        if target.resolve() in inputs:
+            remedy = "Name another place to write to: inputs are never touched."
+            raise InputError(Problem("is an input of this run and would be written over.", str(target), remedy))
+
+
 def _reviewed(line_list: Path, options: dict[str, Any], say: Callable[[str], None]) -> Any:
     from checker.review import review
 
@@ -103,13 +121,17 @@ def review(line_list: Path, out: Path | None, quiet: bool, **options: Any) -> No
     Example:
       linelist review list.csv --criteria criteria.toml --classes classes.csv --out review/
     """
+    from checker.report.atomic import check_places
     from checker.report.terminal import summary
-    from checker.report.write import write_report
+    from checker.report.write import OUTPUT_NAMES, write_report
     from checker.review import require_no_fault
 
     say = _progress(quiet)
+    folder = out or line_list.parent / "review"
+    _spare_the_inputs([folder / name for name in OUTPUT_NAMES], line_list, options)
+    check_places(folder, OUTPUT_NAMES)
     done = _reviewed(line_list, options, say)
-    files = write_report(done, out or line_list.parent / "review", progress=say)
+    files = write_report(done, folder, progress=say)
     click.echo(summary(done, files))
     require_no_fault(done)
 
@@ -132,6 +154,11 @@ def gate(line_list: Path, json_file: Path | None, quiet: bool, **options: Any) -
     """
     from checker.review import require_no_fault
 
+    if json_file is not None:
+        from checker.report.atomic import check_places
+
+        _spare_the_inputs([json_file], line_list, options)
+        check_places(json_file.parent, (json_file.name,))
     done = _reviewed(line_list, options, lambda sentence: None)
     if json_file is not None:
         from checker.report.atomic import write_text

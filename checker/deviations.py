@@ -15,6 +15,7 @@ from numpy.typing import NDArray
 
 from checker.errors import InputError, Problem
 from checker.evaluation.values import Values
+from checker.intake.case_names import canonical_case
 from checker.model import Source
 from checker.ruling.contract import Outcome, Rule
 from checker.ruling.run import EQUAL_WITHIN, Judged
@@ -25,6 +26,7 @@ __all__ = ["COLUMNS", "Deviation", "DeviationFile", "load_deviations", "where_ap
 COLUMNS = ("line_number", "case", "rule", "approved_value", "approved_by", "reference", "until")
 _NEEDED = ("line_number", "rule", "approved_value", "approved_by", "until")
 LARGEST_FILE = 5_000_000
+_PLACEHOLDERS = ("", "-", "--", "?", "hold", "tbc", "tba", "tbd", "n/a", "na", "none", "later", "pending")
 
 
 @dataclass(frozen=True, slots=True)
@@ -68,8 +70,10 @@ def _rows(path: Path) -> tuple[bytes, list[dict[str, str]]]:
 
 def _problems(row: dict[str, str], place: str, rules: dict[str, Rule]) -> Iterator[Problem]:
     for name in _NEEDED:
-        if not row.get(name):
-            yield Problem(f"{name} is blank.", place, "An approval names its line, rule, value, approver and last day.")
+        if row.get(name, "").casefold() in _PLACEHOLDERS:
+            yield Problem(
+                f"{name} is blank or open.", place, "An approval names all five: line, rule, value, approver, last day."
+            )
     if row.get("surplus"):
         yield Problem("has more cells than the header.", place, "Quote cells that hold a comma.")
     rule = rules.get(row.get("rule", ""))
@@ -86,6 +90,11 @@ def _problems(row: dict[str, str], place: str, rules: dict[str, Rule]) -> Iterat
         date.fromisoformat(row.get("until", ""))
     except ValueError:
         yield Problem(f"until {row.get('until', '')!r} is no date.", place, "Write it as 2027-06-30.")
+
+
+def _case_of(text: str) -> str:
+    """Return a case as the list's own cases are named; empty, or ``all``, where the approval holds in every case."""
+    return "" if text.casefold() in ("", "all", "every case") else canonical_case(text)
 
 
 def load_deviations(path: Path, *, rules: tuple[Rule, ...], atmosphere: float) -> DeviationFile:
@@ -108,7 +117,7 @@ def load_deviations(path: Path, *, rules: tuple[Rule, ...], atmosphere: float) -
     deviations = tuple(
         Deviation(
             line_number=row["line_number"],
-            case=row.get("case", "").casefold(),
+            case=_case_of(row.get("case", "")),
             rule=row["rule"],
             approved_value=read_quantity(
                 row["approved_value"], known[row["rule"]].dimension or "dimensionless", atmosphere=atmosphere

@@ -115,6 +115,9 @@ def rests_on(rule: Rule, values: Values, line_case: int) -> tuple[str, ...]:
 def _limit_reason(values: Values, key: str, line_case: int) -> str:
     if is_missing(values, "service_code", line_case):
         return why_missing(values, "service_code", line_case)
+    if values["service_code_assumed"][line_case]:
+        text = values["service_listed"].text(line_case)
+        return f"service {text!r} matches none of the criteria, so that its {key} is not known"
     for name in ("size", "pressure"):
         if is_missing(values, name, line_case):
             return f"the limit goes by {name}: {gap_sentence(values, name, line_case)}"
@@ -137,12 +140,10 @@ def _behind_given(name: str) -> str:
         "pressure_drop_allowed_given": "pressure_drop_allowed",
         "vapour_pressure_given": "vapour_pressure",
         "stated_values_given": "stated_difference",
-        "flowing": "case_kind",
         "continuous": "case_kind",
         "line_has_minimum_case": "velocity_at_minimum",
         "is_minimum_case": "velocity_at_minimum",
         "steam": "service_code",
-        "pump_suction": "service_code",
     }.get(name, name)
 
 

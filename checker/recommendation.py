@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from dataclasses import dataclass
 
 import numpy as np
@@ -36,7 +37,20 @@ def _plural(count: int, word: str) -> str:
     return f"{count:,} {word}{'' if count == 1 else 's'}".replace(",", " ")
 
 
-def recommend(judgement: Judgement, *, gross_factor: float, coverage_minimum: float, open_items: int) -> Recommendation:
+def _open_sentence(open_items: Mapping[str, int]) -> str:
+    there = {kind: count for kind, count in open_items.items() if count}
+    kinds = ", ".join(f"{kind} {count}" for kind, count in there.items())
+    return f"{_plural(sum(there.values()), 'open item')}: {kinds}" if there else ""
+
+
+def recommend(
+    judgement: Judgement,
+    *,
+    gross_factor: float,
+    coverage_minimum: float,
+    open_items: Mapping[str, int],
+    any_flow: bool = True,
+) -> Recommendation:
     """Return the recommendation of a list.
 
     `revise and resubmit` if any `shall` is not met, or a `should` by more than the gross factor; `incomplete` if less
@@ -50,8 +64,10 @@ def recommend(judgement: Judgement, *, gross_factor: float, coverage_minimum: fl
         Utilisation above which an unmet `should` asks for a revision.
     coverage_minimum : float
         Least share of applicable outcomes that must have been checked.
-    open_items : int
-        HOLDs, refused cells, assumptions, unmatched services, stale deviations: anything else left to say.
+    open_items : mapping of str to int
+        Anything else left to say, by kind (HOLDs, refused cells, services not matched ...) and how often.
+    any_flow : bool
+        Whether any line case of the list has a flow; without one nothing of its duty was judged.
     """
     unmet = judgement.outcome == Outcome.DOES_NOT_MEET
     shall = int((unmet & (judgement.force == SHALL)).sum())
@@ -67,12 +83,12 @@ def recommend(judgement: Judgement, *, gross_factor: float, coverage_minimum: fl
     ]
     share = f"{100.0 * coverage:.1f} % of the applicable outcomes could be checked"
     incomplete = f"only {share}, less than {100.0 * coverage_minimum:g} %" if coverage < coverage_minimum else ""
+    if not any_flow:
+        incomplete = "no line of the list has a flow in any case, so that nothing of its duty was judged"
     remarks = [
         f"{_plural(other, 'other outcome')} not met" if other else "",
         f"{_plural(unchecked, 'outcome')} not checked" if unchecked else "",
-        f"{_plural(open_items, 'open item')} (HOLDs, refused cells, assumptions, services not matched)"
-        if open_items
-        else "",
+        _open_sentence(open_items),
     ]
     reasons = tuple(text for text in (*revise, incomplete, *remarks) if text)
     if any(revise):

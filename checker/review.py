@@ -2,11 +2,16 @@
 
 from __future__ import annotations
 
+import difflib
 import os
 from datetime import date
 from pathlib import Path
 
+import numpy as np
+
+from checker.cautions import twin_rows
 from checker.criteria.classes import load_classes
+from checker.criteria.criteria import Criteria
 from checker.criteria.load import load_criteria
 from checker.deviations import Deviation, DeviationFile, load_deviations, where_approved
 from checker.errors import InputError, Problem, ToolFaultError
@@ -19,6 +24,7 @@ from checker.review_record import AppliedDeviations, Review
 from checker.ruling.catalogue import load_rules
 from checker.ruling.contract import Outcome, Rule
 from checker.ruling.run import Judgement, judge, judge_all
+from checker.ruling.tristate import NO
 
 __all__ = ["Review", "evaluate", "require_no_fault", "review"]
 
@@ -71,6 +77,7 @@ def review(
     found = load_rules(known_fields=known_fields(), folder=None if rules is None else Path(rules))
     used_criteria = load_criteria(None if criteria is None else Path(criteria))
     _check_methods(used_criteria.gas_method, used_criteria.two_phase_method, used_criteria.source.name)
+    _check_forces(used_criteria, found)
     used_classes = None if classes is None else load_classes(Path(classes), units=used_criteria.units)
     approvals = (
         None
@@ -101,6 +108,7 @@ def evaluate(values: Values, rules: tuple[Rule, ...], *, approvals: DeviationFil
     stale = sum(word != "applied" for _, word in applied.items)
     line_list = values.line_list
     unmatched = sum(match.matched.endswith(UNMATCHED_WORDS) for match in service_matches(values))
+    without_flow, any_flow = _lines_without_flow(values)
     assumed = int(
         any(values[f"{name}_assumed"].any() for name in ("compressibility", "heat_capacity_ratio", "roughness"))
     )
@@ -108,9 +116,49 @@ def evaluate(values: Values, rules: tuple[Rule, ...], *, approvals: DeviationFil
         judgement,
         gross_factor=values.criteria.gross_factor,
         coverage_minimum=values.criteria.coverage_minimum,
-        open_items=len(line_list.holds) + len(line_list.unread) + stale + assumed + unmatched,
+        open_items={
+            "HOLDs": len(line_list.holds),
+            "rows, columns and cells not read": len(line_list.unread),
+            "services not matched": unmatched,
+            "lines without flow in any case": without_flow,
+            "line numbers on several rows for one case": len(twin_rows(values)),
+            "kinds of assumption": assumed,
+            "approvals not used": stale,
+        },
+        any_flow=any_flow,
     )
     return Review(values, judgement, recommended, applied)
+
+
+def _lines_without_flow(values: Values) -> tuple[int, bool]:
+    """Return how many lines flow in none of their cases, and whether any line of the list flows at all."""
+    group = values["line_group"]
+    flows = np.zeros(int(group.max(initial=-1)) + 1, dtype=np.bool_)
+    flows[group[values["flowing"] != NO]] = True
+    return int((~flows).sum()), bool(flows.any())
+
+
+def _check_forces(criteria: Criteria, rules: tuple[Rule, ...]) -> None:
+    """Refuse a force that the criteria set for a rule nobody knows.
+
+    Raises
+    ------
+    InputError
+        Every such key at once, with its service and the closest rule.
+    """
+    known = [rule.id for rule in rules]
+    problems = [
+        Problem(
+            f"force names the rule {name!r}, which is not known.",
+            f"{criteria.source.name}, service {service.name!r}",
+            f"Did you mean {' or '.join(difflib.get_close_matches(name, known, n=2)) or 'one of `linelist rules`'}?",
+        )
+        for service in criteria.services
+        for name in service.force
+        if name not in known
+    ]
+    if problems:
+        raise InputError(problems)
 
 
 def _with_deviations(

@@ -56,12 +56,19 @@ def _adopted(values: Values) -> tuple[tuple[str, str, str], ...]:
         ("gross factor", f"{criteria.gross_factor:g}", where),
         ("least coverage", f"{100.0 * criteria.coverage_minimum:g} %", where),
         ("tolerance on stated values", f"{100.0 * criteria.stated_values_tolerance:g} %", where),
+        ("end at which a pressure holds", _pressure_end(values), "the list, else the service, else the inlet"),
         ("downhill recovery in two-phase lines", "allowed" if criteria.downhill_recovery else "not counted", where),
     ]
     if not math.isnan(criteria.fittings_allowance):
         rows.append(("fittings where the list has none", f"{criteria.fittings_allowance:g} of the length", where))
     rows += _roughness_rows(values)
     return tuple(rows)
+
+
+def _pressure_end(values: Values) -> str:
+    if values.line_list.has("pressure_basis"):
+        return "as the list's own column says"
+    return "the list has no column for it: the inlet, or the end that the service names"
 
 
 def _roughness_rows(values: Values) -> list[tuple[str, str, str]]:

@@ -59,6 +59,8 @@ _COMPUTED: dict[str, tuple[str, str, str]] = {
     "dp_acceleration": ("pressure difference", "bar", "acceleration"),
     "dp_total": ("pressure difference", "bar", "total pressure difference, inlet minus outlet"),
     "pressure_loss": ("pressure difference", "bar", "pressure loss without static head"),
+    "pressure_lowest": ("pressure", "bara", "lowest pressure of the line"),
+    "lowest_sustained_flow": ("mass flow", "kg/h", "least flow of the continuous cases"),
     "pressure_inlet": ("pressure", "bara", "pressure at the inlet"),
     "pressure_outlet": ("pressure", "bara", "pressure at the outlet"),
     "momentum_flux": ("momentum flux", "Pa", "momentum flux at the worst end"),

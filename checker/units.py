@@ -56,6 +56,8 @@ _PINT_DIMENSION = {
     "momentum flux": "[pressure]",
 }
 _PLAIN_UNIT = re.compile(r"[A-Za-zµ_]{1,24}[23]?([/*][A-Za-zµ_]{1,24}[23]?){0,3}")
+_SHORT = ("kg", "lb", "ft", "in", "yd", "mi", "m", "s", "h", "d", "N", "J", "W")
+_AMBIGUOUS = ("ton", "tons", "Ton", "Tons", "TON", "TONS", "cwt", "gallon", "gal", "barrel")
 _QUESTIONS = {
     ("viscosity", "MPas"): "megapascal seconds are no viscosity of a fluid: write mPa.s if that is meant.",
     ("mass flow", "MLB/H"): "M is a thousand to some and a million to others: write klb/h or lb/h.",
@@ -118,6 +120,17 @@ def _in_any_case(folded: str, dimension: str) -> Unit | None:
     return candidates[0] if len(meanings) == 1 else None
 
 
+def _plain_names(folded: str, registry: pint_types.UnitRegistry[float]) -> bool:
+    """Return whether no name is read through a prefix but kilo: ``nm3/h`` and ``mt/h`` are no nano and no milli."""
+    names = [re.sub(r"[23]$", "", name) for name in re.split(r"[/*]", folded)]
+    return all(
+        name not in _AMBIGUOUS
+        and any(prefix in ("", "kilo") for prefix, _, _ in registry.parse_unit_name(name))
+        and (len(name) > 2 or name in _SHORT)
+        for name in names
+    )
+
+
 @cache
 def _registry() -> pint_types.UnitRegistry[float]:
     import pint
@@ -132,6 +145,8 @@ def _from_pint(folded: str, dimension: str) -> Unit | None:
     import pint
 
     registry = _registry()
+    if not _plain_names(folded, registry):
+        return None
     try:
         one, two = (registry.Quantity(number, re.sub(r"([23])", r"**\1", folded)) for number in (1.0, 2.0))
         if not one.check(_PINT_DIMENSION[dimension]):

@@ -23,10 +23,13 @@ def _liquid_with_vapour_pressure(*, phase: NDArray[np.int8], vapour_pressure_giv
     sense="at most",
     source=Source("phase equilibrium", clause="a liquid boils where its pressure is below its vapour pressure"),
     applies=_liquid_with_vapour_pressure,
-    calculation="p_v = {vapour_pressure}; at most the stated pressure {pressure}",
+    calculation="p_v = {vapour_pressure}; at most the line's lowest pressure {pressure_lowest} (stated {pressure})",
     unit="bara",
     dimension="pressure",
 )
-def phase_change(*, vapour_pressure: FloatArray, pressure: FloatArray) -> tuple[FloatArray, FloatArray]:
-    """Hold the true vapour pressure against the stated pressure of a line that the list calls liquid."""
-    return vapour_pressure, pressure
+def phase_change(*, vapour_pressure: FloatArray, pressure_lowest: FloatArray) -> tuple[FloatArray, FloatArray]:
+    """Hold the true vapour pressure against the lowest pressure of a line that the list calls liquid.
+
+    Both ends count where the list gives lengths; where it has no such column, the stated end alone.
+    """
+    return vapour_pressure, pressure_lowest

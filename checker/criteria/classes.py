@@ -13,8 +13,11 @@ from numpy.typing import NDArray
 from checker.criteria.class_reading import ClassTable, read_class_table
 from checker.criteria.nominal_size import read_nominal_size
 from checker.criteria.places import MOST_PROBLEMS, shown
+from checker.criteria.quantities import LARGEST_ROUGHNESS
+from checker.criteria.schedule_walls import differing_walls
 from checker.errors import InputError, Problem
 from checker.model import Coded, Source
+from checker.pipe.sizes import normalised_schedule
 from checker.units import UnitRefusedError, read_quantity, read_unit
 
 __all__ = ["ClassRow", "ClassValues", "Classes", "load_classes"]
@@ -197,6 +200,10 @@ class _CellReader:
         if value < 0.0 or (value == 0.0 and field == "wall_thickness"):
             self.add(row, field, f"{shown(cell)} cannot be.", "Write a positive number or leave the cell blank.")
             return math.nan
+        if field == "roughness" and value > LARGEST_ROUGHNESS:
+            what = f"{shown(cell)}: no pipe is rougher than {LARGEST_ROUGHNESS * 1e3:g} mm."
+            self.add(row, field, what, "Check the unit: steel has some 0.05 mm.")
+            return math.nan
         return value
 
     def size(self, row: int, cells: Mapping[str, str], field: str) -> float:
@@ -207,6 +214,29 @@ class _CellReader:
         if math.isnan(size):
             self.add(row, field, f"{shown(cell)} is not a nominal size of ASME B36.10M.", 'Write 6", NPS 6 or DN 150.')
         return size
+
+
+def _schedule(reader: _CellReader, number: int, cells: Mapping[str, str]) -> str:
+    schedule = reader.text(cells, "schedule")
+    if schedule and not normalised_schedule(schedule):
+        remedy = "Write one such as 40, 40S, STD or XS; a wall of no schedule stands in wall_thickness."
+        reader.add(number, "schedule", f"{shown(schedule)} is no schedule of ASME B36.10M or B36.19M.", remedy)
+    return schedule
+
+
+def _check_walls(row: ClassRow, reader: _CellReader) -> None:
+    """Refuse a row whose wall is not that of its schedule."""
+    differing = differing_walls(
+        schedule=row.schedule, wall_thickness=row.wall_thickness, size_from=row.size_from, size_to=row.size_to
+    )
+    if differing:
+        size, wall = differing[0]
+        others = f", and at {len(differing) - 1} more sizes of the row" if len(differing) > 1 else ""
+        what = (
+            f"the wall {row.wall_thickness * 1e3:.4g} mm is not that of schedule {shown(row.schedule)}: "
+            f"{wall * 1e3:.4g} mm at NPS {size:g}{others}."
+        )
+        reader.add(row.row, "wall_thickness", what, "Leave one of the two blank, or give each size a row.")
 
 
 def _row(reader: _CellReader, number: int, cells: Mapping[str, str]) -> ClassRow:
@@ -222,7 +252,7 @@ def _row(reader: _CellReader, number: int, cells: Mapping[str, str]) -> ClassRow
         piping_class=name,
         size_from=size_from,
         size_to=size_to,
-        schedule=reader.text(cells, "schedule"),
+        schedule=_schedule(reader, number, cells),
         wall_thickness=reader.number(number, cells, "wall_thickness"),
         material=reader.text(cells, "material"),
         corrosion_allowance=reader.number(number, cells, "corrosion_allowance"),
@@ -265,6 +295,8 @@ def _check_overlaps(rows: Sequence[ClassRow], reader: _CellReader) -> None:
 def load_classes(path: Path, *, units: Mapping[str, str] | None = None) -> Classes:
     """Load a project's class file.
 
+    A row may give a schedule and a wall only where the two agree within the mill tolerance of 12.5 %.
+
     Parameters
     ----------
     path : Path
@@ -284,6 +316,8 @@ def load_classes(path: Path, *, units: Mapping[str, str] | None = None) -> Class
     if reader.problems:
         raise InputError(reader.problems)
     rows = tuple(_row(reader, number, cells) for number, cells in table.rows)
+    for row in rows:
+        _check_walls(row, reader)
     _check_overlaps(rows, reader)
     if reader.problems:
         raise InputError(reader.problems)

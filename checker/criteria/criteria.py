@@ -82,6 +82,10 @@ class Service:
         True for the row that a line of that phase takes when its service matches nothing.
     steam, pump_suction, solids_free : bool
         What rules ask of a service.
+    relief : bool
+        True for a relief or flare line: it is judged on its relief load.
+    relief_case : str
+        Case of the list in which the relief load of such a line stands.
     pressure_basis : str
         End at which such lines are known where the list does not say: ``inlet``, ``outlet`` or empty.
     limits : mapping of str to Limit
@@ -99,6 +103,8 @@ class Service:
     steam: bool
     pump_suction: bool
     solids_free: bool
+    relief: bool
+    relief_case: str
     pressure_basis: str
     limits: Mapping[str, Limit]
     force: Mapping[str, str]

@@ -31,7 +31,17 @@ _SHOWN_IN = {
     "ambient_minimum": ("degC", "temperature"),
     "ambient_maximum": ("degC", "temperature"),
 }
-_SERVICE_WORDS = ("phase", "general", "steam", "pump_suction", "solids_free", "pressure_basis", "confirmed")
+_SERVICE_WORDS = (
+    "phase",
+    "general",
+    "steam",
+    "pump_suction",
+    "solids_free",
+    "relief",
+    "relief_case",
+    "pressure_basis",
+    "confirmed",
+)
 
 
 def _word(value: object) -> str:

@@ -12,7 +12,7 @@ from numpy.typing import NDArray
 
 from checker.criteria.criteria import FORCES, LIMIT_DIMENSION, Criteria, Limit, Service
 
-__all__ = ["LIMIT_DIMENSION", "RULE_LIMITS", "LimitState", "force_codes", "limit_origin", "limit_values"]
+__all__ = ["LIMIT_DIMENSION", "LimitState", "force_codes", "limit_origin", "limit_values"]
 
 FloatArray = NDArray[np.float64]
 CodeArray = NDArray[np.int8]
@@ -20,18 +20,6 @@ IntArray = NDArray[np.int32]
 
 TOLERANCE = 1e-9
 _BY = {"": 0, "size": 1, "pressure": 2}
-RULE_LIMITS: dict[str, tuple[str, ...]] = {
-    "liquid-velocity": ("velocity_maximum",),
-    "gas-velocity": ("velocity_maximum",),
-    "steam-velocity": ("velocity_maximum",),
-    "two-phase-velocity": ("velocity_maximum",),
-    "minimum-velocity": ("velocity_minimum",),
-    "erosional-velocity": ("erosional_constant",),
-    "momentum-flux": ("momentum_flux_maximum",),
-    "pressure-gradient": ("pressure_gradient_maximum",),
-    "npsh-margin": ("npsh_margin_minimum", "npsh_ratio_minimum"),
-    "mach-number": ("mach_maximum",),
-}
 
 
 class LimitState(IntEnum):
@@ -152,7 +140,7 @@ def _force(service: Service, rule_id: str, default_force: str, keys: Sequence[st
 
 
 def force_codes(
-    *, criteria: Criteria, rule_id: str, default_force: str, service: IntArray, keys: Sequence[str] | None = None
+    *, criteria: Criteria, rule_id: str, default_force: str, service: IntArray, keys: Sequence[str]
 ) -> CodeArray:
     """Return the force of a rule for every line case.
 
@@ -166,16 +154,15 @@ def force_codes(
         The rule's own force: ``note``, ``should`` or ``shall``.
     service : int32 array, shape (n,)
         Codes of `checker.criteria.services.service_codes`; -1 takes the rule's own force.
-    keys : sequence of str, optional
-        Limits of the criteria that the rule reads; by default those of `RULE_LIMITS`, none for other rules.
+    keys : sequence of str
+        Limits of the criteria that the rule reads, of `LIMIT_DIMENSION`; empty where it reads none.
 
     Returns
     -------
     int8 array, shape (n,)
         0 note, 1 should, 2 shall. Where a limit that the rule reads is from memory and not confirmed, at most 1.
     """
-    reads = RULE_LIMITS.get(rule_id, ()) if keys is None else keys
-    forces = [_force(each, rule_id, default_force, reads) for each in criteria.services]
+    forces = [_force(each, rule_id, default_force, keys) for each in criteria.services]
     table = np.array([*forces, FORCES.index(default_force)], dtype=np.int8)
     known = (service >= 0) & (service < len(criteria.services))
     return table[np.where(known, service, -1)]

@@ -10,9 +10,10 @@ from checker.criteria.nominal_size import read_nominal_size
 from checker.criteria.places import PathPart, ProblemList, shown
 from checker.units import STANDARD_ATMOSPHERE, UnitRefusedError, dimensions_knowing, read_quantity, read_unit
 
-__all__ = ["EXAMPLES", "read_atmosphere", "read_number", "read_size", "read_value"]
+__all__ = ["EXAMPLES", "LARGEST_ROUGHNESS", "read_atmosphere", "read_number", "read_size", "read_value"]
 
 LONGEST_QUANTITY = 80
+LARGEST_ROUGHNESS = 0.1
 LOWEST_ATMOSPHERE, HIGHEST_ATMOSPHERE = 20_000.0, 120_000.0
 EXAMPLES = {
     "velocity": "3.0 m/s",

@@ -13,9 +13,10 @@ from checker.criteria.quantities import read_size, read_value
 from checker.criteria.structure import conforms, criteria_schema
 from checker.criteria.text_folding import fold_pattern, fold_text
 
-__all__ = ["NO_LIMIT", "read_services", "same_name"]
+__all__ = ["NO_LIMIT", "RELIEF_CASE", "read_services", "same_name"]
 
 NO_LIMIT = "none"
+RELIEF_CASE = "relief"
 _MAY_BE_ZERO = ("npsh_margin_minimum", "velocity_minimum")
 
 
@@ -141,6 +142,13 @@ def _text(raw: Mapping[str, Any], key: str) -> str:
     return value if isinstance(value, str) else ""
 
 
+def _relief_case(raw: Mapping[str, Any], path: Sequence[PathPart], problems: ProblemList) -> str:
+    case = raw.get("relief_case", RELIEF_CASE)
+    if isinstance(case, str) and case and not case.strip():
+        problems.add([*path, "relief_case"], "the text names no case.", f'Write a case such as "{RELIEF_CASE}".')
+    return case.strip() if isinstance(case, str) else ""
+
+
 def _service(raw: Mapping[str, Any], path: Sequence[PathPart], problems: ProblemList, atmosphere: float) -> Service:
     matches = _texts(raw.get("matches"))
     limits = _limits(raw, path, problems, atmosphere)
@@ -157,6 +165,8 @@ def _service(raw: Mapping[str, Any], path: Sequence[PathPart], problems: Problem
         steam=raw.get("steam") is True,
         pump_suction=raw.get("pump_suction") is True,
         solids_free=raw.get("solids_free") is True,
+        relief=raw.get("relief") is True,
+        relief_case=_relief_case(raw, path, problems),
         pressure_basis=_text(raw, "pressure_basis"),
         limits=limits,
         force=dict(force) if isinstance(force, dict) else {},

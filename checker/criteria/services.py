@@ -11,11 +11,12 @@ from checker.criteria.criteria import Criteria, Service
 from checker.criteria.text_folding import fits, fold_pattern, fold_text
 from checker.model import Coded, Phase
 
-__all__ = ["general_row", "matched", "service_codes", "services_of_texts"]
+__all__ = ["general_row", "matched", "service_codes", "services_of_texts", "unmatched_codes"]
 
 _PHASES = {"liquid": Phase.LIQUID, "gas": Phase.GAS, "two-phase": Phase.TWO_PHASE}
 _COLUMNS = (Phase.LIQUID, Phase.GAS, Phase.TWO_PHASE, Phase.UNKNOWN)
 IntArray = NDArray[np.int32]
+BoolArray = NDArray[np.bool_]
 
 
 class _Matcher:
@@ -65,6 +66,28 @@ def _of_phase(criteria: Criteria, candidates: Sequence[int], phase: Phase) -> in
     return -1
 
 
+def _fitting_services(criteria: Criteria, texts: Sequence[str]) -> IntArray:
+    """Return the service whose own matches hold each text in each phase, laid out as `services_of_texts`."""
+    matcher = _Matcher(criteria.services)
+    table = np.full((len(texts) + 1, len(_COLUMNS)), -1, dtype=np.int32)
+    for row, text in enumerate(texts):
+        candidates = matcher.candidates(text)
+        table[row] = [_of_phase(criteria, candidates, phase) for phase in _COLUMNS]
+    return table
+
+
+def _general_rows(criteria: Criteria, texts: Sequence[str]) -> IntArray:
+    """Return the general row that each text may fall back to in each phase, laid out as `services_of_texts`."""
+    given = np.array([*(bool(fold_text(text)) for text in texts), False])
+    general = np.array([general_row(criteria, phase) for phase in _COLUMNS], dtype=np.int32)
+    return np.where(given[:, np.newaxis], general, np.int32(-1))
+
+
+def _phase_column(phase: NDArray[np.int8]) -> NDArray[np.int8]:
+    """Return the column of each phase in the tables of this module."""
+    return np.where((phase >= 0) & (phase <= Phase.TWO_PHASE), phase, np.int8(-1))
+
+
 def services_of_texts(criteria: Criteria, texts: Sequence[str]) -> IntArray:
     """Return the service of every distinct text in every phase.
 
@@ -79,17 +102,8 @@ def services_of_texts(criteria: Criteria, texts: Sequence[str]) -> IntArray:
         Index into ``criteria.services``; columns liquid, gas, two-phase, phase not known. The last row, which code -1
         reads, is -1 throughout.
     """
-    matcher = _Matcher(criteria.services)
-    general = {phase: general_row(criteria, phase) for phase in _COLUMNS}
-    table = np.full((len(texts) + 1, len(_COLUMNS)), -1, dtype=np.int32)
-    for row, text in enumerate(texts):
-        if not fold_text(text):
-            continue
-        candidates = matcher.candidates(text)
-        for column, phase in enumerate(_COLUMNS):
-            found = _of_phase(criteria, candidates, phase)
-            table[row, column] = found if found >= 0 else general[phase]
-    return table
+    fitting = _fitting_services(criteria, texts)
+    return np.where(fitting >= 0, fitting, _general_rows(criteria, texts))
 
 
 def matched(criteria: Criteria, texts: Sequence[str]) -> list[int]:
@@ -120,4 +134,27 @@ def service_codes(*, criteria: Criteria, service: Coded, phase: NDArray[np.int8]
         text is missing, where the phase is needed and missing, or where the criteria have no such general row.
     """
     table = services_of_texts(criteria, service.texts)
-    return table[service.codes, np.where((phase >= 0) & (phase <= Phase.TWO_PHASE), phase, -1)]
+    return table[service.codes, _phase_column(phase)]
+
+
+def unmatched_codes(*, criteria: Criteria, service: Coded, phase: NDArray[np.int8]) -> BoolArray:
+    """Return which line cases took a general row only because their service text fits no service of their phase.
+
+    Parameters
+    ----------
+    criteria : Criteria
+        The design criteria.
+    service : Coded, shape (n,)
+        Service cell of each line case.
+    phase : int8 array, shape (n,)
+        `checker.model.Phase` of each line case.
+
+    Returns
+    -------
+    bool array, shape (n,)
+        True where `service_codes` gives a general row and no match of any service, for that phase, holds the text.
+        False where the general row's own matches hold it, and where the service is not known (code -1).
+    """
+    fitting = _fitting_services(criteria, service.texts)
+    table = (fitting < 0) & (_general_rows(criteria, service.texts) >= 0)
+    return table[service.codes, _phase_column(phase)]

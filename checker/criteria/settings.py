@@ -11,7 +11,7 @@ from typing import Any
 
 from checker.criteria.hints import ColumnHint
 from checker.criteria.places import LONGEST_SHOWN, ProblemList, shown
-from checker.criteria.quantities import read_atmosphere, read_number, read_value
+from checker.criteria.quantities import LARGEST_ROUGHNESS, read_atmosphere, read_number, read_value
 from checker.fields import all_fields, field_named
 from checker.units import STANDARD_ATMOSPHERE, UnitRefusedError, read_unit
 
@@ -136,6 +136,9 @@ def _roughness(document: _TableOf, problems: ProblemList) -> dict[str, float]:
             value = read_value(text, "diameter", path, problems)
             if value < 0.0:
                 problems.add(path, f"{shown(text)}: a roughness is not negative.", "Write zero or more.")
+            elif value > LARGEST_ROUGHNESS:
+                what = f"{shown(text)}: no pipe is rougher than {LARGEST_ROUGHNESS * 1e3:g} mm."
+                problems.add(path, what, "Check the unit: steel has some 0.05 mm.")
             roughness[" ".join(material.casefold().split())] = value
     return roughness
 

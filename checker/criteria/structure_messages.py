@@ -54,6 +54,10 @@ def _wording(error: ValidationError) -> tuple[str, str]:
     if error.validator == "type":
         kinds = _listed([_KIND[name] for name in ([argument] if isinstance(argument, str) else argument)])
         return f"{value} is not {kinds}.", f"Write {kinds}."
+    if error.validator == "enum" and error.absolute_path[0] == "methods":
+        which = str(error.absolute_path[-1]).replace("_", "-")
+        known = _listed([repr(word) for word in argument])
+        return f"{value} is not a {which} method of this version.", f"The {which} methods of this version: {known}."
     if error.validator == "enum":
         return f"{value} is not known here.", f"Write {_listed([repr(word) for word in argument])}."
     if error.validator == "pattern":

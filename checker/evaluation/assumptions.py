@@ -14,6 +14,7 @@ from checker.model import Coded, Phase
 __all__ = ["ASSUMABLE", "assumed_for", "assumptions_behind", "shown_assumption"]
 
 ASSUMABLE: dict[str, str] = {
+    "service_code": "service",
     "inside_diameter": "bore",
     "schedule_used": "schedule",
     "roughness": "roughness",
@@ -21,6 +22,7 @@ ASSUMABLE: dict[str, str] = {
     "heat_capacity_ratio": "ratio of heat capacities",
 }
 _SOURCES = {
+    "service_code": "the general row of the phase: the service matches none of the criteria",
     "schedule_used": "the class file, or STD (40S for stainless) where no class gives one; the list does not say",
     "inside_diameter": "from the assumed schedule, ASME B36.10M / B36.19M",
     "roughness": "class file or adopted roughness of the material; the list's own column is blank",
@@ -63,6 +65,8 @@ def shown_assumption(values: Values, field: str, line_case: int) -> tuple[str, s
     held = values[field]
     if isinstance(held, Coded):
         return held.text(line_case), _SOURCES[field]
+    if field == "service_code":
+        return values.criteria.services[int(held[line_case])].name, _SOURCES[field]
     number = float(held[line_case])
     shown = f"{number * 1000.0:.4g} mm" if field in ("inside_diameter", "roughness") else f"{number:.4g}"
     return shown, _SOURCES[field]

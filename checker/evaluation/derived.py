@@ -82,10 +82,13 @@ def npsh_available(
     )
 
 
-def flowing(*, case_kind: CodeArray) -> CodeArray:
-    """Return 1 for continuous and intermittent cases, 0 for no-flow and mechanical-only ones, -1 where not known."""
+def flowing(*, case_kind: CodeArray, relief_load_given: CodeArray) -> CodeArray:
+    """Return 1 for continuous and intermittent cases, 0 for no-flow and mechanical-only ones, -1 where not known.
+
+    No case of a relief line is known to flow as it must be judged while its relief load is not stated.
+    """
     table = np.array([YES, YES, NO, NO, UNKNOWN], dtype=np.int8)
-    return table[case_kind]
+    return np.where(relief_load_given == YES, table[case_kind], UNKNOWN).astype(np.int8)
 
 
 def continuous(*, case_kind: CodeArray) -> CodeArray:
@@ -110,9 +113,42 @@ def line_has_minimum_case(*, is_minimum_case: CodeArray, line_group: NDArray[np.
     return np.where(has, YES, np.where(unknown, UNKNOWN, NO)).astype(np.int8)[line_group]
 
 
-def velocity_at_minimum(*, velocity: FloatArray, is_minimum_case: CodeArray) -> FloatArray:
-    """Return the inlet velocity, the slow end, in the minimum case; NaN in every other case."""
-    return np.where(is_minimum_case == YES, velocity, np.nan)
+def lowest_sustained_flow(*, flow_mass: FloatArray, continuous: CodeArray, line_group: NDArray[np.int32]) -> FloatArray:
+    """Return the least flow of a line's continuous cases; infinite where it has none."""
+    least = np.full(int(line_group.max(initial=-1)) + 1, np.inf)
+    counted = (continuous == YES) & np.isfinite(flow_mass)
+    np.minimum.at(least, line_group[counted], flow_mass[counted])
+    return least[line_group]
+
+
+def velocity_at_minimum(
+    *, velocity: FloatArray, is_minimum_case: CodeArray, flow_mass: FloatArray, lowest_sustained_flow: FloatArray
+) -> FloatArray:
+    """Return the inlet velocity, the slow end, in the minimum case; NaN in every other case.
+
+    A minimum above the flow of another continuous case is no minimum: NaN.
+    """
+    with np.errstate(invalid="ignore"):
+        least = flow_mass <= lowest_sustained_flow * (1.0 + EQUAL_WITHIN)
+    return np.where((is_minimum_case == YES) & least, velocity, np.nan)
+
+
+def pressure_lowest(
+    *,
+    pressure: FloatArray,
+    pressure_inlet: FloatArray,
+    pressure_outlet: FloatArray,
+    length_gap: CodeArray,
+    equivalent_length_gap: CodeArray,
+) -> FloatArray:
+    """Return the lowest pressure of the line; the stated one where the list has no column for a length at all.
+
+    Where the list gives lengths both ends must be known: a row that leaves its length open is not known to stay
+    above its bubble point.
+    """
+    ends = np.minimum(pressure_inlet, pressure_outlet)
+    no_route = (length_gap == Gap.NO_COLUMN) & (equivalent_length_gap == Gap.NO_COLUMN)
+    return np.where(no_route, pressure, np.minimum(ends, pressure))
 
 
 def sand_free(*, sand_rate: FloatArray, sand_rate_gap: CodeArray) -> FloatArray:
@@ -192,7 +228,7 @@ PROVIDERS = (
         for function in (
             velocity_highest, velocity_lowest, mach_highest, density_lowest, pressure_loss, flow_volume_flowing,
             npsh_required_at_flow, npsh_available, flowing, continuous, is_minimum_case, line_has_minimum_case,
-            velocity_at_minimum, sand_free, erosional_velocity,
+            lowest_sustained_flow, velocity_at_minimum, pressure_lowest, sand_free, erosional_velocity,
             pressure_drop_allowed_given, vapour_pressure_given, npsh_required_given, schedule_given,
         )
     ),

@@ -24,6 +24,8 @@ Named = dict[str, Any]
 
 SCHEDULE_LISTED, SCHEDULE_CLASS, SCHEDULE_NONE, SCHEDULE_NOT_KNOWN = 0, 1, 2, -1
 NO_CLASSES = Classes(Source("no class file", ""), ())
+OUTSIDE_TOLERANCE = 0.15
+WALL_TOLERANCE = 0.125
 STANDARD_WALL = "STD"
 STAINLESS_WALL = "40S"
 STAINLESS_WORDS = ("stainless", "ss", "a312", "304", "316", "duplex")
@@ -97,6 +99,21 @@ def schedule_used(
     }
 
 
+def _contradictory(
+    *, inside: FloatArray, outside: FloatArray, wall: FloatArray, size_outside: FloatArray, schedule_wall: FloatArray
+) -> BoolArray:
+    """Return True where the bore is no smaller than the pipe, or diameter and wall are not those of size and schedule.
+
+    An explicit value wins over a looked-up one, but within reason: an outside diameter within 15 % of that of the
+    size (pipe of other standards), a wall within the mill's 12.5 % of that of a schedule given beside it.
+    """
+    with np.errstate(invalid="ignore"):
+        too_wide = inside >= outside
+        other_size = np.abs(outside - size_outside) > OUTSIDE_TOLERANCE * size_outside
+        other_wall = np.abs(wall - schedule_wall) > WALL_TOLERANCE * schedule_wall
+    return too_wide | other_size | other_wall
+
+
 def pipe(
     *,
     size: FloatArray,
@@ -119,14 +136,22 @@ def pipe(
     wall = np.where(np.isfinite(wall_thickness_listed), wall_thickness_listed, wall)
     wall = np.where(is_open(wall_thickness_gap), np.nan, wall)
     bore = outside - 2.0 * wall
-    bore = np.where(bore > 0.0, bore, np.nan)
     inside = np.where(np.isfinite(inside_diameter_listed), inside_diameter_listed, bore)
     inside = np.where(is_open(inside_diameter_gap), np.nan, inside)
+    contradictory = _contradictory(
+        inside=inside,
+        outside=outside,
+        wall=wall,
+        size_outside=found.outside_diameter,
+        schedule_wall=np.where(schedule_used_assumed, np.nan, found.wall_thickness),
+    )
+    inside = np.where(contradictory | ~(inside > 0.0), np.nan, inside)
     by_schedule = np.isnan(inside_diameter_listed) & np.isnan(wall_thickness_listed) & np.isfinite(inside)
     return {
         "outside_diameter": outside,
         "wall_thickness": wall,
         "inside_diameter": inside,
+        "pipe_contradictory": contradictory,
         "inside_diameter_assumed": by_schedule & schedule_used_assumed,
         "schedule_exists": np.where(np.isfinite(size) & (schedule_used.codes >= 0), found.exists, -1).astype(np.int8),
     }
@@ -158,7 +183,13 @@ PROVIDERS = (
     provider(material_used, "material_used", "material_used_assumed"),
     provider(schedule_used, "schedule_used", "schedule_used_assumed", "schedule_state", "wall_by_class"),
     provider(
-        pipe, "outside_diameter", "wall_thickness", "inside_diameter", "inside_diameter_assumed", "schedule_exists"
+        pipe,
+        "outside_diameter",
+        "wall_thickness",
+        "inside_diameter",
+        "inside_diameter_assumed",
+        "pipe_contradictory",
+        "schedule_exists",
     ),
     provider(roughness, "roughness", "roughness_assumed"),
 )

@@ -7,6 +7,7 @@ from collections.abc import Callable
 import numpy as np
 
 from checker.evaluation.dependencies import direct
+from checker.evaluation.identity import GREATEST_GAS_DENSITY, LEAST_LIQUID_DENSITY
 from checker.evaluation.values import Values
 from checker.fields import Field, field_named
 from checker.hydraulics.compose import STATUS_SENTENCES
@@ -76,15 +77,60 @@ def _first_gap(values: Values, fields: tuple[str, ...], line_case: int) -> Reaso
 
 
 def _flow(values: Values, line_case: int) -> Reason:
+    listed = ("flow_mass", "flow_volume", "flow_standard")
+    gaps = {field: Gap(int(values.line_list.gap(field)[line_case])) for field in listed}
+    if Gap.HOLD in gaps.values() or Gap.REFUSED in gaps.values():
+        return _first_gap(values, listed, line_case)
     if values["flow_contradictory"][line_case]:
         return "the flows of this row contradict each other by more than 2 % (flow_mass, flow_volume, flow_standard)"
-    listed = ("flow_mass", "flow_volume", "flow_standard")
-    gaps = values.line_list
-    if gaps.gap("flow_volume")[line_case] == Gap.GIVEN and gaps.gap("flow_mass")[line_case] != Gap.HOLD:
+    if gaps["flow_volume"] == Gap.GIVEN:
         return why_missing(values, "density_stated", line_case)
-    if gaps.gap("flow_standard")[line_case] == Gap.GIVEN and gaps.gap("flow_mass")[line_case] != Gap.HOLD:
+    if gaps["flow_standard"] == Gap.GIVEN:
         return why_missing(values, "molar_mass", line_case)
     return _first_gap(values, listed, line_case)
+
+
+def _phase(values: Values, line_case: int) -> Reason:
+    if not values["phase_contradictory"][line_case]:
+        return gap_sentence(values, "phase", line_case)
+    said = values["phase_listed"].text(line_case)
+    for field in ("vapour_fraction", "density"):
+        if not is_missing(values, f"{field}_listed", line_case) and _contradicts(values, field, said, line_case):
+            cell = _quoted(values.line_list.cell(field, line_case))
+            return f"the list calls it {said}, but {field} says {cell} ({values.line_list.address(field, line_case)})"
+    return f"the list calls it {said}, but the row contradicts that"
+
+
+def _contradicts(values: Values, field: str, said: str, line_case: int) -> bool:
+    number = float(values[f"{field}_listed"][line_case])
+    if field == "vapour_fraction":
+        return number > 0.0 if said == "liquid" else number < 1.0
+    return number < LEAST_LIQUID_DENSITY if said == "liquid" else number > GREATEST_GAS_DENSITY
+
+
+def _relief(values: Values, line_case: int) -> Reason:
+    code = int(values["service_code"][line_case])
+    service = values.criteria.services[code]
+    return f"a relief line is judged on its relief load: case {service.relief_case!r} with a flow is not given"
+
+
+def _flowing(values: Values, line_case: int) -> Reason:
+    if is_missing(values, "relief_load_given", line_case):
+        return _relief(values, line_case)
+    return _case(values, line_case)
+
+
+def _vapour_fraction(values: Values, line_case: int) -> Reason:
+    if is_missing(values, "vapour_fraction_listed", line_case):
+        return gap_sentence(values, "vapour_fraction", line_case)
+    return gap_sentence(values, "vapour_fraction_outlet", line_case)
+
+
+def _pressure_lowest(values: Values, line_case: int) -> Reason:
+    for name in ("pressure", "pressure_outlet", "pressure_inlet"):
+        if is_missing(values, name, line_case):
+            return why_missing(values, name, line_case)
+    return gap_sentence(values, "pressure", line_case)
 
 
 def _density(values: Values, line_case: int) -> Reason:
@@ -102,10 +148,36 @@ def _bore(values: Values, line_case: int) -> Reason:
     for field in ("inside_diameter", "wall_thickness", "outside_diameter", "schedule", "piping_class", "size"):
         if values.line_list.gap(field)[line_case] in (Gap.HOLD, Gap.REFUSED):
             return gap_sentence(values, field, line_case)
-    if is_missing(values, "size", line_case):
+    if is_missing(values, "size", line_case) and is_missing(values, "outside_diameter", line_case):
         return gap_sentence(values, "size", line_case)
+    if values["pipe_contradictory"][line_case]:
+        return _pipe_contradiction(values, line_case)
+    if is_missing(values, "schedule_used", line_case):
+        return "neither schedule nor wall thickness is given"
     schedule = values["schedule_used"].text(line_case)
     return f"NPS {values['size'][line_case]:g} has no schedule {_quoted(schedule)} in ASME B36.10M / B36.19M"
+
+
+def _pipe_contradiction(values: Values, line_case: int) -> Reason:
+    shown = {
+        name: f"{1000.0 * float(values[name][line_case]):.4g} mm" for name in ("outside_diameter", "wall_thickness")
+    }
+    bore = float(values["inside_diameter_listed"][line_case])
+    said = f"inside {1000.0 * bore:.4g} mm, " if np.isfinite(bore) else ""
+    schedule = values["schedule_used"].text(line_case) or "none"
+    return (
+        f"size and dimensions contradict each other: NPS {values['size'][line_case]:g}, schedule {_quoted(schedule)}, "
+        f"{said}outside {shown['outside_diameter']}, wall {shown['wall_thickness']}"
+    )
+
+
+def _schedule(values: Values, line_case: int) -> Reason:
+    for field in ("schedule", "piping_class", "size"):
+        if values.line_list.gap(field)[line_case] in (Gap.HOLD, Gap.REFUSED):
+            return gap_sentence(values, field, line_case)
+    if is_missing(values, "size", line_case):
+        return gap_sentence(values, "size", line_case)
+    return "neither the list nor the class gives a schedule, so that there is none to look up"
 
 
 def _roughness(values: Values, line_case: int) -> Reason:
@@ -145,8 +217,10 @@ def _service(values: Values, line_case: int) -> Reason:
     if is_missing(values, "service_listed", line_case):
         return gap_sentence(values, "service", line_case)
     if is_missing(values, "phase", line_case):
-        return gap_sentence(values, "phase", line_case)
+        return _phase(values, line_case)
     text = values["service_listed"].text(line_case)
+    if values["service_code_assumed"][line_case]:
+        return f"service {_quoted(text)} matches none of the criteria"
     return f"the criteria hold no service for {_quoted(text)} and no general row for its phase"
 
 
@@ -182,7 +256,9 @@ def _at_minimum(values: Values, line_case: int) -> Reason:
     if is_missing(values, "is_minimum_case", line_case):
         return _case(values, line_case)
     if values["is_minimum_case"][line_case] > 0:
-        return why_missing(values, "velocity", line_case)
+        if is_missing(values, "velocity", line_case):
+            return why_missing(values, "velocity", line_case)
+        return "the minimum flow is above the flow of another continuous case of the line: it is no minimum"
     return "the line has no minimum case: minimum velocity is judged at the lowest sustained flow"
 
 
@@ -197,8 +273,14 @@ _SPECIAL: dict[str, Special] = {
     "flow_mass": _flow,
     "density_stated": _density,
     "inside_diameter": _bore,
-    "schedule_exists": _bore,
-    "schedule_given": _bore,
+    "schedule_exists": _schedule,
+    "schedule_given": _schedule,
+    "phase": _phase,
+    "pump_suction": _service,
+    "flowing": _flowing,
+    "relief_load_given": _relief,
+    "vapour_fraction": _vapour_fraction,
+    "pressure_lowest": _pressure_lowest,
     "roughness": _roughness,
     "pipe_length": _length,
     "fittings_length": _route,

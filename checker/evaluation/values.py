@@ -41,6 +41,9 @@ def known_fields() -> frozenset[str]:
     return frozenset(listed | suffixed | set(_providers()) | set(LIMIT_DIMENSION) | states | set(BASE_FIELDS))
 
 
+NO_LIMIT, NOT_KNOWN = 1, 2
+
+
 class Values:
     """The fields of a line list under one criteria and class file.
 
@@ -108,6 +111,8 @@ class Values:
             size=self["size"],
             pressure=self["pressure"],
         )
+        # The general row of a phase cannot say that a service that matched nothing needs no such limit.
+        state = np.where(self["service_code_assumed"] & (state == NO_LIMIT), NOT_KNOWN, state).astype(np.int8)
         return {key: _read_only(values), f"{key}_state": _read_only(state)}
 
     def _listed(self, name: str) -> Any:

@@ -37,6 +37,8 @@ from checker.hydraulics.arrays import (
 
 _STEPS = 120
 _TOLERANCE = 2.0e-15
+#: p^2 over G^2 c^2 (alpha + K) above which no line chokes, and the path to choking is lost in rounding.
+_FAR_FROM_CHOKING = 1.0e8
 
 
 class GasFlow(NamedTuple):
@@ -177,7 +179,8 @@ def outlet_from_inlet(
         )
     )
     line = _line(first, flux, energy, loss, rise, alpha)
-    limit = _path_to_choking(line)
+    far = line.known * np.exp(-np.maximum(line.rise, 0.0)) > _FAR_FROM_CHOKING * (line.kinetic + line.loss)
+    limit = np.where(far, np.inf, _path_to_choking(line))
     reaches = (limit >= 1.0) & (_inlet_residual(limit, line)[0] >= 0.0) | np.isinf(limit)
     valid = np.isfinite(line.slope) & np.isfinite(line.kinetic)
     choked = valid & ~(reaches & (line.known >= line.kinetic))

@@ -127,7 +127,7 @@ def _planes(line: GasLine, flow: GasFlow) -> tuple[FloatArray, FloatArray, BoolA
     """Pressures of the two planes in the pipe, and where the stated inlet pressure cannot drive the flow."""
     inlet, outlet = line.known_end()
     from_inlet, from_outlet = line.cases.pressure_basis == INLET, line.cases.pressure_basis == OUTLET
-    ready = ~np.isnan(line.stated + line.entrance_step + line.flux)
+    ready = ~np.isnan(line.stated + line.entrance_step + line.flux + line.energy)
     stopped = from_inlet & ready & np.isnan(inlet)
     blocked = stopped | (from_inlet & flow.choked)
     floor = _choking(line)

@@ -2,14 +2,36 @@
 
 from __future__ import annotations
 
+import errno
 import os
-from collections.abc import Mapping
+from collections.abc import Iterable, Mapping
 from contextlib import ExitStack
 from pathlib import Path
 
 from checker.errors import InputError, Problem
 
-__all__ = ["remove_file", "write_files", "write_text"]
+__all__ = ["check_places", "remove_file", "write_files", "write_text"]
+
+
+def check_places(folder: Path, names: Iterable[str]) -> None:
+    """Refuse a folder that cannot take these files, before any work is done for them.
+
+    Raises
+    ------
+    InputError
+        The folder is none, cannot be written, or a folder stands where a file is to be.
+    """
+    nearest = folder
+    while not nearest.exists() and nearest != nearest.parent:
+        nearest = nearest.parent
+    remedy = "Name another place to write to."
+    if not nearest.is_dir():
+        raise InputError(Problem("is no folder.", str(nearest), remedy))
+    if not os.access(nearest, os.W_OK | os.X_OK):
+        raise InputError(Problem("cannot be written.", str(nearest), remedy))
+    for name in names:
+        if (folder / name).is_dir():
+            raise InputError(Problem("is a folder, where a file is to be written.", str(folder / name), remedy))
 
 
 def write_text(path: Path, text: str) -> None:
@@ -63,6 +85,9 @@ def _place_all(folder: Path, contents: Mapping[str, bytes]) -> tuple[Path, ...]:
             clean_up.callback(beside.unlink, missing_ok=True)
             _write_beside(beside, content)
             waiting.append((beside, folder / name))
+        for _, place in waiting:
+            if place.is_dir():
+                raise IsADirectoryError(errno.EISDIR, os.strerror(errno.EISDIR), str(place))
         for beside, place in waiting:
             os.replace(beside, place)
         return tuple(place for _, place in waiting)

@@ -14,12 +14,13 @@ from checker.report.json_file import outcomes_json
 from checker.report.pdf import PdfUnavailableError, render_pdf
 from checker.report.review_contract import ReviewLike
 
-__all__ = ["CSV_NAME", "HTML_NAME", "JSON_NAME", "PDF_NAME", "WrittenFiles", "write_report"]
+__all__ = ["CSV_NAME", "HTML_NAME", "JSON_NAME", "OUTPUT_NAMES", "PDF_NAME", "WrittenFiles", "write_report"]
 
 HTML_NAME = "exceptions.html"
 PDF_NAME = "exceptions.pdf"
 JSON_NAME = "outcomes.json"
 CSV_NAME = "hydraulics.csv"
+OUTPUT_NAMES = (HTML_NAME, PDF_NAME, JSON_NAME, CSV_NAME)
 
 
 @dataclass(frozen=True, slots=True)

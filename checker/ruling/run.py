@@ -22,6 +22,8 @@ EQUAL_WITHIN = 1e-9
 FloatArray = NDArray[np.float64]
 BoolArray = NDArray[np.bool_]
 CodeArray = NDArray[np.int8]
+#: By the state of a limit: set, not set by the criteria, not known.
+_LIMIT_APPLIES = np.array([YES, NO, UNKNOWN], dtype=np.int8)
 SHALL = FORCES.index("shall")
 SHOULD = FORCES.index("should")
 
@@ -103,7 +105,7 @@ def applies_to(rule: Rule, values: Values) -> CodeArray:
         states.append(np.broadcast_to(answer, (count,)).astype(np.int8))
     for name in rule.required:
         if name in LIMIT_DIMENSION:
-            states.append(np.where(values[f"{name}_state"] == 1, NO, YES).astype(np.int8))
+            states.append(_LIMIT_APPLIES[values[f"{name}_state"]])
     return all_of(*states)
 
 

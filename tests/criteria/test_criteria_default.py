@@ -137,3 +137,14 @@ def test_loading_the_default_imports_nothing_heavy() -> None:
         [sys.executable, "-c", code], capture_output=True, text=True, check=True, cwd=DEFAULT.parents[2]
     )
     assert done.stdout.strip() == "[]"
+
+
+def test_relief_services_are_those_of_flare_and_relief_and_no_vent(criteria: Criteria) -> None:
+    assert {service.name for service in criteria.services if service.relief} == {
+        "relief valve tail pipe",
+        "depressuring header",
+        "flare sub-header",
+        "flare header",
+        "relief and flare, two-phase",
+    }
+    assert {service.relief_case for service in criteria.services} == {"relief"}

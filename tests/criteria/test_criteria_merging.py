@@ -183,6 +183,46 @@ def test_force_by_service(tmp_path: Path) -> None:
     assert force_codes(criteria=criteria, rule_id="pressure-gradient", default_force="should", service=code)[0] == 0
 
 
+def test_relief_keys(tmp_path: Path) -> None:
+    text = """
+[[service]]
+name = "flare header"
+relief_case = " maximum "
+[[service]]
+name = "knock-out drum vent"
+matches = ["KOV"]
+relief = true
+[[service]]
+name = "vent"
+relief = true
+[[service]]
+name = "flare sub-header"
+relief = false
+"""
+    criteria = load(tmp_path, HEAD + text)
+    header, added = named(criteria, "flare header"), named(criteria, "knock-out drum vent")
+    assert (header.relief, header.relief_case) == (True, "maximum")
+    assert (added.relief, added.relief_case) == (True, "relief")
+    assert not named(criteria, "flare sub-header").relief
+    assert not named(criteria, "nitrogen").relief
+    for sentence in (
+        "flare header: relief_case relief -> maximum",
+        "vent: relief no -> yes",
+        "flare sub-header: relief yes -> no",
+    ):
+        assert sentence in criteria.differences
+
+
+def test_relief_load_of_the_example_is_its_maximum_case() -> None:
+    criteria = load_criteria(DEFAULT_FILE.parents[2] / "example_linelists" / "criteria.toml")
+    own = [service for service in criteria.services if service.name.startswith("marrowquay")]
+    assert {(service.name, service.relief_case) for service in own if service.relief} == {
+        ("marrowquay relief tail pipe", "maximum"),
+        ("marrowquay flare header", "maximum"),
+    }
+    assert all(service.relief_case == "relief" for service in own if not service.relief)
+
+
 def test_a_file_that_stands_alone_knows_its_own_services_only(tmp_path: Path) -> None:
     criteria = load(tmp_path, '[[service]]\nname = "water"\nmatches = ["W"]\nvelocity_maximum = "2 m/s"\n')
     assert [service.name for service in criteria.services] == ["water"]

@@ -27,6 +27,8 @@ PROJECT: dict[str, Any] = {
             "matches": ["A"],
             "phase": "gas",
             "general": True,
+            "relief": True,
+            "relief_case": "maximum",
             "velocity_maximum": {"by": "size", "bands": [{"up_to": "NPS 2", "value": "1 m/s"}, {"value": 2}]},
             "mach_maximum": 0.3,
             "momentum_flux_maximum": {"value": "1 Pa", "basis": "read"},

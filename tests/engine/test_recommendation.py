@@ -29,7 +29,7 @@ def judged(*outcomes: Outcome, force: str = "should", used: float = 1.1) -> Judg
 
 
 def word(judgement: Judgement, open_items: int = 0) -> str:
-    return recommend(judgement, gross_factor=1.25, coverage_minimum=0.9, open_items=open_items).word
+    return recommend(judgement, gross_factor=1.25, coverage_minimum=0.9, open_items={"HOLDs": open_items}).word
 
 
 @pytest.mark.parametrize(
