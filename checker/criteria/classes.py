@@ -231,10 +231,10 @@ def _check_walls(row: ClassRow, reader: _CellReader) -> None:
     )
     if differing:
         size, wall = differing[0]
-        others = f", and at {len(differing) - 1} more sizes of the row" if len(differing) > 1 else ""
+        others = " and at larger sizes of the row" if len(differing) > 1 else ""
         what = (
-            f"the wall {row.wall_thickness * 1e3:.4g} mm is not that of schedule {shown(row.schedule)}: "
-            f"{wall * 1e3:.4g} mm at NPS {size:g}{others}."
+            f"the wall {row.wall_thickness * 1e3:.4g} mm is more than 12.5 % off that of schedule "
+            f"{shown(row.schedule)}, {wall * 1e3:.4g} mm, at NPS {size:g}{others}."
         )
         reader.add(row.row, "wall_thickness", what, "Leave one of the two blank, or give each size a row.")
 

@@ -146,7 +146,7 @@ def _relief_case(raw: Mapping[str, Any], path: Sequence[PathPart], problems: Pro
     case = raw.get("relief_case", RELIEF_CASE)
     if isinstance(case, str) and case and not case.strip():
         problems.add([*path, "relief_case"], "the text names no case.", f'Write a case such as "{RELIEF_CASE}".')
-    return case.strip() if isinstance(case, str) else ""
+    return " ".join(case.split()) if isinstance(case, str) else ""
 
 
 def _service(raw: Mapping[str, Any], path: Sequence[PathPart], problems: ProblemList, atmosphere: float) -> Service:

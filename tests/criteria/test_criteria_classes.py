@@ -111,6 +111,50 @@ def test_all_problems_at_once(tmp_path: Path) -> None:
         assert any(problem.startswith(place) and words in problem for problem in problems), (row, column, problems)
 
 
+def test_a_schedule_that_is_no_word_of_the_standards(tmp_path: Path) -> None:
+    (problem,) = problems_of(tmp_path, HEADER + "A,2,4,Sch. 40,,cs,1.5,150,0.05\nB,2,4,abc,,cs,1.5,150,0.05\n")
+    assert problem.startswith("classes.csv, row 3, column 'schedule': 'abc' is no schedule of ASME B36.10M")
+
+
+def test_a_known_schedule_that_a_size_does_not_have_is_no_matter_of_the_file(tmp_path: Path) -> None:
+    """ASME B36.10M has no schedule 20 below NPS 8: the lines that use it are told so, not the file."""
+    text = HEADER + "A,2,4,20,,cs,1.5,150,0.05\nB,2,4,20,3,cs,1.5,150,0.05\n"
+    assert [row.schedule for row in load(tmp_path, text).rows] == ["20", "20"]
+
+
+@pytest.mark.parametrize(
+    ("row", "words"),
+    [
+        # ASME B36.10M, schedule 40: NPS 2 3.91 mm, NPS 3 5.49 mm, NPS 4 6.02 mm; 12.5 % of 3.91 mm is 0.489 mm.
+        ("2,2,40,3.91", ""),
+        ("2,2,40,3.45", ""),
+        ("2,2,40,4.39", ""),
+        ("2,2,40,3.42", "the wall 3.42 mm is more than 12.5 % off that of schedule '40', 3.91 mm, at NPS 2."),
+        ("2,2,40,4.41", "the wall 4.41 mm is more than 12.5 % off that of schedule '40', 3.91 mm, at NPS 2."),
+        ("3,4,40,5.8", ""),
+        ("2,4,40,6.02", "3.91 mm, at NPS 2 and at larger sizes of the row."),
+        ("2,4,40,", ""),
+        ("2,4,,6.02", ""),
+    ],
+)
+def test_a_wall_beside_a_schedule_is_the_schedules_own(tmp_path: Path, row: str, words: str) -> None:
+    text = HEADER + f"A,{row},cs,1.5,150,0.05\n"
+    if not words:
+        assert load(tmp_path, text).rows
+        return
+    (problem,) = problems_of(tmp_path, text)
+    assert problem.startswith("classes.csv, row 2, column 'wall_thickness [mm]': ")
+    assert words in problem
+
+
+@pytest.mark.parametrize(("cell", "words"), [("100.1", "no pipe is rougher than 100 mm"), ("-0.05", "cannot be")])
+def test_a_roughness_that_no_pipe_has(tmp_path: Path, cell: str, words: str) -> None:
+    (problem,) = problems_of(tmp_path, HEADER + f"A,2,4,40,,cs,1.5,150,{cell}\n")
+    assert problem.startswith("classes.csv, row 2, column 'roughness [mm]': ")
+    assert words in problem
+    assert load(tmp_path, HEADER + "A,2,4,40,,cs,1.5,150,0\n").rows[0].roughness == 0.0
+
+
 @pytest.mark.parametrize(
     ("text", "words"),
     [

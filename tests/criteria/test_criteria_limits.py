@@ -97,7 +97,9 @@ def test_no_lines_at_all() -> None:
     none, codes = np.empty(0), np.empty(0, dtype=np.int32)
     value, state = limit_values(criteria=DEFAULT, key="velocity_maximum", service=codes, size=none, pressure=none)
     assert value.shape == state.shape == (0,)
-    forces = force_codes(criteria=DEFAULT, rule_id="mach-number", default_force="should", service=codes)
+    forces = force_codes(
+        criteria=DEFAULT, rule_id="mach-number", default_force="should", service=codes, keys=("mach_maximum",)
+    )
     assert forces.shape == (0,)
 
 

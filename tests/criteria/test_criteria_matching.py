@@ -11,7 +11,7 @@ from hypothesis import strategies as st
 
 from checker.criteria.criteria import Criteria
 from checker.criteria.load import load_criteria
-from checker.criteria.services import matched, service_codes
+from checker.criteria.services import matched, service_codes, unmatched_codes
 from checker.criteria.text_folding import fits, fold_pattern, fold_text
 from checker.model import Coded
 
@@ -95,6 +95,46 @@ def test_matched_says_which_texts_matched_nothing() -> None:
     assert [DEFAULT.services[code].name if code >= 0 else "" for code in found] == [
         "cooling water", "", "", "ammonia liquid",
     ]  # fmt: skip
+
+
+UNMATCHED = [
+    ("NH3", TWO_PHASE, True),  # the services of ammonia hold for liquid and for gas only
+    ("NH3", LIQUID, False),
+    ("NH3", UNKNOWN, False),  # no general row without a phase
+    ("no such service", GAS, True),
+    ("no such service", UNKNOWN, False),
+    ("flare KO drum pump-out", LIQUID, True),
+    ("P", GAS, False),  # the general row's own match
+    ("process liquid to store", LIQUID, False),
+    ("process liquid to store", TWO_PHASE, True),
+    ("CWS", LIQUID, False),
+    ("", LIQUID, False),
+    (" - ", GAS, False),
+]
+
+
+def test_unmatched_are_those_that_took_a_general_row_for_want_of_a_match() -> None:
+    texts = tuple(row[0] for row in UNMATCHED)
+    phase = np.array([row[1] for row in UNMATCHED], dtype=np.int8)
+    service = Coded(np.arange(len(UNMATCHED), dtype=np.int32), texts)
+    found = unmatched_codes(criteria=DEFAULT, service=service, phase=phase)
+    assert found.tolist() == [row[2] for row in UNMATCHED]
+    codes = service_codes(criteria=DEFAULT, service=service, phase=phase)
+    assert all(DEFAULT.services[code].general for code in codes[found])
+
+
+def test_a_missing_text_is_not_unmatched_whatever_texts_there_are() -> None:
+    service = Coded(np.array([-1, 0, -1], dtype=np.int32), ("no such service",))
+    phase = np.array([LIQUID, LIQUID, UNKNOWN], dtype=np.int8)
+    assert unmatched_codes(criteria=DEFAULT, service=service, phase=phase).tolist() == [False, True, False]
+
+
+def test_without_a_general_row_nothing_is_unmatched(tmp_path: Path) -> None:
+    path = tmp_path / "project.toml"
+    path.write_text("[[service]]\nname = 'first'\nmatches = ['ab*']\n")
+    service = Coded(np.array([0], dtype=np.int32), ("other",))
+    found = unmatched_codes(criteria=load_criteria(path), service=service, phase=np.array([LIQUID], dtype=np.int8))
+    assert found.tolist() == [False]
 
 
 def test_exact_texts_go_before_patterns_and_file_order_decides(tmp_path: Path) -> None:

@@ -16,6 +16,7 @@ from checker.criteria.services import matched
 
 HEAD = '[project]\ntitle = "Marrowquay terminal"\ndocument = "MQ-PR-CRI-001"\nbased_on = "default"\n'
 DEFAULT = load_criteria(None)
+VELOCITY = ("velocity_maximum",)
 
 
 def load(tmp_path: Path, text: str) -> Criteria:
@@ -105,7 +106,7 @@ def test_tables_are_merged_key_by_key(tmp_path: Path) -> None:
 [site]
 ambient_minimum = "-5 degC"
 [methods]
-gas = "adiabatic"
+two_phase = "homogeneous"
 [units]
 pressure = "barg"
 mass_flow = "kg/h"
@@ -120,7 +121,7 @@ coverage_minimum = 0.8
     criteria = load(tmp_path, HEAD + text)
     assert criteria.ambient_minimum == pytest.approx(268.15)
     assert criteria.atmosphere == DEFAULT.atmosphere
-    assert (criteria.gas_method, criteria.two_phase_method) == ("adiabatic", "beggs-brill")
+    assert (criteria.gas_method, criteria.two_phase_method) == ("isothermal", "homogeneous")
     assert criteria.units == {"pressure": "barg", "mass flow": "kg/h"}
     assert criteria.columns == {"Fl. qty": ColumnHint("flow_mass", "kg/h", "normal")}
     assert (criteria.fittings_allowance, criteria.coverage_minimum, criteria.gross_factor) == (0.3, 0.8, 1.25)
@@ -129,7 +130,7 @@ coverage_minimum = 0.8
     assert criteria.roughness["grp"] == pytest.approx(2e-5)
     assert criteria.differences == (
         "[site] ambient_minimum: none -> -5 degC",
-        "[methods] gas: isothermal -> adiabatic",
+        "[methods] two_phase: beggs-brill -> homogeneous",
         "[recommendation] coverage_minimum: 0.9 -> 0.8",
         "[defaults] fittings_allowance: none -> 0.3",
         "[units] mass flow: none -> kg/h",
@@ -152,23 +153,24 @@ def test_a_limit_from_memory_is_at_most_should_until_confirmed(tmp_path: Path) -
     confirmed = load(tmp_path, HEAD + '[[service]]\nname = "oxygen"\nconfirmed = "EIGA Doc 13/20"\n')
     for criteria, force in ((DEFAULT, 1), (confirmed, 2)):
         code = np.array([index_of(criteria, "oxygen"), -1], dtype=np.int32)
-        codes = force_codes(criteria=criteria, rule_id="gas-velocity", default_force="should", service=code)
+        codes = force_codes(
+            criteria=criteria, rule_id="gas-velocity", default_force="should", service=code, keys=VELOCITY
+        )
         assert codes.tolist() == [force, 1]
     assert "oxygen: confirmed none -> EIGA Doc 13/20" in confirmed.differences
     sentence = limit_origin(confirmed, "velocity_maximum", index_of(confirmed, "oxygen"), 4.0, 1.0e6)
     assert "confirmed: EIGA Doc 13/20" in sentence
     blank = load(tmp_path, HEAD + '[[service]]\nname = "oxygen"\nconfirmed = "  "\n')
     code = np.array([index_of(blank, "oxygen")], dtype=np.int32)
-    assert force_codes(criteria=blank, rule_id="gas-velocity", default_force="shall", service=code).tolist() == [1]
+    codes = force_codes(criteria=blank, rule_id="gas-velocity", default_force="shall", service=code, keys=VELOCITY)
+    assert codes.tolist() == [1]
 
 
 def test_a_rule_whose_limit_is_not_of_the_criteria_keeps_its_force() -> None:
     code = np.array([index_of(DEFAULT, "oxygen"), -1, 0, 10**6], dtype=np.int32)
-    codes = force_codes(criteria=DEFAULT, rule_id="schedule-exists", default_force="shall", service=code)
+    codes = force_codes(criteria=DEFAULT, rule_id="schedule-exists", default_force="shall", service=code, keys=())
     assert codes.tolist() == [2, 2, 2, 2]
-    asked = force_codes(
-        criteria=DEFAULT, rule_id="own-rule", default_force="shall", service=code, keys=("velocity_maximum",)
-    )
+    asked = force_codes(criteria=DEFAULT, rule_id="own-rule", default_force="shall", service=code, keys=VELOCITY)
     assert asked.tolist() == [1, 2, 2, 2]
 
 
@@ -179,8 +181,9 @@ def test_force_by_service(tmp_path: Path) -> None:
     assert service.force == {**named(DEFAULT, "cooling water").force, "liquid-velocity": "shall"}
     assert criteria.differences == ("cooling water: force of liquid-velocity the rule's own -> shall",)
     code = np.array([index_of(criteria, "cooling water")], dtype=np.int32)
-    assert force_codes(criteria=criteria, rule_id="liquid-velocity", default_force="should", service=code)[0] == 2
-    assert force_codes(criteria=criteria, rule_id="pressure-gradient", default_force="should", service=code)[0] == 0
+    for rule_id, force in (("liquid-velocity", 2), ("pressure-gradient", 0)):
+        codes = force_codes(criteria=criteria, rule_id=rule_id, default_force="should", service=code, keys=())
+        assert codes.tolist() == [force]
 
 
 def test_relief_keys(tmp_path: Path) -> None:

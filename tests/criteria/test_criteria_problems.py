@@ -47,13 +47,21 @@ ONE_PROBLEM = [
     ('[site]\natmospheric_pressure = "5 bar"', "[site], atmospheric_pressure", "no atmospheric pressure"),
     ('[site]\nambient_minimum = "9 degC"\nambient_maximum = "8 degC"', "[site], ambient_minimum", "above the maximum"),
     ('[site]\nambient_minimum = "-400 degC"', "[site], ambient_minimum", "below absolute zero"),
-    ('[methods]\ntwo_phase = "guess"', "[methods], two_phase", "'guess' is not known here"),
+    ('[methods]\ntwo_phase = "guess"', "[methods], two_phase", "'guess' is not a two-phase method of this version"),
+    ('[methods]\ngas = "adiabatic"', "[methods], gas", "'adiabatic' is not a gas method of this version"),
+    ('[methods]\nfittings = "hooper-2k"', "[methods], fittings", "'hooper-2k' is not a fittings method"),
+    ("[methods]\ngas = 3", "[methods], gas", "3 is not a gas method of this version"),
     ('[methods]\ndownhill_recovery = "yes"', "[methods], downhill_recovery", "not true or false"),
     ("[recommendation]\ngross_factor = 0.9", "[recommendation], gross_factor", "0.9 is less than 1"),
     ("[recommendation]\ngross_factor = inf", "[recommendation], gross_factor", "not a finite number"),
     ("[recommendation]\ncoverage_minimum = nan", "[recommendation], coverage_minimum", "not a finite number"),
     ("[defaults]\nfittings_allowance = -0.1", "[defaults], fittings_allowance", "less than 0"),
     ("[defaults.roughness]\nsteel = '-1 mm'", "[defaults], roughness, steel", "not negative"),
+    (
+        "[defaults.roughness]\nsteel = '0.11 m'",
+        "[defaults], roughness, steel",
+        "'0.11 m': no pipe is rougher than 100 mm",
+    ),
     ('[units]\npressure = "bar"', "[units], pressure", "gauge or absolute"),
     ('[units]\npresure = "barg"', "[units], presure", "no dimension"),
     ('[columns]\n"Q" = { field = "flow_mas" }', "[columns], Q, field", "'flow_mas' is no field"),
@@ -118,6 +126,19 @@ def test_each_problem_names_its_place(tmp_path: Path, text: str, place: str, wor
     assert "project.toml" in problem.where
     assert words in problem.what
     assert problem.remedy
+
+
+@pytest.mark.parametrize(
+    ("text", "remedy"),
+    [
+        ('gas = "adiabatic"', "The gas methods of this version: 'isothermal'."),
+        ('two_phase = "friedel"', "The two-phase methods of this version: 'beggs-brill' or 'homogeneous'."),
+        ('fittings = "darby-3k"', "The fittings methods of this version: 'crane'."),
+    ],
+)
+def test_an_unknown_method_is_told_the_known_ones(tmp_path: Path, text: str, remedy: str) -> None:
+    (problem,) = problems_of(tmp_path, f"[methods]\n{text}")
+    assert problem.remedy == remedy
 
 
 def test_missing_file(tmp_path: Path) -> None:

@@ -231,7 +231,16 @@ def schedule_exists(case: LineCase) -> Outcome:
 def phase_change(case: LineCase) -> Outcome:
     if case.line.phase != "liquid":
         return NONE
-    return at_most(case.line["vapour_pressure"], case.line["pressure"])
+    line = case.line
+    if not line.basis:
+        return NOT_CHECKED, line["vapour_pressure"], math.nan
+    pipe = make_pipe(line)
+    known = pipe.bore + pipe.roughness + pipe.length + pipe.fittings_length + line["viscosity"]
+    losses = case.result.dp_without_static if case.flows else 0.0 * known
+    fall = losses + line["density"] * GRAVITY * line["elevation_change"]
+    other_end = line["pressure"] - fall if line.basis == "inlet" else line["pressure"] + fall
+    lowest = min(line["pressure"], other_end) if other_end > 0 else math.nan
+    return at_most(line["vapour_pressure"], lowest)
 
 
 RULES: dict[str, Callable[[LineCase], Outcome]] = {
