@@ -16,7 +16,6 @@ from checker.criteria.load import load_criteria
 from checker.deviations import Deviation, DeviationFile, load_deviations, where_approved
 from checker.errors import InputError, Problem, ToolFaultError
 from checker.evaluation.values import Values, known_fields
-from checker.hydraulics.compose import Methods
 from checker.intake import read_line_list
 from checker.recommendation import recommend
 from checker.review_basis import UNMATCHED_WORDS, service_matches
@@ -76,7 +75,6 @@ def review(
         raise InputError(Problem("an equipment list is not read by this version.", os.fspath(equipment), remedy))
     found = load_rules(known_fields=known_fields(), folder=None if rules is None else Path(rules))
     used_criteria = load_criteria(None if criteria is None else Path(criteria))
-    _check_methods(used_criteria.gas_method, used_criteria.two_phase_method, used_criteria.source.name)
     _check_forces(used_criteria, found)
     used_classes = None if classes is None else load_classes(Path(classes), units=used_criteria.units)
     approvals = (
@@ -89,14 +87,6 @@ def review(
     )
     values = Values(line_list=listed, criteria=used_criteria, classes=used_classes)
     return evaluate(values, found, approvals=approvals, today=today or date.today())
-
-
-def _check_methods(gas: str, two_phase: str, file: str) -> None:
-    try:
-        Methods(gas=gas, two_phase=two_phase)  # type: ignore[arg-type]
-    except ValueError as error:
-        remedy = "Use a method of this version, see `linelist template`."
-        raise InputError(Problem(f"{error}.", f"{file}, table [methods]", remedy)) from error
 
 
 def evaluate(values: Values, rules: tuple[Rule, ...], *, approvals: DeviationFile | None, today: date) -> Review:

@@ -13,7 +13,7 @@ from checker.evaluation.gaps import asked_for, is_open
 from checker.evaluation.provider import provider
 from checker.model import Coded, Gap, Source
 from checker.pipe.roughness import roughness_by_material
-from checker.pipe.sizes import look_up
+from checker.pipe.sizes import look_up, normalised_schedule
 
 __all__ = ["PROVIDERS", "SCHEDULE_CLASS", "SCHEDULE_LISTED", "SCHEDULE_NONE", "SCHEDULE_NOT_KNOWN"]
 
@@ -99,6 +99,11 @@ def schedule_used(
     }
 
 
+def _understood(schedule: Coded) -> BoolArray:
+    """Return True where a schedule is one that the tables know, whatever the size."""
+    return schedule.where([bool(normalised_schedule(text)) for text in schedule.texts])
+
+
 def _contradictory(
     *, inside: FloatArray, outside: FloatArray, wall: FloatArray, size_outside: FloatArray, schedule_wall: FloatArray
 ) -> BoolArray:
@@ -153,7 +158,7 @@ def pipe(
         "inside_diameter": inside,
         "pipe_contradictory": contradictory,
         "inside_diameter_assumed": by_schedule & schedule_used_assumed,
-        "schedule_exists": np.where(np.isfinite(size) & (schedule_used.codes >= 0), found.exists, -1).astype(np.int8),
+        "schedule_exists": np.where(np.isfinite(size) & _understood(schedule_used), found.exists, -1).astype(np.int8),
     }
 
 

@@ -13,6 +13,7 @@ from checker.fields import Field, field_named
 from checker.hydraulics.compose import STATUS_SENTENCES
 from checker.hydraulics.fittings import read_fittings
 from checker.model import Coded, Gap, Phase
+from checker.pipe.sizes import normalised_schedule
 
 __all__ = ["Reason", "is_missing", "why_missing"]
 
@@ -177,6 +178,9 @@ def _schedule(values: Values, line_case: int) -> Reason:
             return gap_sentence(values, field, line_case)
     if is_missing(values, "size", line_case):
         return gap_sentence(values, "size", line_case)
+    schedule = values["schedule_used"].text(line_case)
+    if schedule and not normalised_schedule(schedule):
+        return f"schedule {_quoted(schedule)} is none that ASME B36.10M or B36.19M names"
     return "neither the list nor the class gives a schedule, so that there is none to look up"
 
 
