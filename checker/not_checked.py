@@ -30,6 +30,7 @@ def not_checked_groups(
     """Return the outcomes `not checked`, grouped by rule and reason, the most frequent first."""
     counts: dict[tuple[str, str], int] = {}
     lines: dict[tuple[str, str], dict[str, None]] = {}
+    examples: dict[tuple[str, str], str] = {}
     line_list = values.line_list
     for index, rule in enumerate(judgement.rules):
         said = judged(rule)
@@ -40,6 +41,7 @@ def not_checked_groups(
             counts[key] = counts.get(key, 0) + 1
             number = line_list.line_number[int(line_list.line[line_case])]
             lines.setdefault(key, {}).setdefault(number)
+            examples.setdefault(key, reason)
     groups = [
         NotCheckedGroup(rule, reason, counts[rule, reason], tuple(lines[rule, reason])) for rule, reason in counts
     ]

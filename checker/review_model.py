@@ -58,12 +58,13 @@ class OutcomeRow:
 
 @dataclass(frozen=True, slots=True)
 class NotCheckedGroup:
-    """Outcomes that could not be judged for one and the same kind of reason."""
+    """Outcomes that could not be judged for one and the same kind of reason; the example names its cell."""
 
     rule: str
     reason: str
     count: int
     lines: tuple[str, ...]
+    example: str = ""
 
 
 @dataclass(frozen=True, slots=True)

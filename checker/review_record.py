@@ -208,6 +208,11 @@ class Review:
         return basis_of(self.values, deviations=self.applied.source)
 
     @property
+    def revisions(self) -> tuple[str, ...]:
+        """Revisions that the rows of the list state."""
+        return tuple(sorted(self.values.line_list.text("revision").texts))
+
+    @property
     def understood(self) -> tuple[str, ...]:
         """How the list was read."""
         return self.values.line_list.notes

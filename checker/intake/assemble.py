@@ -8,16 +8,16 @@ from dataclasses import dataclass, field
 import numpy as np
 
 from checker.fields import Field
-from checker.intake.case_names import canonical_case, case_kind
-from checker.intake.columns import PlannedColumn
+from checker.intake.case_kinds import case_kinds
+from checker.intake.case_names import canonical_case
 from checker.intake.convert import ConvertedNumbers, ConvertedTexts
 from checker.intake.number_cells import KINEMATIC, SPECIFIC_GRAVITY
+from checker.intake.planned import FLOWS, PlannedColumn
 from checker.intake.texts import place, shown
-from checker.model import BoolArray, CaseKind, CodeArray, Coded, FloatArray, Gap, IntArray
+from checker.model import BoolArray, CodeArray, Coded, FloatArray, Gap, IntArray
 
 __all__ = ["Assembly", "assemble"]
 
-FLOWS = ("flow_mass", "flow_volume", "flow_standard")
 STATE_FIELDS = frozenset(
     {
         "pressure", "temperature", "density", "viscosity", "vapour_fraction", "compressibility", "liquid_density",
@@ -52,6 +52,7 @@ class _Grid:
     cases: tuple[str, ...]
     rows: IntArray
     file: str
+    header_row: int
 
 
 def _column_for(columns: Sequence[PlannedColumn], case: str) -> PlannedColumn | None:
@@ -63,7 +64,7 @@ def _refusal_texts(column: PlannedColumn, converted: Converted, grid: _Grid, cas
     step, name = len(grid.cases), column.field.name
     whole = converted.column_refusal if isinstance(converted, ConvertedNumbers) else ""
     if whole:
-        sentence = f"{place(grid.file, None, column.header)}: {whole}"
+        sentence = f"{place(grid.file, grid.header_row, column.header)}: {whole}"
         mine = np.flatnonzero(converted.gaps == Gap.REFUSED) * step + case
         into.refusals.update(dict.fromkeys(((name, index) for index in mine.tolist()), sentence))
     file, header, rows = place(grid.file), shown(column.header), grid.rows.tolist() if converted.reasons else []
@@ -137,17 +138,6 @@ def _water_or_air(name: str, rests_on: CodeArray, columns: Sequence[PlannedColum
     _refuse(name, np.flatnonzero(wrong).astype(np.int32), reason, columns, into)
 
 
-def _no_flow(into: Assembly) -> BoolArray:
-    """Return where every flow that is not blank is zero, and at least one is."""
-    zero = np.zeros(into.line.shape, dtype=np.bool_)
-    other = zero.copy()
-    for name in FLOWS:
-        if name in into.numbers:
-            zero |= into.numbers[name] == 0.0
-            other |= (into.numbers[name] > 0.0) | np.isin(into.gaps[name], (Gap.HOLD, Gap.REFUSED))
-    return zero & ~other
-
-
 def _case_codes(case_column: Coded | None, cases: Sequence[str], lines: int) -> Coded:
     if case_column is None:
         return Coded(np.tile(np.arange(len(cases), dtype=np.int32), lines), tuple(cases))
@@ -174,11 +164,15 @@ def _composite(columns: Mapping[str, Sequence[PlannedColumn]], cases: Sequence[s
     return np.tile(np.array(mixed, dtype=np.bool_), lines)
 
 
-def _kinds(case: Coded, no_flow: BoolArray) -> CodeArray:
-    table = np.array([*(case_kind(name) for name in case.texts), CaseKind.UNKNOWN], dtype=np.int8)
-    kinds: CodeArray = table[case.codes]
-    kinds[no_flow & (kinds != CaseKind.UNKNOWN) & (kinds != CaseKind.MECHANICAL_ONLY)] = CaseKind.NO_FLOW
-    return kinds
+def _own_flows(
+    columns: Mapping[str, Sequence[PlannedColumn]], cases: Sequence[str], lines: int
+) -> dict[str, BoolArray]:
+    """Return where the column of each flow names the case."""
+    own = {}
+    for name in (name for name in FLOWS if name in columns):
+        mine = [any(column.case == case for column in columns[name]) for case in cases]
+        own[name] = np.tile(np.array(mine, dtype=np.bool_), lines)
+    return own
 
 
 def assemble(
@@ -188,6 +182,7 @@ def assemble(
     cases: Sequence[str],
     rows: IntArray,
     file: str,
+    header_row: int,
 ) -> Assembly:
     """Spread the columns over the line cases.
 
@@ -203,8 +198,10 @@ def assemble(
         Row of each line.
     file : str
         Name of the file, for the sentences of refusals.
+    header_row : int
+        Row of the headers, where the sentence on a whole column points.
     """
-    grid = _Grid(rows.size, tuple(cases) or ("normal",), rows, file)
+    grid = _Grid(rows.size, tuple(cases) or ("normal",), rows, file, header_row)
     by_field: dict[str, list[PlannedColumn]] = {}
     for column in columns:
         by_field.setdefault(column.field.name, []).append(column)
@@ -223,5 +220,6 @@ def assemble(
         _water_or_air(name, rests_on[name], by_field[name], into)
     for name in (name for name in rests_on if name in DENSITY_OF):
         _with_density(name, rests_on[name], by_field[name], into)
-    into.case_kind = _kinds(case, _no_flow(into))
+    own = _own_flows(by_field, grid.cases, grid.lines)
+    into.case_kind = case_kinds(case, line, into.numbers, into.gaps, own)
     return into

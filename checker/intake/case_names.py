@@ -3,12 +3,13 @@
 from __future__ import annotations
 
 import re
+from collections.abc import Callable
 from functools import lru_cache
 
-from checker.intake.texts import fold_words
+from checker.intake.texts import fold_words, tidy
 from checker.model import CaseKind
 
-__all__ = ["canonical_case", "case_kind", "split_case"]
+__all__ = ["canonical_case", "case_kind", "split_case", "split_mechanical_case"]
 
 _SPELLINGS = {
     "minimum": "min; minimum; mini; turndown; turn down",
@@ -34,12 +35,16 @@ _SPELLINGS = {
     "start of run": "start of run; sor",
     "end of run": "end of run; eor",
     "future": "future",
+    "intermittent": "intermittent",
 }
 _INTERMITTENT = re.compile(
     r"relie(f|ving)|\bpsv\b|start-? ?up|shut-? ?down|blow-? ?down|depress|steam(ing)?-? ?out|regen|dry-? ?out|"
-    r"emergency|pigging|flush|purg(e|ing)|upset|commissioning|drain(ing)?\b|evacuation"
+    r"emergency|pigging|flush|purg(e|ing)|upset|commissioning|drain(ing)?\b|evacuation|\bintermittent"
 )
 _MECHANICAL = re.compile(r"(mechanical|mech)( design)?|design|hydro ?test|hydrostatic test|pressure test|test")
+_NO_FLOW = re.compile(r"(normally )?no ?(normal )?flow|zero flow|nnf|no flow normally")
+_MECHANICAL_WORDS = frozenset({"design", "mechanical", "mech", "mechanical design", "test", "hydrotest", "hydro test"})
+_MARKS = {"%": "percentsign", "+": "plussign", "-": "minussign"}
 _NUMBERED = re.compile(r"(design|case|alternate|alt|alternative|relief) ([0-9]{1,3}|[a-z])")
 
 
@@ -48,34 +53,70 @@ def _canonical() -> dict[str, str]:
     return {text.strip(): name for name, texts in _SPELLINGS.items() for text in texts.split(";")}
 
 
+def _words(text: str) -> str:
+    """Return the folded words of a case name; a percentage keeps its signs, for it is another case without them."""
+    if "%" not in text:
+        return fold_words(text)
+    marked = re.sub(r"%|[-+](?=\s*\d)", lambda match: f" {_MARKS[match[0]]} ", tidy(text))
+    words = fold_words(marked)
+    for sign, word in _MARKS.items():
+        words = words.replace(word, sign)
+    return words
+
+
 def canonical_case(text: str) -> str:
     """Return the canonical name of a case, or its folded words where it is no usual one."""
-    words = fold_words(text)
-    words = re.sub(r" (case|flow)$|^case (?=[a-z]{2})", "", words) or words
-    return _canonical().get(words, words)
+    words = _words(text)
+    words = re.sub(r" case$|^case (?=[a-z]{2})", "", words) or words
+    without_flow = words.removesuffix(" flow")
+    usual = _case_of_words(without_flow) or (without_flow if _MECHANICAL.fullmatch(without_flow) else "")
+    return usual or words
 
 
 def case_kind(name: str) -> CaseKind:
     """Return what kind of case a canonical name means; a name that says nothing is a continuous case."""
     if not name:
         return CaseKind.UNKNOWN
-    if _MECHANICAL.fullmatch(fold_words(name)):
+    words = fold_words(name)
+    if _MECHANICAL.fullmatch(words):
         return CaseKind.MECHANICAL_ONLY
+    if _NO_FLOW.fullmatch(words):
+        return CaseKind.NO_FLOW
     return CaseKind.INTERMITTENT if _INTERMITTENT.search(name) else CaseKind.CONTINUOUS
 
 
 def _case_of_words(words: str) -> str:
-    return _canonical().get(words, words if _NUMBERED.fullmatch(words) else "")
+    name = words.removesuffix(" case")
+    return _canonical().get(name, name if _NUMBERED.fullmatch(name) else "")
 
 
-def split_case(words: str) -> list[tuple[str, str]]:
-    """Return every way to split the folded words of a header into a case and the rest."""
+def _mechanical_of_words(words: str) -> str:
+    name = words.removesuffix(" case")
+    return name if name in _MECHANICAL_WORDS else ""
+
+
+def _splits(words: str, case_of: Callable[[str], str]) -> list[tuple[str, str]]:
     parts = words.split()
     splits = []
-    for count in (3, 2, 1):
+    for count in (4, 3, 2, 1):
         for start in range(len(parts) - count + 1):
-            case = _case_of_words(" ".join(parts[start : start + count]))
+            case = case_of(" ".join(parts[start : start + count]))
             rest = " ".join(parts[:start] + parts[start + count :])
             if case and rest:
                 splits.append((case, rest))
     return splits
+
+
+def split_case(words: str) -> list[tuple[str, str]]:
+    """Return every way to split the folded words of a header into a case and the rest."""
+    splits = _splits(words, _case_of_words)
+    parts = words.split()
+    if "intermittent" in parts and len(splits) > 1:
+        others = " ".join(part for part in parts if part != "intermittent")
+        splits = [(f"{case} intermittent", rest) for case, rest in _splits(others, _case_of_words)] + splits
+    return splits
+
+
+def split_mechanical_case(words: str) -> list[tuple[str, str]]:
+    """Return every way to split folded words into design, test or the like and the rest: a flow may name them too."""
+    return _splits(words, _mechanical_of_words)

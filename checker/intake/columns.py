@@ -2,56 +2,43 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Collection, Mapping, Sequence
 from dataclasses import dataclass, replace
 from itertools import islice
 
 from checker.criteria.hints import ColumnHint
 from checker.errors import InputError, Problem
-from checker.fields import Field, all_fields, field_named
-from checker.intake.case_names import canonical_case
-from checker.intake.headers import read_header, unit_in_header
+from checker.fields import Field
+from checker.intake.column_cases import named_cases, one_case, with_cases
+from checker.intake.column_hints import absent_headers, hinted_column
+from checker.intake.headers import read_header, says_reid
 from checker.intake.layout import Layout
+from checker.intake.planned import PlannedColumn
 from checker.intake.sizes import column_basis
-from checker.intake.texts import fold_words, key_of, place, shown
+from checker.intake.texts import key_of, place, shown
 from checker.intake.unit_words import settled_by, size_basis, unit_in_cell, unit_or_refusal
-from checker.units import Unit, read_unit
+from checker.intake.unread_headers import unread_reason
+from checker.units import read_unit
 
-__all__ = ["Plan", "PlannedColumn", "hint_fields", "number_columns", "plan_columns"]
+__all__ = ["Plan", "number_columns", "plan_columns"]
 
 DESCRIPTIVE = frozenset({"area", "drawing", "remarks", "revision"})
 UNITLESS = frozenset({"dimensionless", "fraction"})
 CELLS_LOOKED_AT = 2_000
-_CASE_ORDER = ("minimum", "normal", "maximum")
-
-
-@dataclass(frozen=True, slots=True)
-class PlannedColumn:
-    """One column that will be read.
-
-    `unit` is the unit as written, `reading` the unit understood (None for texts and sizes, and where `refusal` says why
-    bare numbers cannot be read), `basis` the basis of bare sizes, `hinted` whether the criteria name the column.
-    """
-
-    index: int
-    header: str
-    field: Field
-    case: str = ""
-    unit: str = ""
-    reading: Unit | None = None
-    refusal: str = ""
-    basis: str = ""
-    hinted: bool = False
 
 
 @dataclass(frozen=True)
 class Plan:
-    """Columns to be read, headers no field claimed, cases named by columns, and what to say."""
+    """Columns to be read, headers no field claimed, cases named by columns, what to say, and what is an open item.
+
+    `unread` holds headers that are open items, each with its sentence.
+    """
 
     columns: tuple[PlannedColumn, ...]
     unmatched: tuple[str, ...]
     cases: tuple[str, ...]
     notes: tuple[str, ...]
+    unread: tuple[tuple[str, str], ...]
 
 
 @dataclass(frozen=True)
@@ -64,40 +51,17 @@ class _Draft:
     hinted: bool
 
 
-def hint_fields(hints: Mapping[str, ColumnHint]) -> dict[str, str]:
-    """Return the field that the criteria give each header, by folded header."""
-    return {key_of(header): hint.field for header, hint in hints.items()}
-
-
-def _hinted(index: int, header: str, hint: ColumnHint, file: str) -> _Draft | None:
-    if not hint.field:
-        return None
-    names = {field.name for field in all_fields()}
-    if hint.field not in names:
-        raise InputError(
-            Problem(
-                f"[columns] gives the field '{hint.field}', which is no field of a line list.",
-                where=place(file, None, header),
-                remedy="`linelist fields` lists them.",
-            )
-        )
-    field = field_named(hint.field)
-    unit = hint.unit or ("" if field.kind == "text" else unit_in_header(header, field))
-    case = canonical_case(hint.case) if hint.case else ""
-    return _Draft(index, header, (field,), unit, case, True)
-
-
 def _drafts(layout: Layout, hints: Mapping[str, ColumnHint], file: str) -> list[_Draft]:
     by_key = {key_of(header): hint for header, hint in hints.items()}
     drafts = []
     for index, header in enumerate(layout.headers):
         hint = by_key.get(key_of(header)) if header else None
         reading = None if hint is not None else read_header(header)
-        draft = None if hint is None else _hinted(index, header, hint, file)
         if reading is not None:
-            draft = _Draft(index, header, reading.fields, reading.unit, reading.case, False)
-        if draft is not None:
-            drafts.append(draft)
+            drafts.append(_Draft(index, header, reading.fields, reading.unit, reading.case, False))
+        hinted = hint and hinted_column(header, hint, row_unit=layout.units[index], file=file, row=layout.header_row)
+        if hinted:
+            drafts.append(_Draft(index, header, (hinted.field,), hinted.unit, hinted.case, True))
     return drafts
 
 
@@ -180,22 +144,6 @@ def _measured(
     return replace(column, unit="")
 
 
-def _normal_named(columns: list[PlannedColumn]) -> list[PlannedColumn]:
-    """Give ``Normal pressure`` to the case normal where other columns of its field name cases."""
-    named = {(column.field.name, column.case) for column in columns}
-    with_cases = {field for field, case in named if case}
-    return [
-        replace(column, case="normal")
-        if not column.case
-        and not column.hinted
-        and column.field.name in with_cases
-        and (column.field.name, "normal") not in named
-        and fold_words(column.header).split()[0] in ("normal", "norm")
-        else column
-        for column in columns
-    ]
-
-
 def _without_overruled(columns: list[PlannedColumn]) -> list[PlannedColumn]:
     """Leave out a column whose field and case the criteria give to another one."""
     taken = {(column.field.name, column.case) for column in columns if column.hinted}
@@ -232,18 +180,6 @@ def _refuse_duplicates(columns: Sequence[PlannedColumn], file: str, row: int) ->
         raise InputError(problems)
 
 
-def _cases(columns: Sequence[PlannedColumn]) -> tuple[str, ...]:
-    named = dict.fromkeys(column.case for column in columns if column.case)
-    return (*(case for case in _CASE_ORDER if case in named), *(case for case in named if case not in _CASE_ORDER))
-
-
-def _one_case(columns: Sequence[PlannedColumn], cases: Sequence[str]) -> list[PlannedColumn]:
-    """Give a contractor's stated result that names no case to the case normal, where there are several."""
-    if len(cases) < 2:
-        return list(columns)
-    return [replace(c, case="normal") if c.field.one_case and not c.case else c for c in columns]
-
-
 def _notes(
     columns: Sequence[PlannedColumn], left_out: Sequence[PlannedColumn], cases: Sequence[str], layout: Layout
 ) -> list[str]:
@@ -261,6 +197,53 @@ def _notes(
         names = ", ".join(map(shown, stated))
         notes.append(f"Columns that name no case in a list without a normal case, not compared: {names}.")
     return notes
+
+
+def _notes_aside(
+    columns: Sequence[PlannedColumn], overruled: Sequence[PlannedColumn], repeated: Sequence[PlannedColumn]
+) -> list[str]:
+    """Return what to say of columns that are not read, or read against their words, because the criteria say so."""
+    return [
+        *(f"Column {shown(c.header)}: [columns] gives its field to another column, not read." for c in overruled),
+        *(
+            f"Column {shown(c.header)}: the field {c.field.name} is read from an earlier column, not here."
+            for c in repeated
+        ),
+        *(
+            f"Column {shown(c.header)}: [columns] takes a Reid vapour pressure for the {c.field.meaning}."
+            for c in columns
+            if c.hinted and c.field.name == "vapour_pressure" and says_reid(c.header)
+        ),
+    ]
+
+
+def _has_case_column(columns: Sequence[PlannedColumn]) -> bool:
+    return any(column.field.name == "case" for column in columns)
+
+
+def _unread_headers(
+    layout: Layout,
+    cells: Sequence[Sequence[str]],
+    unmatched: Sequence[int],
+    left_out: Sequence[PlannedColumn],
+    settled: Collection[int],
+    hints: Mapping[str, ColumnHint],
+) -> list[tuple[str, str]]:
+    """Return the headers that are open items: those that name a case beside a case column, and those in doubt."""
+    aside = {column.index: column.case for column in left_out}
+    keys = {key_of(header) for header in hints}
+    found = []
+    for index in unmatched:
+        header = layout.headers[index]
+        if index in aside:
+            reason = f"{shown(header)} names the case '{aside[index]}' in a list with a case column, so it is not read."
+        elif index in settled or key_of(header) in keys:
+            reason = ""
+        else:
+            reason = unread_reason(header, row_unit=layout.units[index], cells=cells[index])
+        if reason:
+            found.append((header, reason))
+    return found
 
 
 def plan_columns(
@@ -305,17 +288,25 @@ def plan_columns(
         )
         for draft in _drafts(layout, hints, file)
     ]
-    columns = _without_overruled(_normal_named(columns))
-    by_rows = any(column.field.name == "case" for column in columns)
-    left_out = [column for column in columns if by_rows and column.case]
-    columns, repeated = _without_repeated([column for column in columns if column not in left_out])
-    _refuse_duplicates(columns, file, layout.header_row)
-    cases = _cases(columns)
-    columns = [_measured(c, layout, units, cells[c.index], comma) for c in _one_case(columns, cases)]
-    read = {column.index for column in columns}
-    unmatched = tuple(header for index, header in enumerate(layout.headers) if header and index not in read)
-    notes = [
-        f"Column {shown(column.header)}: the field {column.field.name} is read from an earlier column, not here."
-        for column in repeated
-    ]
-    return Plan(tuple(columns), unmatched, cases, (*_notes(columns, left_out, cases, layout), *notes))
+    left_out = [column for column in columns if column.case] if _has_case_column(columns) else []
+    kept = _without_overruled([column for column in columns if column not in left_out])
+    if not left_out:
+        kept = _without_overruled(with_cases(kept, file=file, row=layout.header_row))
+    overruled = [column for column in columns if column.index not in {c.index for c in (*kept, *left_out)}]
+    kept, repeated = _without_repeated(kept)
+    _refuse_duplicates(kept, file, layout.header_row)
+    cases = named_cases(kept)
+    kept = [_measured(c, layout, units, cells[c.index], comma) for c in one_case(kept, cases)]
+    read = {column.index for column in kept}
+    unmatched = [index for index, header in enumerate(layout.headers) if header and index not in read]
+    settled = {column.index for column in (*overruled, *repeated)}
+    return Plan(
+        tuple(kept),
+        tuple(layout.headers[index] for index in unmatched),
+        cases,
+        (*_notes(kept, left_out, cases, layout), *_notes_aside(kept, overruled, repeated)),
+        (
+            *_unread_headers(layout, cells, unmatched, left_out, settled, hints),
+            *absent_headers(hints, layout.headers),
+        ),
+    )

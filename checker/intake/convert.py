@@ -10,9 +10,9 @@ from numpy.typing import NDArray
 
 from checker.fields import Field
 from checker.intake.cells import CodedCells, NumberCells
-from checker.intake.columns import PlannedColumn
 from checker.intake.number_cells import NumberContext, read_number_cell, unit_rests_on
 from checker.intake.placeholders import OPEN_WORDS, holds, placeholder
+from checker.intake.planned import PlannedColumn
 from checker.intake.sizes import read_size
 from checker.intake.texts import shown, tidy
 from checker.intake.unit_words import unit_or_refusal
@@ -116,15 +116,16 @@ def _in_si(plain: FloatArray, context: NumberContext) -> ConvertedNumbers:
 
 def _read_odd(texts: Sequence[str], odd: IndexArray, converted: ConvertedNumbers, context: NumberContext) -> None:
     """Read the cells that are no plain numbers, each distinct text once."""
-    mine = [texts[index] for index in odd.tolist()]
-    readings = {text: read_number_cell(text, context) for text in dict.fromkeys(mine)}
-    found = [readings[text] for text in mine]
-    converted.values[odd] = [reading.value for reading in found]
-    converted.gaps[odd] = [reading.gap for reading in found]
-    converted.rests_on[odd] = [reading.rests_on for reading in found]
-    for index, reading in zip(odd.tolist(), found, strict=True):
-        if reading.gap is Gap.REFUSED and reading.reason is not context.refusal:
-            converted.reasons[index] = reading.reason
+    distinct: dict[str, int] = {}
+    codes = np.fromiter((distinct.setdefault(texts[index], len(distinct)) for index in odd.tolist()), np.intp, odd.size)
+    readings = [read_number_cell(text, context) for text in distinct]
+    converted.values[odd] = np.array([reading.value for reading in readings], dtype=np.float64)[codes]
+    converted.gaps[odd] = np.array([reading.gap for reading in readings], dtype=np.int8)[codes]
+    converted.rests_on[odd] = np.array([reading.rests_on for reading in readings], dtype=np.int8)[codes]
+    explained = [reading.gap is Gap.REFUSED and reading.reason is not context.refusal for reading in readings]
+    refused = np.flatnonzero(np.array(explained, dtype=np.bool_)[codes])
+    for index, code in zip(odd[refused].tolist(), codes[refused].tolist(), strict=True):
+        converted.reasons[index] = readings[code].reason
 
 
 def _spread(distinct: ConvertedNumbers, codes: IntArray) -> ConvertedNumbers:

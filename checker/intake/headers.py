@@ -8,16 +8,18 @@ from dataclasses import dataclass
 from functools import cache, lru_cache
 
 from checker.fields import Field, all_fields
-from checker.intake.case_names import split_case
+from checker.intake.case_names import split_case, split_mechanical_case
+from checker.intake.planned import FLOWS
 from checker.intake.texts import fold_words, key_of
 from checker.intake.unit_words import is_unit_text, size_basis, unit_or_refusal
 
-__all__ = ["HeaderReading", "read_header", "unit_in_header"]
+__all__ = ["HeaderReading", "read_header", "says_reid", "unit_in_header", "unit_of_name", "units_in_header"]
 
 LONGEST_HEADER = 120
 _IMPLIED = {"nps": "NPS", "dn": "DN", "sg": "SG", "spgr": "SG", "specificgravity": "SG"}
 _OPENING, _CLOSING = "[(", "])"
 _NOTE = re.compile(r"(see )?notes?\b.*|[0-9*]{0,2}|refer .*")
+_REID = re.compile(r"\b(?:reid|rvp|rvpe|r v p)\b")
 _LONGEST_UNIT_WORDS = 4
 _MOST_WORDS = 14
 
@@ -114,6 +116,15 @@ def _splits(header: str) -> Iterator[_Split]:
                 yield _Split(" ".join(words[:start] + words[start + count :]), unit, False)
 
 
+def _has_cases(field: Field) -> bool:
+    return field.per_case and field.name != "case"
+
+
+def says_reid(header: str) -> bool:
+    """Return whether a header names a Reid vapour pressure, which is no true vapour pressure."""
+    return _REID.search(fold_words(header)) is not None
+
+
 def _named(name: str) -> tuple[tuple[Field, ...], str]:
     """Return the fields and the case that the words of a header name."""
     words = fold_words(name)
@@ -121,12 +132,13 @@ def _named(name: str) -> tuple[tuple[Field, ...], str]:
     if fields or not words:
         return fields, ""
     for case, rest in split_case(words):
-        fields = tuple(field for field in _spellings().get(rest.replace(" ", ""), ()) if field.per_case)
+        fields = tuple(field for field in _spellings().get(rest.replace(" ", ""), ()) if _has_cases(field))
         if fields:
             return fields, case
-    parts = words.split()
-    if parts[0] == "design" and " ".join(parts[1:]) in ("flow", "mass flow", "flow rate", "volume flow", "flowrate"):
-        return tuple(field for field in _spellings()[words[6:].replace(" ", "")] if field.per_case), "design flow"
+    for case, rest in split_mechanical_case(words):
+        fields = tuple(field for field in _spellings().get(rest.replace(" ", ""), ()) if field.name in FLOWS)
+        if fields:
+            return fields, case
     return (), ""
 
 
@@ -166,9 +178,10 @@ def read_header(header: str) -> HeaderReading | None:
     """Return what a header says, None where no field claims it.
 
     A name is matched whole before a case word is split off it, so that ``Min. Design Temp`` stays one field. A unit in
-    brackets that no field of that name can have is kept as written: its column is refused, not guessed.
+    brackets that no field of that name can have is kept as written: its column is refused, not guessed. A header that
+    says Reid is claimed by no field.
     """
-    if not header.strip() or len(header) > LONGEST_HEADER:
+    if not header.strip() or len(header) > LONGEST_HEADER or says_reid(header):
         return None
     doubtful: HeaderReading | None = None
     for split in _splits(header):
@@ -190,3 +203,15 @@ def unit_in_header(header: str, field: Field) -> str:
     fitting = [unit for unit in units if _fits(field, unit)]
     bracketed = [split.unit for split in _splits(header) if split.unit and split.bracketed]
     return next(iter(fitting or bracketed), "")
+
+
+def unit_of_name(header: str) -> str:
+    """Return the unit that the name of a column itself implies (``SG``, ``NPS``, ``DN``), else an empty text."""
+    return _IMPLIED.get(key_of(header), "")
+
+
+def units_in_header(header: str, *, bracketed: bool = False) -> list[str]:
+    """Return every text of a header that may be its unit, the likeliest first; only those in brackets if asked."""
+    if len(header) > LONGEST_HEADER:
+        return []
+    return [split.unit for split in _splits(header) if split.unit and (split.bracketed or not bracketed)]

@@ -108,8 +108,10 @@ def _named(rows: Sequence[int]) -> str:
 
 def _why_no_line(number: str, header: str, columns: Sequence[Sequence[str]], line_column: int, index: int) -> str:
     """Return why a row is no line, empty where it is one."""
-    if _NO_NUMBER.match(number):
-        return "it has no line number, so it is not a line and is not checked."
+    values = _values(columns, line_column, index)
+    if not number or (not values and _NO_NUMBER.match(number)):
+        left = f": {values} value{'' if values == 1 else 's'} left unread" if values else ""
+        return f"it has no line number, so it is not a line and is not checked{left}."
     if _NO_LINE.match(number):
         return "it is a total or the foot of a page, not a line."
     if number.casefold() == header.casefold():
@@ -119,6 +121,12 @@ def _why_no_line(number: str, header: str, columns: Sequence[Sequence[str]], lin
     ):
         return "it is a note, not a line."
     return ""
+
+
+def _values(columns: Sequence[Sequence[str]], line_column: int, index: int) -> int:
+    """Return how many cells of a row hold something besides its line number; a dash holds nothing."""
+    cells = (column[index].strip() for position, column in enumerate(columns) if position != line_column)
+    return sum(not _NO_NUMBER.fullmatch(cell) for cell in cells)
 
 
 def _suspects(numbers: Sequence[str], header: str) -> list[int]:

@@ -14,11 +14,13 @@ from checker.criteria.hints import ColumnHint
 from checker.errors import InputError, Problem
 from checker.intake.assemble import Assembly, Converted, assemble
 from checker.intake.cells import NumberCells
-from checker.intake.columns import Plan, PlannedColumn, hint_fields, number_columns, plan_columns
+from checker.intake.column_hints import hint_fields
+from checker.intake.columns import Plan, number_columns, plan_columns
 from checker.intake.convert import ConvertedNumbers, convert_line_numbers, convert_numbers, convert_sizes, convert_texts
 from checker.intake.decoding import Decoded, read_text
 from checker.intake.layout import Layout, find_layout, line_number_columns
 from checker.intake.lines import Lines, find_lines
+from checker.intake.planned import PlannedColumn
 from checker.intake.records import Form, read_form
 from checker.intake.texts import place
 from checker.model import Address, Column, Gap, HoldItem, LineList, Source, UnreadItem
@@ -77,8 +79,8 @@ def read_line_list(
     Raises
     ------
     InputError
-        If the file cannot be read, holds no table, no line-number column, no line, two columns for one field, or not
-        one value besides the line numbers.
+        If the file cannot be read, holds no table, no line-number column, no line, two columns for one field in one
+        case, or not one value besides the line numbers; or if `columns` gives a unit other than the list's own.
     """
     hints, file = columns or {}, Path(path).name
     with _no_collection():
@@ -133,8 +135,16 @@ def _refuse_broken(converted: Converted, column: PlannedColumn, broken: Mapping[
     converted.holds[:] = [index for index in converted.holds if index not in broken]
 
 
+def _first_refusal(column: PlannedColumn, converted: Converted, lines: Lines, header_row: int) -> tuple[str, int]:
+    """Return the first reason why a column is not read, empty where there is none, and its row."""
+    if isinstance(converted, ConvertedNumbers) and converted.column_refusal:
+        return converted.column_refusal, header_row
+    first = min(converted.reasons, default=-1)
+    return ("", header_row) if first < 0 else (converted.reasons[first], int(lines.row[first]))
+
+
 def _refuse_if_nothing(
-    columns: Sequence[PlannedColumn], converted: Mapping[int, Converted], file: str, layout: Layout
+    columns: Sequence[PlannedColumn], converted: Mapping[int, Converted], lines: Lines, file: str, layout: Layout
 ) -> None:
     numbers = [column for column in columns if column.field.kind != "text"]
     if any(bool((converted[column.index].gaps == Gap.GIVEN).any()) for column in numbers):
@@ -147,11 +157,9 @@ def _refuse_if_nothing(
         )
     ]
     for column in numbers:
-        mine = converted[column.index]
-        reason = mine.column_refusal if isinstance(mine, ConvertedNumbers) else ""
-        reason = reason or next(iter(mine.reasons.values()), "")
+        reason, row = _first_refusal(column, converted[column.index], lines, layout.header_row)
         if reason:
-            problems.append(Problem(reason, where=place(file, None, column.header)))
+            problems.append(Problem(reason, where=place(file, row, column.header)))
     raise InputError(problems)
 
 
@@ -172,7 +180,8 @@ def _unread(
     plan: Plan, converted: Mapping[int, Converted], lines: Lines, layout: Layout, file: str
 ) -> list[UnreadItem]:
     """Return the refused headers, rows and cells, each with its sentence."""
-    items = list(lines.unread)
+    items = [UnreadItem("", header, why, Address(file, layout.header_row, header)) for header, why in plan.unread]
+    items.extend(lines.unread)
     for column in plan.columns:
         mine = converted[column.index]
         if isinstance(mine, ConvertedNumbers) and mine.column_refusal:
@@ -208,8 +217,10 @@ def _line_list(opened: _Opened, lines: Lines, plan: Plan, atmosphere: float) -> 
     for column in plan.columns:
         _refuse_broken(converted[column.index], column, lines.broken)
     read = [column for column in plan.columns if column.field.name != "line_number"]
-    _refuse_if_nothing(read, converted, opened.file, opened.layout)
-    assembly = assemble(read, converted, cases=plan.cases, rows=lines.row, file=opened.file)
+    _refuse_if_nothing(read, converted, lines, opened.file, opened.layout)
+    assembly = assemble(
+        read, converted, cases=plan.cases, rows=lines.row, file=opened.file, header_row=opened.layout.header_row
+    )
     form = " ".join([*opened.decoded.notes, *opened.form.notes])
     return LineList(
         source=Source(opened.file, opened.decoded.sha256, form),

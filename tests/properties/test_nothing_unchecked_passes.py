@@ -20,9 +20,7 @@ from hypothesis import strategies as st
 HEADER, ROWS = header_and_rows()
 LINE_COLUMN = HEADER.index("Line No.")
 CHANGEABLE = [column for column in range(len(HEADER)) if column != LINE_COLUMN]
-SERVICE = HEADER.index("Service")
 FILLINGS = ("", "HOLD", "TBC", "-", "abc", "nan", "inf", "1e999", "=1+1", "?")
-PLACEHOLDERS = ("", "HOLD", "TBC", "-")
 
 
 def newly_met(after: Outcomes, before: Outcomes) -> dict[tuple[str, str, str], str]:
@@ -50,8 +48,6 @@ def test_blanking_a_cell_never_makes_a_line_meet(column: int) -> None:
 @pytest.mark.parametrize("column", CHANGEABLE, ids=lambda column: HEADER[column])
 @pytest.mark.parametrize("filling", ["HOLD", "abc"])
 def test_a_hold_or_an_unreadable_cell_never_makes_a_line_meet(column: int, filling: str) -> None:
-    if column == SERVICE and filling not in PLACEHOLDERS:
-        filling = "TBC"  # another word is another service: it takes the general row, and the report lists it
     rows = copied_rows()
     for row in rows:
         row[column] = filling
@@ -59,14 +55,14 @@ def test_a_hold_or_an_unreadable_cell_never_makes_a_line_meet(column: int, filli
 
 
 def spoil(rows: list[list[str]], seed: int, *, most: int) -> None:
-    """Spoil some cells of each line in the ways a list has; another word for a service is a service of its own."""
+    """Spoil some cells of each line in the ways a list has."""
     chance = random.Random(seed)
     for row in rows:
         for column in chance.sample(CHANGEABLE, chance.randint(0, most)):
-            row[column] = chance.choice(PLACEHOLDERS if column == SERVICE else FILLINGS)
+            row[column] = chance.choice(FILLINGS)
 
 
-@settings(max_examples=25, deadline=None, phases=[Phase.explicit, Phase.generate])
+@settings(max_examples=60, deadline=None, phases=[Phase.explicit, Phase.generate])
 @given(seed=st.integers(0, 2**32 - 1))
 def test_any_set_of_spoiled_cells_never_makes_a_line_meet(seed: int) -> None:
     """Several cells of each line are spoiled at once."""
@@ -77,7 +73,7 @@ def test_any_set_of_spoiled_cells_never_makes_a_line_meet(seed: int) -> None:
     assert sum(done.tally.values()) == done.line_cases * done.rules_count
 
 
-@settings(max_examples=10, deadline=None, phases=[Phase.explicit, Phase.generate])
+@settings(max_examples=20, deadline=None, phases=[Phase.explicit, Phase.generate])
 @given(seed=st.integers(0, 2**32 - 1))
 def test_the_tally_adds_up_and_every_unchecked_outcome_says_why(seed: int) -> None:
     chance = random.Random(seed)
