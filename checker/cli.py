@@ -18,6 +18,8 @@ PATH = click.Path(path_type=Path)
 CONTEXT = {"help_option_names": ["-h", "--help"], "max_content_width": 100}
 FAULT_STATUS = 3
 REFUSED_STATUS = 2
+STOPPED_STATUS = 130
+MOST_CASES_EXPLAINED = 5_000
 GATE_STATUS = {"no comments": 0, "comments": 0, "revise and resubmit": 1, "incomplete": 1}
 
 
@@ -31,10 +33,16 @@ class _Commands(click.Group):
             for problem in error.problems:
                 click.echo(f"linelist: {_harmless(str(problem))}", err=True)
             ctx.exit(error.status)
-        except (click.ClickException, click.exceptions.Exit, click.Abort, KeyboardInterrupt):
+        except (click.ClickException, click.exceptions.Exit):
             raise
+        except (click.Abort, KeyboardInterrupt):
+            click.echo("linelist: stopped; no file was left half-written.", err=True)
+            ctx.exit(STOPPED_STATUS)
         except BrokenPipeError:
             ctx.exit(0)
+        except OSError as error:
+            click.echo(f"linelist: {_harmless(str(error))}. Free the place it names, or name another.", err=True)
+            ctx.exit(REFUSED_STATUS)
         except Exception as error:
             sentence = f"linelist: a fault in the tool: {type(error).__name__}: {_harmless(str(error))}"
             click.echo(
@@ -167,9 +175,16 @@ def gate(line_list: Path, json_file: Path | None, quiet: bool, **options: Any) -
         write_text(json_file, outcomes_json(done))
     click.echo(f"{done.coverage_text}\n{done.recommendation_text}")
     if not quiet:
-        click.echo("\n".join(f"  {reason}" for reason in done.reasons))
+        click.echo("\n".join(f"  {_harmless(reason)}" for reason in (*done.reasons, *_commonest_gaps(done))))
     require_no_fault(done)
     sys.exit(GATE_STATUS[done.recommendation])
+
+
+def _commonest_gaps(done: Any) -> list[str]:
+    """Return the three commonest reasons for `not checked`; a long list leaves them to `review`."""
+    if done.line_cases > MOST_CASES_EXPLAINED:
+        return []
+    return [f"not checked {group.count} times: {group.rule}: {group.example}" for group in done.not_checked_groups[:3]]
 
 
 @main.command()

@@ -42,7 +42,5 @@ def not_checked_groups(
             number = line_list.line_number[int(line_list.line[line_case])]
             lines.setdefault(key, {}).setdefault(number)
             examples.setdefault(key, reason)
-    groups = [
-        NotCheckedGroup(rule, reason, counts[rule, reason], tuple(lines[rule, reason])) for rule, reason in counts
-    ]
+    groups = [NotCheckedGroup(*key, counts[key], tuple(lines[key]), examples[key]) for key in counts]
     return tuple(sorted(groups, key=lambda group: (-group.count, group.rule, group.reason)))

@@ -23,7 +23,7 @@ ASSUMABLE: dict[str, str] = {
 }
 _SOURCES = {
     "service_code": "the general row of the phase: the service matches none of the criteria",
-    "schedule_used": "the class file, or STD (40S for stainless) where no class gives one; the list does not say",
+    "schedule_used": "STD (40S for stainless): neither the list nor a class says",
     "inside_diameter": "from the assumed schedule, ASME B36.10M / B36.19M",
     "roughness": "class file or adopted roughness of the material; the list's own column is blank",
     "compressibility": "ideal gas below 10 bar absolute, common practice; upper bound of the velocity",

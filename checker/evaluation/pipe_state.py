@@ -51,11 +51,9 @@ def _blank_where(coded: Coded, where: BoolArray) -> Coded:
 def material_used(
     *, material_listed: Coded, material_gap: CodeArray, piping_class_gap: CodeArray, class_values: ClassValues
 ) -> Named:
-    """Return the material: the list's, else the class's (assumed where the list leaves its own column blank)."""
+    """Return the material: the list's, else the class's."""
     from_class = _blank_where(class_values.material, is_open(material_gap) | is_open(piping_class_gap))
-    material = merged(material_listed, from_class)
-    assumed = (material_listed.codes < 0) & (material.codes >= 0) & asked_for(material_gap)
-    return {"material_used": material, "material_used_assumed": assumed}
+    return {"material_used": merged(material_listed, from_class)}
 
 
 def _is_stainless(coded: Coded) -> BoolArray:
@@ -77,8 +75,8 @@ def schedule_used(
 ) -> Named:
     """Return the schedule to look up: the list's, else the class's, else STD (40S for stainless) as an assumption.
 
-    The class serves as of right where the list has no schedule column; where it has one and leaves the cell blank the
-    class's schedule is an assumption. A HOLD or unreadable schedule, class or wall lets nothing stand in.
+    The class gives the schedule where the row does not: most lists carry none. A HOLD or unreadable schedule, class
+    or wall lets nothing stand in.
     """
     barred = is_open(schedule_gap) | is_open(piping_class_gap)
     from_class = _blank_where(class_values.schedule, barred)
@@ -87,13 +85,12 @@ def schedule_used(
     nothing = (listed_or_class.codes < 0) & ~barred & ~wall_by_class & (wall_thickness_gap != Gap.GIVEN)
     default = Coded(np.where(_is_stainless(material_used), 1, 0).astype(np.int32), (STANDARD_WALL, STAINLESS_WALL))
     schedule = merged(listed_or_class, _blank_where(default, ~nothing))
-    by_class = (schedule_listed.codes < 0) & ((from_class.codes >= 0) | wall_by_class)
     listed = schedule_listed.codes >= 0
     choices = [listed, from_class.codes >= 0, wall_by_class | (wall_thickness_gap == Gap.GIVEN)]
     state = np.select(choices, [SCHEDULE_LISTED, SCHEDULE_CLASS, SCHEDULE_NONE], SCHEDULE_NOT_KNOWN)
     return {
         "schedule_used": schedule,
-        "schedule_used_assumed": nothing | (by_class & asked_for(schedule_gap)),
+        "schedule_used_assumed": nothing,
         "schedule_state": state.astype(np.int8),
         "wall_by_class": np.where(wall_by_class, class_values.wall_thickness, np.nan),
     }
@@ -170,22 +167,23 @@ def roughness(
     class_values: ClassValues,
     piping_class_gap: CodeArray,
     material_used: Coded,
-    material_used_assumed: BoolArray,
 ) -> Named:
-    """Return the roughness: the list's, else the class's, else the adopted value of the material."""
+    """Return the roughness: the list's, else the class's, else the adopted value of the material.
+
+    Where the list has a roughness of its own for other lines and leaves this one blank, that is an assumption.
+    """
     from_class = np.where(is_open(piping_class_gap), np.nan, class_values.roughness)
     adopted = roughness_by_material(material=material_used, adopted=criteria.roughness)
     other = np.where(np.isfinite(from_class), from_class, adopted)
     value = np.where(np.isfinite(roughness_listed), roughness_listed, np.where(is_open(roughness_gap), np.nan, other))
     from_elsewhere = np.isnan(roughness_listed) & np.isfinite(value)
-    by_material = from_elsewhere & np.isnan(from_class)
-    assumed = from_elsewhere & asked_for(roughness_gap) | by_material & material_used_assumed
+    assumed = from_elsewhere & asked_for(roughness_gap)
     return {"roughness": value, "roughness_assumed": assumed}
 
 
 PROVIDERS = (
     provider(class_values),
-    provider(material_used, "material_used", "material_used_assumed"),
+    provider(material_used),
     provider(schedule_used, "schedule_used", "schedule_used_assumed", "schedule_state", "wall_by_class"),
     provider(
         pipe,

@@ -44,6 +44,7 @@ _INTERMITTENT = re.compile(
 _MECHANICAL = re.compile(r"(mechanical|mech)( design)?|design|hydro ?test|hydrostatic test|pressure test|test")
 _NO_FLOW = re.compile(r"(normally )?no ?(normal )?flow|zero flow|nnf|no flow normally")
 _MECHANICAL_WORDS = frozenset({"design", "mechanical", "mech", "mechanical design", "test", "hydrotest", "hydro test"})
+_CASE_WORD = re.compile(r" case$|^case (?=[a-z]{2})")
 _MARKS = {"%": "percentsign", "+": "plussign", "-": "minussign"}
 _NUMBERED = re.compile(r"(design|case|alternate|alt|alternative|relief) ([0-9]{1,3}|[a-z])")
 
@@ -67,7 +68,7 @@ def _words(text: str) -> str:
 def canonical_case(text: str) -> str:
     """Return the canonical name of a case, or its folded words where it is no usual one."""
     words = _words(text)
-    words = re.sub(r" case$|^case (?=[a-z]{2})", "", words) or words
+    words = _CASE_WORD.sub("", words) or words
     without_flow = words.removesuffix(" flow")
     usual = _case_of_words(without_flow) or (without_flow if _MECHANICAL.fullmatch(without_flow) else "")
     return usual or words
@@ -86,12 +87,12 @@ def case_kind(name: str) -> CaseKind:
 
 
 def _case_of_words(words: str) -> str:
-    name = words.removesuffix(" case")
+    name = _CASE_WORD.sub("", words)
     return _canonical().get(name, name if _NUMBERED.fullmatch(name) else "")
 
 
 def _mechanical_of_words(words: str) -> str:
-    name = words.removesuffix(" case")
+    name = _CASE_WORD.sub("", words)
     return name if name in _MECHANICAL_WORDS else ""
 
 

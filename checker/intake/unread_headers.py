@@ -17,7 +17,9 @@ CELLS_LOOKED_AT = 2_000
 LONGEST_LOOKED_AT = 1_000
 _FLOW_DIMENSIONS = frozenset({"mass flow", "volume flow", "standard flow"})
 _FLOW_WORD = re.compile(r"\b(?:mass|vol)?flow(?:s|rates?)?\b")
-_NO_FLOW_VALUE = re.compile(r"\b(?:no|number|tag|diagram|sheet|scheme|direction|meter|element|regime|pattern|code)\b")
+_NO_FLOW_VALUE = re.compile(
+    r"\b(?:no|number|tag|diagram|sheet|scheme|direction|meter|element|regime|pattern|code|area)\b"
+)
 _NUMBER = re.compile(r"\s*[-+]?[\d.,]*\d[\d.,]*(?:[eE][-+]?\d+)?\s*(.*)", re.DOTALL | re.ASCII)
 REID = (
     "a Reid vapour pressure (RVP) is measured at 37.8 degC in a set apparatus, so it is no true vapour pressure at the "

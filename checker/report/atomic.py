@@ -30,12 +30,16 @@ def check_places(folder: Path, names: Iterable[str]) -> None:
     if not os.access(nearest, os.W_OK | os.X_OK):
         raise InputError(Problem("cannot be written.", str(nearest), remedy))
     for name in names:
-        if (folder / name).is_dir():
-            raise InputError(Problem("is a folder, where a file is to be written.", str(folder / name), remedy))
+        place = folder / name
+        if place.is_dir():
+            raise InputError(Problem("is a folder, where a file is to be written.", str(place), remedy))
+        if place.exists() and not place.is_file():
+            raise InputError(Problem("is no ordinary file, and would be replaced by one.", str(place), remedy))
 
 
 def write_text(path: Path, text: str) -> None:
-    """Write one text file as UTF-8, whole or not at all."""
+    """Write one text file as UTF-8, whole or not at all; a link is followed to the file it names."""
+    path = path.resolve()
     write_files(path.parent, {path.name: text.encode("utf-8", errors="backslashreplace")})
 
 

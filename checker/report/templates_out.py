@@ -19,9 +19,12 @@ LIST_NAME, CRITERIA_NAME, CLASSES_NAME, DEVIATIONS_NAME = (
     "classes.csv",
     "deviations.csv",
 )
-_WRITTEN_UNITS = {"pressure": "barg", "NPS": "NPS"}
-_CASES = ("min", "norm", "max")
-_PER_CASE = ("flow_mass",)
+_GAUGE = ("pressure", "pressure_design", "pressure_test")
+_LEFT_OUT = (
+    "flow_volume", "flow_standard", "outside_diameter", "wall_thickness", "inside_diameter", "schedule", "roughness",
+    "vapour_fraction_outlet", "sand_rate", "velocity_stated", "pressure_drop_stated", "pressure_gradient_stated",
+    "velocity_allowed", "closure_time", "equivalent_length", "stream", "allowable_stress", "fluid_group",
+)  # fmt: skip
 
 
 def _header(name: str, unit: str) -> str:
@@ -29,14 +32,12 @@ def _header(name: str, unit: str) -> str:
 
 
 def blank_list() -> str:
-    """Return a header row with every field and its unit, the mass flow in three cases."""
-    header: list[str] = []
-    for field in all_fields():
-        if field.name in ("case", "flow_volume", "flow_standard"):
-            continue
-        unit = _WRITTEN_UNITS.get(field.dimension, field.unit)
-        cases = [f"{field.name} {case}" for case in _CASES] if field.name in _PER_CASE else [field.name]
-        header += [_header(name, unit) for name in cases]
+    """Return a header row of the fields that the rules need, one row a line and case, with their units.
+
+    Columns that a list need not have are left out: a column with a blank cell asks for that value.
+    """
+    fields = [field for field in all_fields() if field.name not in _LEFT_OUT]
+    header = [_header(field.name, "barg" if field.name in _GAUGE else field.unit) for field in fields]
     text = io.StringIO(newline="")
     csv.writer(text, lineterminator="\r\n").writerow(header)
     return text.getvalue()

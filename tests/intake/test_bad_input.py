@@ -69,9 +69,33 @@ def test_no_line_number_column(tmp_path: Path) -> None:
 def test_nothing_could_be_read(tmp_path: Path) -> None:
     message = refused(tmp_path, "Line No,Flow,Press [bar]\nP-1,5,5\n")
     assert "not one number of the list could be read" in message
-    assert "column 'Flow': no unit" in message
+    assert "list.csv, row 1, column 'Flow': no unit" in message
     assert "column 'Press [bar]'" in message
     assert "gauge or absolute" in message
+    assert "list.csv, row 3, column 'Press [barg]': '5 psi'" in refused(
+        tmp_path, "Line No,Press [barg]\nP-1,\nP-2,5 psi\nP-3,6 psi\n"
+    )
+    assert "list.csv, row 2, column 'Size': the row has 4 cells" in refused(tmp_path, "Line No,Size\nP-1,6,1,2\n")
+
+
+def test_rows_whose_line_number_is_a_placeholder_are_lines_of_their_own(tmp_path: Path) -> None:
+    rows = ["HOLD,1", "HOLD,2", "TBC,3", "N/A,4", "-,5", "-,6", "-,", "---,-"]
+    listed = read(tmp_path, "Line No,Temp [K]\n" + "\n".join(rows) + "\n")
+    assert listed.line_number == ("HOLD", "HOLD", "TBC", "N/A", "-", "-")
+    assert listed.line.tolist() == [0, 1, 2, 3, 4, 5]
+    assert listed.number("temperature").tolist() == [1, 2, 3, 4, 5, 6]
+    assert [item.line_number for item in listed.holds] == ["HOLD", "HOLD", "TBC"]
+    assert [item.address.row for item in listed.unread] == [8, 9]
+
+
+def test_a_row_without_a_line_number_says_how_much_is_left_unread(tmp_path: Path) -> None:
+    listed = read(tmp_path, "Line No,Temp [K],rho [kg/m3]\nP-1,1,2\n,3,\n,4,-\n,5,6\n")
+    reasons = [item.reason for item in listed.unread]
+    assert [reason.rpartition(": ")[2] for reason in reasons] == [
+        "1 value left unread.",
+        "1 value left unread.",
+        "2 values left unread.",
+    ]
 
 
 @pytest.mark.parametrize(
@@ -217,8 +241,8 @@ def test_ragged_rows(tmp_path: Path) -> None:
         "Page 3 of 12", f"{ROW},,,", "-,6,1,1,60,983,",
     ]  # fmt: skip
     listed = read(tmp_path, "\n".join([HEADER, *rows]) + "\n")
-    assert listed.row.tolist() == [2, 3, 4, 9, 11, 12, 17]
-    assert listed.gap("density").tolist() == [0, Gap.BLANK, Gap.REFUSED, Gap.BLANK, 0, Gap.REFUSED, 0]
+    assert listed.row.tolist() == [2, 3, 4, 9, 11, 12, 17, 18]
+    assert listed.gap("density").tolist() == [0, Gap.BLANK, Gap.REFUSED, Gap.BLANK, 0, Gap.REFUSED, 0, 0]
     assert (
         "the row has 9 cells where the header has 7 columns (cell 8 and on: 'extra')" in listed.refusals["density", 2]
     )
@@ -226,7 +250,8 @@ def test_ragged_rows(tmp_path: Path) -> None:
     assert "reads as 50.000 or as 50000" in listed.refusals["flow_mass", 4]
     assert any(note.startswith("Rows shorter than the header, the rest taken as blank: 3, 9") for note in listed.notes)
     unread = {item.address.row: item.reason for item in listed.unread}
-    assert sorted(unread) == [4, 10, 11, 12, 13, 14, 15, 16, 18]
+    assert sorted(unread) == [4, 10, 11, 12, 13, 14, 15, 16]
+    assert unread[13].endswith("is not checked: 6 values left unread.")
     for row, words in (
         (10, "note"),
         (13, "no line number"),

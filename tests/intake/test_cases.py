@@ -77,7 +77,7 @@ def test_case_column(tmp_path: Path) -> None:
     )
     listed = read(tmp_path, text)
     assert [listed.case.text(index) for index in range(5)] == ["normal", "maximum", "start-up", "", "hydrotest"]
-    assert listed.case_kind.tolist() == [0, 0, CaseKind.INTERMITTENT, CaseKind.UNKNOWN, CaseKind.MECHANICAL_ONLY]
+    assert listed.case_kind.tolist() == [0, 0, CaseKind.INTERMITTENT, CaseKind.UNKNOWN, CaseKind.CONTINUOUS]
     assert listed.number("velocity_stated").tolist() == [1, 2, 3, 4, 5]
     assert not listed.composite.any()
 
@@ -86,6 +86,8 @@ def test_case_column_beside_columns_that_name_a_case(tmp_path: Path) -> None:
     listed = read(tmp_path, "Line No,Case,Flow Max [kg/h],T [K]\nP-1,normal,1,300\n")
     assert listed.unmatched == ("Flow Max [kg/h]",)
     assert any("'Flow Max [kg/h]'" in note for note in listed.notes)
+    assert [(item.text, item.address.row) for item in listed.unread] == [("Flow Max [kg/h]", 1)]
+    assert "case 'maximum'" in listed.unread[0].reason
 
 
 def test_a_contradictory_or_open_flow_is_not_no_flow(tmp_path: Path) -> None:
@@ -103,6 +105,15 @@ def test_a_contradictory_or_open_flow_is_not_no_flow(tmp_path: Path) -> None:
         ("Relief (fire)", "relief fire", CaseKind.INTERMITTENT), ("Steam out", "steam-out", CaseKind.INTERMITTENT),
         ("Blow-down", "blowdown", CaseKind.INTERMITTENT), ("Loading", "loading", CaseKind.CONTINUOUS),
         ("Winter", "winter", CaseKind.CONTINUOUS), ("Ship 4", "ship 4", CaseKind.CONTINUOUS),
+        ("No flow", "no flow", CaseKind.NO_FLOW), ("no-flow", "no flow", CaseKind.NO_FLOW),
+        ("NNF", "nnf", CaseKind.NO_FLOW), ("Normally no flow", "normally no flow", CaseKind.NO_FLOW),
+        ("Low flow", "low flow", CaseKind.CONTINUOUS), ("Normal flow", "normal", CaseKind.CONTINUOUS),
+        ("intermittent", "intermittent", CaseKind.INTERMITTENT),
+        ("minimum intermittent", "minimum intermittent", CaseKind.INTERMITTENT),
+        ("intermittent max", "intermittent max", CaseKind.INTERMITTENT),
+        ("50 % of normal", "50 % of normal", CaseKind.CONTINUOUS), ("50% of Normal", "50 % of normal", CaseKind.CONTINUOUS),
+        ("Normal +10 %", "normal + 10 %", CaseKind.CONTINUOUS), ("Normal \u221210 %", "normal - 10 %", CaseKind.CONTINUOUS),
+        ("min", "minimum", CaseKind.CONTINUOUS), ("Design flow", "design", CaseKind.MECHANICAL_ONLY),
     ],
 )  # fmt: skip
 def test_case_names(name: str, canonical: str, kind: CaseKind) -> None:

@@ -7,7 +7,6 @@ from pathlib import Path
 import pytest
 from lists import one_column, read
 
-from checker.criteria.hints import ColumnHint
 from checker.errors import InputError
 from checker.intake.headers import read_header
 
@@ -44,6 +43,15 @@ MATCHED = [
     ("Relief Flow [kg/h]", "flow_mass", "kg/h", "relief"),
     ("Start-up flow [kg/h]", "flow_mass", "kg/h", "start-up"),
     ("Flow design 2 [kg/h]", "flow_mass", "kg/h", "design 2"),
+    ("Flow design [m3/h]", "flow_volume", "m3/h", "design"),
+    ("Design flow rate [kg/h]", "flow_mass", "kg/h", "design"),
+    ("Flow (design case) [kg/h]", "flow_mass", "kg/h", "design"),
+    ("Test flow [kg/h]", "flow_mass", "kg/h", "test"),
+    ("Flow normal case [kg/h]", "flow_mass", "kg/h", "normal"),
+    ("Flow case normal [kg/h]", "flow_mass", "kg/h", "normal"),
+    ("Flow intermittent [kg/h]", "flow_mass", "kg/h", "intermittent"),
+    ("Max flow (intermittent) [kg/h]", "flow_mass", "kg/h", "maximum intermittent"),
+    ("Operating flow [kg/h]", "flow_mass", "kg/h", ""),
     ("ΔP [bar]", "pressure_drop_stated", "bar", ""),
     ("DP [bar/100m]", "pressure_gradient_stated", "bar/100m", ""),
     ("dP/100m [bar]", "pressure_gradient_stated", "bar/100m", ""),
@@ -73,7 +81,20 @@ def test_header_is_understood(header: str, field: str, unit: str, case: str) -> 
     assert (reading.fields[0].name, reading.unit, reading.case) == (field, unit, case)
 
 
-@pytest.mark.parametrize("header", ["Max. Size (inch)", "TEMP0C", "管线号", "Peak Load [kW]", "", "x" * 500, "\u0420P"])
+@pytest.mark.parametrize(
+    "header",
+    [
+        "Max. Size (inch)",
+        "TEMP0C",
+        "管线号",
+        "Peak Load [kW]",
+        "Design density [kg/m3]",
+        "RVP",
+        "",
+        "x" * 500,
+        "\u0420P",
+    ],
+)
 def test_header_that_nothing_claims(header: str) -> None:
     assert read_header(header) is None
 
@@ -110,30 +131,6 @@ def test_grouped_headers_of_two_rows(tmp_path: Path) -> None:
     assert listed.number("pressure_test")[0] == 16e5
     assert listed.number("temperature_design")[0] == pytest.approx(353.15)
     assert listed.column_of("pressure_design", 0).header == "Design Press"  # type: ignore[union-attr]
-
-
-def test_unit_of_hint_wins_over_header_row_and_criteria(tmp_path: Path) -> None:
-    text = "Line No,Q1 (m3/h),Flow\n,l/s,\nP-1,7.2,5 kg/s\n"
-    hint = {"q1 (M3/H)": ColumnHint("flow_volume", unit="l/min", case="")}
-    listed = read(tmp_path, text, units={"volume flow": "m3/s"}, columns=hint)
-    assert listed.number("flow_volume")[0] == pytest.approx(7.2e-3 / 60, rel=1e-14)
-
-
-def test_hint_names_case_and_takes_the_field_from_another_column(tmp_path: Path) -> None:
-    text = "Line No,Column A,Column B,Flow [kg/h]\nP-1,3600,7200,1\n"
-    hints = {
-        "column a": ColumnHint("flow_mass", unit="kg/h"),
-        "Column B": ColumnHint("flow_mass", unit="kg/h", case="Max"),
-    }
-    listed = read(tmp_path, text, columns=hints)
-    assert listed.case.texts == ("maximum",)
-    assert listed.number("flow_mass").tolist() == [2.0]
-    assert listed.unmatched == ("Flow [kg/h]",)
-
-
-def test_hint_with_an_unknown_field_is_refused(tmp_path: Path) -> None:
-    with pytest.raises(InputError, match=r"list\.csv, column 'A': \[columns\] gives the field 'flo'"):
-        read(tmp_path, "Line No,A\nP-1,1\n", columns={"A": ColumnHint("flo")})
 
 
 @pytest.mark.parametrize(

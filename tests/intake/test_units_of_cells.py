@@ -88,7 +88,7 @@ def test_criteria_settle_a_bare_pressure_of_the_same_unit(tmp_path: Path) -> Non
 def test_no_unit_is_refused(tmp_path: Path) -> None:
     listed = read(tmp_path, one_column("Temp", "60", "60 degC", "HOLD", ""))
     assert listed.gap("temperature").tolist() == [Gap.REFUSED, Gap.GIVEN, Gap.HOLD, Gap.BLANK]
-    assert listed.refusals["temperature", 0].startswith("list.csv, column 'Temp': no unit")
+    assert listed.refusals["temperature", 0].startswith("list.csv, row 1, column 'Temp': no unit")
     assert len(listed.unread) == 1
     assert listed.unread[0].address.row == 1
 
