@@ -4,9 +4,9 @@ from __future__ import annotations
 
 from collections.abc import Callable, Mapping, Sequence
 from dataclasses import dataclass, field
+from itertools import compress
 
 import numpy as np
-from numpy.typing import NDArray
 
 from checker.fields import Field
 from checker.intake.cells import CodedCells, NumberCells
@@ -28,7 +28,6 @@ __all__ = [
     "convert_texts",
 ]
 
-IndexArray = NDArray[np.intp]
 NAN = float("nan")
 _PHASES = {
     "liquid": "l liq liquid liquidphase liqphase",
@@ -97,7 +96,7 @@ def convert_numbers(
     plain = np.full(len(texts), NAN) if isinstance(cells, CodedCells) or comma else cells.numbers
     with np.errstate(all="ignore"):
         converted = _in_si(plain, context)
-        _read_odd(texts, np.flatnonzero(np.isnan(plain)), converted, context)
+        _read_odd(texts, np.isnan(plain), converted, context)
         _check_bounds(texts, converted, column.field, atmosphere)
     if isinstance(cells, CodedCells):
         return _spread(converted, cells.codes)
@@ -114,11 +113,12 @@ def _in_si(plain: FloatArray, context: NumberContext) -> ConvertedNumbers:
     return ConvertedNumbers(values, gaps, context.refusal, rests_on)
 
 
-def _read_odd(texts: Sequence[str], odd: IndexArray, converted: ConvertedNumbers, context: NumberContext) -> None:
-    """Read the cells that are no plain numbers, each distinct text once."""
-    distinct: dict[str, int] = {}
-    codes = np.fromiter((distinct.setdefault(texts[index], len(distinct)) for index in odd.tolist()), np.intp, odd.size)
-    readings = [read_number_cell(text, context) for text in distinct]
+def _read_odd(texts: Sequence[str], is_odd: BoolArray, converted: ConvertedNumbers, context: NumberContext) -> None:
+    """Read the cells that are no plain numbers, each distinct text once; most of them are blank."""
+    mine, odd = list(compress(texts, is_odd.tolist())), np.flatnonzero(is_odd)
+    code_of = {text: code for code, text in enumerate(dict.fromkeys(mine))}
+    codes = np.fromiter(map(code_of.__getitem__, mine), np.intp, odd.size)
+    readings = [read_number_cell(text, context) for text in code_of]
     converted.values[odd] = np.array([reading.value for reading in readings], dtype=np.float64)[codes]
     converted.gaps[odd] = np.array([reading.gap for reading in readings], dtype=np.int8)[codes]
     converted.rests_on[odd] = np.array([reading.rests_on for reading in readings], dtype=np.int8)[codes]

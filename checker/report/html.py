@@ -10,9 +10,11 @@ from checker import __version__
 from checker.report.charts import Picture, draw_pictures
 from checker.report.numbers import count, fraction, shown_unit, significant, utilisation
 from checker.report.review_contract import ReviewLike
-from checker.report.safe_text import visible
+from checker.report.safe_text import LONGEST_PROSE, shortened, visible
 from checker.report.states import state_of
 from checker.report.view import build_view
+from checker.report.wording import fields_in_words, plural
+from checker.shown import meaning_of
 
 if TYPE_CHECKING:
     from jinja2 import Environment
@@ -59,14 +61,23 @@ def _environment() -> Environment:
         auto_reload=False,
     )
     environment.filters.update(significant=significant, utilisation=utilisation, count=count, fraction=fraction)
-    environment.filters.update(drawn=Markup, state=state_of, shown=_in_shown_unit)
+    environment.filters.update(drawn=Markup, state=state_of, shown=_in_shown_unit, prose=Prose, plural=plural)
+    environment.filters.update(meaning=meaning_of, fields_in_words=fields_in_words)
     environment.globals["style_sheet"] = lambda name: Markup((TEMPLATES / name).read_text(encoding="utf-8"))
     return environment
 
 
+class Prose(str):
+    """A sentence or a calculation: not cut where the text of a cell would be."""
+
+    __slots__ = ()
+
+
 def _harmless(value: Any) -> Any:
-    """Return a value as the page may show it: plain texts with nothing hidden in them (escaping comes after)."""
-    return visible(value) if isinstance(value, str) and not hasattr(value, "__html__") else value
+    """Return a value as the page may show it: texts of bounded length, nothing hidden in them (escaping comes after)."""
+    if not isinstance(value, str) or hasattr(value, "__html__"):
+        return value
+    return visible(shortened(value, LONGEST_PROSE) if isinstance(value, Prose) else shortened(value))
 
 
 def _in_shown_unit(value: float, name: str) -> str:

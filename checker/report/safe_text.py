@@ -5,7 +5,10 @@ from __future__ import annotations
 import re
 import unicodedata
 
-__all__ = ["harmless_cell", "visible", "visible_line"]
+__all__ = ["LONGEST_CELL", "LONGEST_PROSE", "harmless_cell", "shortened", "visible", "visible_line"]
+
+LONGEST_CELL = 200
+LONGEST_PROSE = 2_000
 
 # Categories that show nothing, or steer what stands beside them: controls, formats, surrogates, unassigned, private
 # use, and the separators of lines and paragraphs.
@@ -34,6 +37,13 @@ def visible(text: str, *, keep: str = _PLAIN_SPACING) -> str:
 def visible_line(text: str) -> str:
     """Return a text on one line: line feeds and tabs are written out too."""
     return visible(text, keep="")
+
+
+def shortened(text: str, longest: int = LONGEST_CELL) -> str:
+    """Return a text, cut where it is too long to show: an ellipsis and its whole length then follow."""
+    if len(text) <= longest:
+        return text
+    return f"{text[:longest].rstrip()}\u2026 ({len(text)} characters)"
 
 
 def harmless_cell(text: str) -> str:
