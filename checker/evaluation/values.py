@@ -14,7 +14,8 @@ from checker.criteria.limits import LIMIT_DIMENSION, limit_values
 from checker.evaluation import derived, fluid_state, hydraulic_state, identity, pipe_state
 from checker.evaluation.provider import Provider
 from checker.fields import all_fields
-from checker.model import Coded, LineList
+from checker.intake.placeholders import placeholder
+from checker.model import Coded, Gap, LineList
 
 __all__ = ["BASE_FIELDS", "Values", "known_fields", "provider_of"]
 
@@ -123,11 +124,12 @@ class Values:
 
 
 def _groups(line_list: LineList) -> NDArray[np.int32]:
-    """Return one code per distinct line number: rows of one number are one line."""
-    codes: dict[str, int] = {}
-    by_line = np.array(
-        [codes.setdefault(text.casefold(), len(codes)) for text in line_list.line_number], dtype=np.int32
-    )
+    """Return one code per distinct line number: rows of one number are one line, those without one each their own."""
+    codes: dict[str | int, int] = {}
+    numbers = line_list.line_number
+    given = {text: placeholder(text, "line_number") == Gap.GIVEN for text in dict.fromkeys(numbers)}
+    keys = (text.casefold() if given[text] else index for index, text in enumerate(numbers))
+    by_line = np.array([codes.setdefault(key, len(codes)) for key in keys], dtype=np.int32)
     return by_line[line_list.line] if by_line.size else np.zeros(0, dtype=np.int32)
 
 

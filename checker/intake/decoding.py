@@ -89,12 +89,34 @@ def _decode(path: Path, content: bytes) -> tuple[str, str, str]:
         return content.decode("utf-8"), "utf-8", "Encoding UTF-8."
     except UnicodeDecodeError as utf_8_error:
         position = utf_8_error.start
+    damaged = _damaged_utf_8(content, position)
+    if damaged is not None:
+        return damaged
     try:
         text = content.decode("cp1252")
     except UnicodeDecodeError as error:
         raise _undecodable(path, error, "neither UTF-8 nor Windows-1252") from error
     note = f"Not UTF-8 (byte {position}): read as Windows-1252; check signs such as the degree sign, or save as UTF-8."
     return text, "cp1252", note
+
+
+def _damaged_utf_8(content: bytes, position: int) -> tuple[str, str, str] | None:
+    """Return the text of a file that is UTF-8 but for a few bytes, each shown as the replacement character.
+
+    A file with more such bytes than good signs beyond ASCII is no UTF-8: None.
+    """
+    text = content.decode("utf-8", "replace")
+    bad = text.count("\ufffd")
+    good = len(text) - len(text.encode("ascii", "ignore")) - bad
+    if bad > good:
+        return None
+    row = content.count(b"\n", 0, position) + 1
+    word = "byte is" if bad == 1 else "bytes are"
+    note = (
+        f"Encoding UTF-8, but {bad} {word} not (the first is byte {position}, text row {row}): shown as \ufffd, "
+        "and no number is read from a cell that holds one."
+    )
+    return text, "utf-8", note
 
 
 def _refuse_nul(path: Path, text: str) -> None:
