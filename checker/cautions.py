@@ -86,7 +86,7 @@ def cautions_of(values: Values) -> tuple[CautionItem, ...]:
             "isothermal flow of a gas",
         ),
         (
-            values.line_list.composite,
+            values.line_list.composite | ~values["own_flow"],
             "Composite cases: the case's own flow stands beside pressure, temperature or properties that name no case.",
             COMMON_PRACTICE,
         ),

@@ -14,7 +14,7 @@ _LIQUID_STATE = ("flow_mass", "density_stated", "inside_diameter")
 _GAS_STATE = _LIQUID_STATE
 _TWO_PHASE_STATE = ("flow_mass", "vapour_fraction", "liquid_density", "vapour_density", "inside_diameter")
 _ROUTE = ("pipe_length", "fittings_length", "fittings_n", "fittings_k")
-_ALONG = ("pressure", "pressure_basis", *_ROUTE, "elevation_change")
+_ALONG = ("pressure", "pressure_basis", *_ROUTE, "elevation_along")
 _FRICTION = ("viscosity", "roughness")
 _TWO_PHASE_FRICTION = ("liquid_viscosity", "vapour_viscosity", "surface_tension", "roughness")
 
@@ -33,7 +33,7 @@ def _liquid() -> dict[str, tuple[str, ...]]:
     table |= _all(_FRICTION_OUTPUTS, friction)
     table["dp_friction"] = (*friction, "pipe_length")
     table["dp_fittings"] = table["dp_acceleration"] = (*friction, *_ROUTE[1:])
-    table["dp_elevation"] = ("density_stated", "elevation_change")
+    table["dp_elevation"] = ("density_stated", "elevation_along")
     table |= _all(("dp_total", "pressure_inlet", "pressure_outlet"), (*friction, *_ALONG))
     return table
 

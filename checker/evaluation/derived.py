@@ -97,10 +97,11 @@ def continuous(*, case_kind: CodeArray) -> CodeArray:
     return table[case_kind]
 
 
-def is_minimum_case(*, case: Coded) -> CodeArray:
-    """Return 1 where the case is the minimum case, 0 where it is another, -1 where it is not known."""
+def is_minimum_case(*, case: Coded, own_flow: NDArray[np.bool_]) -> CodeArray:
+    """Return 1 where the case is the minimum case with a flow of its own, 0 where not, -1 where it is not known."""
     table = np.array([*(YES if text == MINIMUM_CASE else NO for text in case.texts), UNKNOWN], dtype=np.int8)
-    return table[case.codes]
+    named = table[case.codes]
+    return np.where((named == YES) & ~own_flow, NO, named).astype(np.int8)
 
 
 def line_has_minimum_case(*, is_minimum_case: CodeArray, line_group: NDArray[np.int32]) -> CodeArray:
@@ -114,10 +115,11 @@ def line_has_minimum_case(*, is_minimum_case: CodeArray, line_group: NDArray[np.
 
 
 def lowest_sustained_flow(*, flow_mass: FloatArray, continuous: CodeArray, line_group: NDArray[np.int32]) -> FloatArray:
-    """Return the least flow of a line's continuous cases; infinite where it has none."""
+    """Return the least flow of a line's continuous cases; NaN while the flow of one of them is not known."""
     least = np.full(int(line_group.max(initial=-1)) + 1, np.inf)
-    counted = (continuous == YES) & np.isfinite(flow_mass)
-    np.minimum.at(least, line_group[counted], flow_mass[counted])
+    counted = continuous != NO
+    with np.errstate(invalid="ignore"):
+        np.minimum.at(least, line_group[counted], flow_mass[counted])
     return least[line_group]
 
 
@@ -140,14 +142,17 @@ def pressure_lowest(
     pressure_outlet: FloatArray,
     length_gap: CodeArray,
     equivalent_length_gap: CodeArray,
+    fittings_gap: CodeArray,
+    elevation_change_gap: CodeArray,
 ) -> FloatArray:
-    """Return the lowest pressure of the line; the stated one where the list has no column for a length at all.
+    """Return the lowest pressure of the line; the stated one where the list says nothing of a route at all.
 
-    Where the list gives lengths both ends must be known: a row that leaves its length open is not known to stay
-    above its bubble point.
+    Where the list has a column for length, fittings or elevation both ends must be known: a row that leaves its route
+    open is not known to stay above its bubble point.
     """
     ends = np.minimum(pressure_inlet, pressure_outlet)
-    no_route = (length_gap == Gap.NO_COLUMN) & (equivalent_length_gap == Gap.NO_COLUMN)
+    gaps = np.stack([length_gap, equivalent_length_gap, fittings_gap, elevation_change_gap])
+    no_route = (gaps == Gap.NO_COLUMN).all(axis=0)
     return np.where(no_route, pressure, np.minimum(ends, pressure))
 
 

@@ -20,6 +20,7 @@ FloatArray = NDArray[np.float64]
 CodeArray = NDArray[np.int8]
 Named = dict[str, Any]
 
+EQUAL_WITHIN = 1e-9
 HYDRAULIC_OUTPUTS = (
     "velocity", "velocity_outlet", "reynolds", "friction_factor", "kinetic_energy_factor", "density",
     "pressure_gradient", "dp_friction", "dp_fittings", "dp_elevation", "dp_acceleration", "dp_total",
@@ -49,8 +50,8 @@ def route(
     """Return straight length and fittings, from the equivalent length or the fittings cell.
 
     An equivalent length is the total of the line: what it exceeds the straight length by are the fittings (less than
-    the straight length contradicts, NaN). Where the list has neither column the criteria's allowance serves, if the
-    criteria adopt one. On HOLD or unreadable: NaN.
+    the straight length contradicts, NaN; so do fittings that a cell counts and the length leaves out). Where the list
+    has neither column the criteria's allowance serves, if the criteria adopt one. On HOLD or unreadable: NaN.
     """
     by_length = np.isfinite(equivalent_length)
     straight = np.where(by_length & np.isnan(length_listed) & ~is_open(length_gap), equivalent_length, length_listed)
@@ -63,7 +64,9 @@ def route(
     extra = np.where(by_length, np.where(surplus >= 0.0, surplus, np.nan), by_allowance)
     by_cell = ~by_length & (fittings.codes >= 0)
     extra = np.where(by_cell, 0.0, extra)
-    unknown = np.isnan(extra) | is_open(equivalent_length_gap, fittings_gap)
+    unread = (fittings.codes >= 0) & np.isnan(cell["n"])
+    against = by_length & (fittings.codes >= 0) & (cell["n"] + cell["k"] > 0.0) & ~(surplus > 0.0)
+    unknown = np.isnan(extra) | is_open(equivalent_length_gap, fittings_gap) | unread | against
     use = {name: np.where(by_cell, values, 0.0) for name, values in cell.items()}
     return {
         "pipe_length": straight,
@@ -78,6 +81,13 @@ def route(
 
 def _by_text(values: FloatArray, coded: Coded) -> FloatArray:
     return np.append(np.asarray(values, dtype=np.float64), np.nan)[coded.codes]
+
+
+def elevation_along(*, elevation_change: FloatArray, pipe_length: FloatArray) -> FloatArray:
+    """Return the elevation change, NaN where it is more than the line is long."""
+    with np.errstate(invalid="ignore"):
+        beyond = np.abs(elevation_change) > pipe_length * (1.0 + EQUAL_WITHIN)
+    return np.where(beyond, np.nan, elevation_change)
 
 
 def hydraulics(
@@ -107,7 +117,7 @@ def hydraulics(
     entrances: FloatArray,
     entrance_coefficient: FloatArray,
     exits: FloatArray,
-    elevation_change: FloatArray,
+    elevation_along: FloatArray,
 ) -> Named:
     """Return every column of the solver.
 
@@ -144,7 +154,7 @@ def hydraulics(
         entrance=entrances,
         entrance_coefficient=entrance_coefficient,
         exit=exits,
-        elevation_change=elevation_change,
+        elevation_change=elevation_along,
     )
     solution = solve(**arguments, methods=methods)
     columns = {name: getattr(solution, name) for name in SOLVED}
@@ -153,5 +163,6 @@ def hydraulics(
 
 PROVIDERS = (
     provider(route, *ROUTE),
+    provider(elevation_along),
     provider(hydraulics, *SOLVED, "solution", "solver_arguments"),
 )

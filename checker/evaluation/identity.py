@@ -10,6 +10,7 @@ from numpy.typing import NDArray
 from checker.criteria.criteria import Criteria
 from checker.criteria.services import service_codes, unmatched_codes
 from checker.evaluation.provider import provider
+from checker.fluid.gas_density import GREATEST_GAS_DENSITY
 from checker.model import Coded, Gap, Phase, PressureBasis
 
 __all__ = ["PROVIDERS"]
@@ -26,22 +27,33 @@ def _codes(coded: Coded, words: dict[str, Any]) -> CodeArray:
 
 
 LEAST_LIQUID_DENSITY = 250.0
-GREATEST_GAS_DENSITY = 400.0
 
 
 def phase(
-    *, phase_listed: Coded, vapour_fraction_listed: FloatArray, density_listed: FloatArray
+    *,
+    phase_listed: Coded,
+    vapour_fraction_listed: FloatArray,
+    vapour_fraction_outlet_listed: FloatArray,
+    density_listed: FloatArray,
+    liquid_density_listed: FloatArray,
+    vapour_density_listed: FloatArray,
 ) -> dict[str, NDArray[Any]]:
     """Return the `Phase` code; never inferred, -1 where the list does not say or contradicts itself.
 
     A liquid with vapour in it, a gas with liquid in it, a liquid below 250 kg/m3 and a gas above 400 kg/m3 (common
-    practice) contradict their phase.
+    practice) contradict their phase, at either end; so do two phases of which one is not there at either end, or
+    whose vapour is the heavier.
     """
     said = _codes(phase_listed, _PHASES)
+    inlet, outlet = vapour_fraction_listed, vapour_fraction_outlet_listed
     with np.errstate(invalid="ignore"):
-        no_liquid = (vapour_fraction_listed > 0.0) | (density_listed < LEAST_LIQUID_DENSITY)
-        no_gas = (vapour_fraction_listed < 1.0) | (density_listed > GREATEST_GAS_DENSITY)
-    contradictory = (said == Phase.LIQUID) & no_liquid | (said == Phase.GAS) & no_gas
+        no_liquid = (inlet > 0.0) | (outlet > 0.0) | (density_listed < LEAST_LIQUID_DENSITY)
+        no_gas = (inlet < 1.0) | (outlet < 1.0) | (density_listed > GREATEST_GAS_DENSITY)
+        one_phase = ((inlet <= 0.0) | (inlet >= 1.0)) & (np.isnan(outlet) | (outlet == inlet))
+        not_two = one_phase | (vapour_density_listed >= liquid_density_listed)
+    contradictory = np.select(
+        [said == Phase.LIQUID, said == Phase.GAS, said == Phase.TWO_PHASE], [no_liquid, no_gas, not_two], False
+    )
     return {
         "phase": np.where(contradictory, Phase.UNKNOWN, said).astype(np.int8),
         "phase_contradictory": contradictory,
@@ -85,16 +97,22 @@ def relief_load_given(
 ) -> CodeArray:
     """Return 1 where the line is no relief line or states its relief load, -1 where it is one and does not.
 
-    A relief line is judged on the case that its service names as the relief load, or not at all.
+    A relief line is judged on the case that its service names as the relief load, or not at all. A load below the flow
+    of another of its cases is none.
     """
     relief = _flags([service.relief for service in criteria.services], service_code) == 1
-    names = [service.relief_case.casefold() for service in criteria.services]
-    wanted = np.array([*(case.texts.index(name) if name in case.texts else -2 for name in names), -2])[service_code]
+    stated = np.zeros((len(criteria.services) + 1, len(case.texts) + 1), dtype=np.bool_)
+    for row, service in enumerate(criteria.services):
+        name = service.relief_case.casefold()
+        stated[row, :-1] = [text == name or text.startswith(f"{name} ") for text in case.texts]
+    loads = np.where(relief & stated[service_code, case.codes], flow_mass, np.nan)
+    groups = int(line_group.max(initial=-1)) + 1
+    greatest, load = np.zeros(groups), np.zeros(groups)
     with np.errstate(invalid="ignore"):
-        loaded = relief & (case.codes == wanted) & (flow_mass > 0.0)
-    has = np.zeros(int(line_group.max(initial=-1)) + 1, dtype=np.bool_)
-    has[line_group[loaded]] = True
-    return np.where(relief & ~has[line_group], -1, 1).astype(np.int8)
+        np.fmax.at(greatest, line_group, flow_mass)
+        np.fmax.at(load, line_group, loads)
+    known = (load > 0.0) & (load >= greatest)
+    return np.where(relief & ~known[line_group], -1, 1).astype(np.int8)
 
 
 def pressure_basis(

@@ -25,6 +25,8 @@ Named = dict[str, Any]
 SCHEDULE_LISTED, SCHEDULE_CLASS, SCHEDULE_NONE, SCHEDULE_NOT_KNOWN = 0, 1, 2, -1
 NO_CLASSES = Classes(Source("no class file", ""), ())
 OUTSIDE_TOLERANCE = 0.15
+BORE_TOLERANCE = 0.02
+LEAST_LINED_BORE = 0.8
 WALL_TOLERANCE = 0.125
 STANDARD_WALL = "STD"
 STAINLESS_WALL = "40S"
@@ -88,6 +90,7 @@ def schedule_used(
     listed = schedule_listed.codes >= 0
     choices = [listed, from_class.codes >= 0, wall_by_class | (wall_thickness_gap == Gap.GIVEN)]
     state = np.select(choices, [SCHEDULE_LISTED, SCHEDULE_CLASS, SCHEDULE_NONE], SCHEDULE_NOT_KNOWN)
+    state = np.where(is_open(schedule_gap), SCHEDULE_NOT_KNOWN, state)
     return {
         "schedule_used": schedule,
         "schedule_used_assumed": nothing,
@@ -102,18 +105,26 @@ def _understood(schedule: Coded) -> BoolArray:
 
 
 def _contradictory(
-    *, inside: FloatArray, outside: FloatArray, wall: FloatArray, size_outside: FloatArray, schedule_wall: FloatArray
+    *,
+    inside: FloatArray,
+    bore: FloatArray,
+    outside: FloatArray,
+    wall: FloatArray,
+    size_outside: FloatArray,
+    schedule_wall: FloatArray,
 ) -> BoolArray:
     """Return True where the bore is no smaller than the pipe, or diameter and wall are not those of size and schedule.
 
     An explicit value wins over a looked-up one, but within reason: an outside diameter within 15 % of that of the
-    size (pipe of other standards), a wall within the mill's 12.5 % of that of a schedule given beside it.
+    size (pipe of other standards), a wall within the mill's 12.5 % of that of a schedule given beside it, a bore from
+    2 % above that of diameter and wall down to 0.8 of it (lined pipe).
     """
     with np.errstate(invalid="ignore"):
-        too_wide = inside >= outside
+        too_wide = (inside >= outside) | (inside > bore * (1.0 + BORE_TOLERANCE))
+        too_narrow = inside < bore * LEAST_LINED_BORE
         other_size = np.abs(outside - size_outside) > OUTSIDE_TOLERANCE * size_outside
         other_wall = np.abs(wall - schedule_wall) > WALL_TOLERANCE * schedule_wall
-    return too_wide | other_size | other_wall
+    return too_wide | too_narrow | other_size | other_wall
 
 
 def pipe(
@@ -142,6 +153,7 @@ def pipe(
     inside = np.where(is_open(inside_diameter_gap), np.nan, inside)
     contradictory = _contradictory(
         inside=inside,
+        bore=np.where(np.isnan(wall_thickness_listed) & schedule_used_assumed, np.nan, bore),
         outside=outside,
         wall=wall,
         size_outside=found.outside_diameter,

@@ -7,9 +7,10 @@ from collections.abc import Callable
 import numpy as np
 
 from checker.evaluation.dependencies import direct
-from checker.evaluation.identity import GREATEST_GAS_DENSITY, LEAST_LIQUID_DENSITY
+from checker.evaluation.identity import LEAST_LIQUID_DENSITY
 from checker.evaluation.values import Values
 from checker.fields import Field, field_named
+from checker.fluid.gas_density import GREATEST_GAS_DENSITY
 from checker.hydraulics.compose import STATUS_SENTENCES
 from checker.hydraulics.fittings import read_fittings
 from checker.model import Coded, Gap, Phase
@@ -95,7 +96,7 @@ def _phase(values: Values, line_case: int) -> Reason:
     if not values["phase_contradictory"][line_case]:
         return gap_sentence(values, "phase", line_case)
     said = values["phase_listed"].text(line_case)
-    for field in ("vapour_fraction", "density"):
+    for field in ("vapour_fraction", "vapour_fraction_outlet", "density", "vapour_density"):
         if not is_missing(values, f"{field}_listed", line_case) and _contradicts(values, field, said, line_case):
             cell = _quoted(values.line_list.cell(field, line_case))
             return f"the list calls it {said}, but {field} says {cell} ({values.line_list.address(field, line_case)})"
@@ -104,15 +105,22 @@ def _phase(values: Values, line_case: int) -> Reason:
 
 def _contradicts(values: Values, field: str, said: str, line_case: int) -> bool:
     number = float(values[f"{field}_listed"][line_case])
-    if field == "vapour_fraction":
+    if said == "two-phase":
+        return field == "vapour_density" or number in (0.0, 1.0)
+    if field.startswith("vapour_fraction"):
         return number > 0.0 if said == "liquid" else number < 1.0
+    if field == "vapour_density":
+        return False
     return number < LEAST_LIQUID_DENSITY if said == "liquid" else number > GREATEST_GAS_DENSITY
 
 
 def _relief(values: Values, line_case: int) -> Reason:
     code = int(values["service_code"][line_case])
     service = values.criteria.services[code]
-    return f"a relief line is judged on its relief load: case {service.relief_case!r} with a flow is not given"
+    return (
+        f"a relief line is judged on its relief load: a case {service.relief_case!r} with a flow not below those of "
+        "its other cases is not given"
+    )
 
 
 def _flowing(values: Values, line_case: int) -> Reason:
@@ -135,6 +143,8 @@ def _pressure_lowest(values: Values, line_case: int) -> Reason:
 
 
 def _density(values: Values, line_case: int) -> Reason:
+    if values["density_contradictory"][line_case] and is_missing(values, "density_listed", line_case):
+        return f"P M / (Z R T) of this row is above {GREATEST_GAS_DENSITY:g} kg/m3: that is no gas"
     if values["density_contradictory"][line_case]:
         return "the listed density differs by more than 5 % from P M / (Z R T) of the same row"
     if values["phase"][line_case] != Phase.GAS or values.line_list.gap("density")[line_case] in (Gap.HOLD, Gap.REFUSED):
@@ -198,13 +208,20 @@ def _route(values: Values, line_case: int) -> Reason:
     for field in ("equivalent_length", "fittings"):
         if values.line_list.gap(field)[line_case] in (Gap.HOLD, Gap.REFUSED):
             return gap_sentence(values, field, line_case)
-    if not is_missing(values, "equivalent_length", line_case):
-        return f"equivalent_length is less than length ({values.line_list.address('equivalent_length', line_case)})"
     cell = values["fittings"].text(line_case)
+    if not is_missing(values, "equivalent_length", line_case) and not cell:
+        return f"equivalent_length is less than length ({values.line_list.address('equivalent_length', line_case)})"
     if cell:
-        said = read_fittings([cell]).reasons[0]
+        said = read_fittings([cell]).reasons[0] or "contradict an equivalent length no longer than the straight one"
         return f"fittings: {said} ({values.line_list.address('fittings', line_case)})"
     return _first_gap(values, ("equivalent_length", "fittings"), line_case)
+
+
+def _elevation(values: Values, line_case: int) -> Reason:
+    if is_missing(values, "elevation_change", line_case):
+        return gap_sentence(values, "elevation_change", line_case)
+    address = values.line_list.address("elevation_change", line_case)
+    return f"elevation_change is more than the length of the line ({address})"
 
 
 def _length(values: Values, line_case: int) -> Reason:
@@ -287,6 +304,7 @@ _SPECIAL: dict[str, Special] = {
     "pressure_lowest": _pressure_lowest,
     "roughness": _roughness,
     "pipe_length": _length,
+    "elevation_along": _elevation,
     "fittings_length": _route,
     "fittings_n": _route,
     "fittings_k": _route,

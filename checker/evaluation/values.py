@@ -19,7 +19,17 @@ from checker.model import Coded, Gap, LineList
 
 __all__ = ["BASE_FIELDS", "Values", "known_fields", "provider_of"]
 
-BASE_FIELDS = ("criteria", "classes", "case", "case_kind", "line", "line_group", "composite", "stated_values_tolerance")
+BASE_FIELDS = (
+    "criteria",
+    "classes",
+    "case",
+    "case_kind",
+    "line",
+    "line_group",
+    "own_flow",
+    "composite",
+    "stated_values_tolerance",
+)
 
 
 @cache
@@ -42,6 +52,7 @@ def known_fields() -> frozenset[str]:
     return frozenset(listed | suffixed | set(_providers()) | set(LIMIT_DIMENSION) | states | set(BASE_FIELDS))
 
 
+NORMAL_CASE = "normal"
 NO_LIMIT, NOT_KNOWN = 1, 2
 
 
@@ -95,6 +106,8 @@ class Values:
         if found is not None:
             results = found.results({need: self[need] for need in found.needs})
             return {key: _read_only(value) for key, value in results.items() if key not in self._held}
+        if name == "own_flow":
+            return {name: _read_only(_own_flow(self.line_list))}
         if name == "line_group":
             return {name: _read_only(_groups(self.line_list))}
         key = name.removesuffix("_state")
@@ -121,6 +134,19 @@ class Values:
         if field is None:
             raise KeyError(name)
         return self.line_list.text(name) if field.kind == "text" else self.line_list.number(name)
+
+
+FLOW_FIELDS = ("flow_mass", "flow_volume", "flow_standard")
+
+
+def _own_flow(line_list: LineList) -> NDArray[np.bool_]:
+    """Return True where a line case's flow is stated for that case, not borrowed from a column that names none."""
+    named = {column.case for column in line_list.columns if column.field in FLOW_FIELDS}
+    if line_list.has("case") or len(line_list.case.texts) < 2:
+        return np.ones(line_list.line_cases, dtype=np.bool_)
+    return line_list.case.where(
+        [text in named or (text == NORMAL_CASE and "" in named) for text in line_list.case.texts]
+    )
 
 
 def _groups(line_list: LineList) -> NDArray[np.int32]:

@@ -10,6 +10,7 @@ __all__ = ["DENSITY_TOLERANCE", "GAS_CONSTANT", "gas_density", "resolved_gas_den
 FloatArray = NDArray[np.float64]
 GAS_CONSTANT = 8.314462618
 DENSITY_TOLERANCE = 0.05
+GREATEST_GAS_DENSITY = 400.0
 
 
 def gas_density(
@@ -50,8 +51,12 @@ def gas_density(
 
 
 def resolved_gas_density(*, listed: FloatArray, computed: FloatArray) -> tuple[FloatArray, NDArray[np.bool_]]:
-    """Return the listed density, else the computed one; NaN and True where they differ by more than 5 %."""
+    """Return the listed density, else the computed one; NaN and True where they contradict each other or a gas.
+
+    They contradict each other beyond 5 %; a computed density above 400 kg/m3 is that of no gas (common practice).
+    """
     with np.errstate(invalid="ignore"):
         contradictory = np.abs(listed - computed) > DENSITY_TOLERANCE * computed
+        contradictory |= computed > GREATEST_GAS_DENSITY
     density = np.where(np.isfinite(listed), listed, computed)
     return np.where(contradictory, np.nan, density), contradictory
