@@ -27,9 +27,9 @@ IntArray = NDArray[np.int32]
 BoolArray = NDArray[np.bool_]
 
 TOLERANCE = 1e-9
-_BLANKS = frozenset(
-    ("", "-", "\u2013", "\u2014", "n/a", "na", "n.a.", "hold", "tbc", "tba", "tbd", "later", "none", "nil", "?")
-)
+_OPEN = frozenset(("hold", "on hold", "tbc", "tba", "tbd", "tbf", "later", "?"))
+_BLANKS = _OPEN | {"", "-", "\u2013", "\u2014", "n/a", "na", "n.a.", "none", "nil"}
+_OPTIONAL = ("schedule", "wall_thickness", "material", "corrosion_allowance", "flange_rating", "roughness")
 _NUMBERS = ("wall_thickness", "corrosion_allowance", "roughness")
 
 
@@ -240,6 +240,10 @@ def _check_walls(row: ClassRow, reader: _CellReader) -> None:
 
 
 def _row(reader: _CellReader, number: int, cells: Mapping[str, str]) -> ClassRow:
+    for field in _OPTIONAL:
+        if cells.get(field, "").casefold() in _OPEN:
+            what = f"{shown(cells[field])} is an open item, and lines of this class would be judged without it."
+            reader.add(number, field, what, "Give the value, or leave the cell blank where the class does not set it.")
     name = reader.text(cells, "piping_class")
     if not name:
         reader.add(number, "piping_class", "the row names no class.", "Write the class.")

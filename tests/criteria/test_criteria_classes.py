@@ -80,11 +80,10 @@ def test_unit_from_the_cell_or_from_the_criteria(tmp_path: Path) -> None:
 
 
 def test_an_open_item_is_no_value(tmp_path: Path) -> None:
-    classes = load(tmp_path, HEADER + "A,2,4,HOLD,TBC,-,,150,\n")
-    values = classes.look_up(piping_class=coded("A"), size=np.array([3.0]))
-    assert values.known[0]
-    assert values.schedule.text(0) == ""
-    assert np.isnan(values.wall_thickness[0])
+    with pytest.raises(InputError) as caught:
+        load(tmp_path, HEADER + "A,2,4,HOLD,TBC,-,,150,\n")
+    assert len(caught.value.problems) == 2
+    assert all("open item" in problem.what for problem in caught.value.problems)
 
 
 def test_all_problems_at_once(tmp_path: Path) -> None:

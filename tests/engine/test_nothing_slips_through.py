@@ -187,6 +187,112 @@ def test_a_place_that_cannot_take_the_files_is_refused_first(tmp_path: Path) -> 
     assert [each.name for each in (tmp_path / "out").iterdir()] == ["exceptions.pdf"]
 
 
+BARE = "Line No,Service,Phase,Size (NPS),Sch,Material,Density [kg/m3],Viscosity [cP]"
+BARE_ROW = "A,cooling water,liquid,6,40,carbon steel,1000,1"
+
+
+@pytest.mark.parametrize("columns", ["Min. Temp [degC],Max. Temp [degC]", "Min. Press [barg],Max. Press [barg]"])
+def test_a_minimum_of_another_quantity_makes_no_minimum_flow(tmp_path: Path, columns: str) -> None:
+    done = reviewed(tmp_path, f"{BARE},Flow [kg/h],{columns}", f"{BARE_ROW},100000,5,60")
+    assert set(outcomes(done, "minimum-velocity")) == {"not checked"}
+
+
+@pytest.mark.parametrize("other", ["", "HOLD", "abc"])
+def test_a_minimum_is_none_while_another_flow_of_the_line_is_open(tmp_path: Path, other: str) -> None:
+    header = LIQUID.replace("Flow [m3/h]", "Flow min [m3/h],Flow norm [m3/h]")
+    done = reviewed(tmp_path, header, f"A,seawater,liquid,6,40,90,{other},1025,1,carbon steel")
+    assert outcomes(done, "minimum-velocity") == ["not checked"]
+
+
+def test_a_rise_without_a_length_still_counts_against_the_bubble_point(tmp_path: Path) -> None:
+    header = f"{BARE},Flow [kg/h],Press [bara],Vap. Press. [bara],Elev. Change [m]"
+    done = reviewed(tmp_path, header, f"{BARE_ROW},100000,1.0,0.9,10")
+    assert outcomes(done, "phase-change") == ["not checked"]
+    done = reviewed(tmp_path, header.replace(",Elev. Change [m]", ""), f"{BARE_ROW},100000,1.0,0.9")
+    assert outcomes(done, "phase-change") == ["meets"]
+
+
+def test_a_relief_load_below_the_normal_flow_is_none(tmp_path: Path) -> None:
+    row = "F1,flare header,gas,12,40,carbon steel,{},0.05,25,28.01,1,1.4,0.018,200,220,0,outlet,{}"
+    done = reviewed(tmp_path, f"{GAS},Case", row.format(20000, "normal"), row.format(100, "relief"))
+    assert set(outcomes(done, "mach-number")) == {"not checked"}
+    done = reviewed(tmp_path, f"{GAS},Case", row.format(200, "normal"), row.format(9000, "relief 1"))
+    assert set(outcomes(done, "mach-number")) == {"meets"}
+
+
+MIXTURE = (
+    "Line No,Service,Phase,Size (NPS),Sch,Material,Flow [kg/h],Press [bara],Vap. Fraction (mass),Outlet vapour fraction,"
+    "Liq. Density [kg/m3],Liq. Viscosity [cP],Vap. Density [kg/m3],Vap. Viscosity [cP],Surf. Tension [mN/m],"
+    "Length [m],Eq. Length [m],Elev. Change [m]"
+)
+
+
+@pytest.mark.parametrize(
+    ("fraction", "outlet", "liquid", "vapour", "word"),
+    [
+        ("0.2", "N/A", "800", "8", "meets"),
+        ("0.2", "N/A", "40", "700", "not checked"),
+        ("0", "N/A", "800", "8", "not checked"),
+        ("1", "1", "800", "8", "not checked"),
+        ("0", "0.1", "800", "8", "meets"),
+    ],
+)
+def test_two_phases_must_both_be_there(
+    tmp_path: Path, fraction: str, outlet: str, liquid: str, vapour: str, word: str
+) -> None:
+    row = f"M,wet gas,two-phase,6,40,carbon steel,12000,8,{fraction},{outlet},{liquid},0.5,{vapour},0.012,20,40,60,0"
+    done = reviewed(tmp_path, MIXTURE, row)
+    assert outcomes(done, "erosional-velocity") == [word]
+
+
+def test_vapour_at_the_outlet_contradicts_a_liquid_and_liquid_there_a_gas(tmp_path: Path) -> None:
+    row = "A,pump discharge,{},6,40,100,{},0.9,carbon steel,{}"
+    for phase, density, outlet in (("liquid", 997, 0.9), ("gas", 5, 0.2)):
+        done = reviewed(tmp_path, f"{LIQUID},Outlet vapour fraction", row.format(phase, density, outlet))
+        assert "meets" not in set(done.outcomes.query("rule != 'schedule-exists'")["outcome"])
+
+
+@pytest.mark.parametrize(("bore", "word"), [("154", "meets"), ("167", "not checked"), ("100", "not checked")])
+def test_a_bore_is_held_against_the_schedule_beside_it(tmp_path: Path, bore: str, word: str) -> None:
+    done = reviewed(tmp_path, f"{LIQUID},ID [mm]", f"A,pump discharge,liquid,6,40,60,997,0.9,carbon steel,{bore}")
+    assert outcomes(done, "liquid-velocity") == [word]
+
+
+def test_a_schedule_on_hold_is_not_checked_beside_a_wall(tmp_path: Path) -> None:
+    done = reviewed(tmp_path, f"{LIQUID},Wall [mm]", "A,pump discharge,liquid,6,HOLD,100,997,0.9,carbon steel,7.11")
+    assert outcomes(done, "schedule-exists") == ["not checked"]
+    assert "HOLD" in reason(done, "schedule-exists")
+
+
+@pytest.mark.parametrize(
+    ("fittings", "elevation"), [("400 x globe valve", "0"), ("abc", "0"), ("none", "30"), ("none", "-9999")]
+)
+def test_a_route_that_contradicts_itself_gives_no_loss(tmp_path: Path, fittings: str, elevation: str) -> None:
+    header = (
+        f"{LIQUID},Press [bara],Length [m],Eq. Length [m],Fittings,Elev. Change [m],Allow. dP [bar],Vap. Press. [bara]"
+    )
+    row = f"A,pump discharge,liquid,6,40,60,997,0.9,carbon steel,9,20,20,{fittings},{elevation},5,0.1"
+    done = reviewed(tmp_path, header, row)
+    wanted = "phase-change" if elevation != "0" else "pressure-budget"
+    assert outcomes(done, wanted) == ["not checked"]
+
+
+def test_a_gas_heavier_than_any_gas_is_none(tmp_path: Path) -> None:
+    done = reviewed(tmp_path, GAS, "N1,nitrogen,gas,2,40,carbon steel,100,6,20,28.01,0.001,1.4,0.018,20,25,0,inlet")
+    assert outcomes(done, "gas-velocity") == ["not checked"]
+    assert "no gas" in reason(done, "gas-velocity")
+
+
+def test_an_open_item_in_the_class_file_is_refused(tmp_path: Path) -> None:
+    (tmp_path / "classes.csv").write_text(
+        "piping_class,size_from [NPS],size_to [NPS],schedule,material,roughness [mm]\nB1,2,8,40,carbon steel,HOLD\n",
+        encoding="utf-8",
+    )
+    (tmp_path / "list.csv").write_text("Line No,Piping Class\nA,B1\n", encoding="utf-8")
+    with pytest.raises(InputError, match=r"classes\.csv, row 2, column 'roughness"):
+        checker.review(tmp_path / "list.csv", classes=tmp_path / "classes.csv")
+
+
 def test_a_schedule_that_is_no_word_is_not_checked_and_one_that_is_not_made_does_not_meet(tmp_path: Path) -> None:
     row = "{},pump discharge,liquid,6,{},100,997,0.9,carbon steel"
     done = reviewed(tmp_path, LIQUID, row.format("A", "abc"), row.format("B", "20"), row.format("C", "Sch. 40"))

@@ -126,6 +126,7 @@ class FakeReview:
     columns_matched: tuple[tuple[str, str, str, str], ...] = ()
     columns_unmatched: tuple[str, ...] = ()
     faults: tuple[str, ...] = ()
+    revisions: tuple[str, ...] = ("B", "C")
     approvals: tuple[tuple[str, ...], ...] = ()
     tally: Mapping[str, int] = field(default_factory=dict)
 
@@ -320,7 +321,13 @@ def _groups(numbers: tuple[str, ...], texts: tuple[str, ...]) -> tuple[NotChecke
     return (
         NotCheckedGroup("pressure-budget", "pressure_drop_allowed is blank: give the allowed loss.", 120, numbers[:60]),
         NotCheckedGroup("gas-velocity", f"length reads {texts[0]}: the outlet is not known.", 80, numbers[60:80]),
-        NotCheckedGroup("npsh-margin", "vapour_pressure is on HOLD.", 30, numbers[80:83]),
+        NotCheckedGroup(
+            "npsh-margin",
+            "vapour_pressure is on HOLD",
+            30,
+            numbers[80:83],
+            f"vapour_pressure is on HOLD ('TBC') ({FILE}, row 83, column 'Vapour pressure [bara]')",
+        ),
     )
 
 

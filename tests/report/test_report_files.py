@@ -6,6 +6,7 @@ import builtins
 import csv
 import io
 import json
+import re
 import socket
 from pathlib import Path
 from typing import Any, NoReturn
@@ -53,7 +54,8 @@ def test_all_four_files_are_written_and_nothing_else(tmp_path: Path) -> None:
     files = write_report(small(), tmp_path / "review", progress=steps.append)
     assert {path.name for path in files.paths} == FILES == {path.name for path in (tmp_path / "review").iterdir()}
     assert files.pdf_problem == ""
-    assert steps[-1] == "preparing exceptions.pdf"
+    assert steps[-2].endswith(": 4 not met in 4 exceptions, 5 lines, 10 line cases")
+    assert re.fullmatch(r"preparing exceptions\.pdf: about \d+ pages worth", steps[-1])
 
 
 @pytest.mark.parametrize("hostile", [False, True])

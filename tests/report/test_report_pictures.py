@@ -44,3 +44,11 @@ def test_colours_of_the_screen_follow_the_page() -> None:
     assert "var(--fails)" in picture.wide
     assert "#a3282d" in picture.printed
     assert "#a3282d" not in picture.wide
+
+
+def test_a_few_fast_lines_do_not_rule_the_scale_of_the_velocities() -> None:
+    velocity, limit = np.array([1.0, 2.9, 400.0]), np.array([3.0, 3.0, 150.0])
+    picture = velocity_picture(FakeVelocity(velocity, limit, np.zeros(3, dtype=np.int8)))
+    assert "Liquid; 1 above 2.0" in picture.wide
+    assert picture.head[-1] == "Highest velocity / limit"
+    assert picture.rows == (("Liquid", "3", "1", "1", "2.67"),)

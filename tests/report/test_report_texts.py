@@ -124,15 +124,16 @@ def test_summary_begins_with_the_coverage() -> None:
     assert lines[1] == "Recommendation: revise and resubmit"
     assert max(map(len, lines)) <= WIDTH
     text = " ".join(" ".join(lines).split())
-    assert "The 5 worst of 40 exceptions" in text
+    assert "40 outcomes do not meet: 40 times a rule on a line. The 5 worst:" in text
     for row in review.exceptions[:5]:
-        assert f"{row.line_number}, {row.case}; {row.title}; {row.value_shown} against {row.limit_shown}" in text
+        assert f"{row.line_number} ({row.case}); {row.title}; {row.value_shown} against {row.limit_shown}" in text
     assert "does not meet 40" in text
     assert "exceptions.pdf was not written" in text
 
 
 def test_summary_of_a_list_without_exceptions() -> None:
-    assert "No exceptions." in summary(make_review(exceptions=0), None)
+    text = summary(make_review(exceptions=0), None)
+    assert "No exceptions: none among the 92.7 % that could be checked." in text
 
 
 def test_terminal_texts_carry_no_control_characters() -> None:
