@@ -221,7 +221,8 @@ def test_a_relief_load_below_the_normal_flow_is_none(tmp_path: Path) -> None:
 
 
 MIXTURE = (
-    "Line No,Service,Phase,Size (NPS),Sch,Material,Flow [kg/h],Press [bara],Vap. Fraction (mass),Outlet vapour fraction,"
+    "Line No,Service,Phase,Size (NPS),Sch,Material,Flow [kg/h],Press [bara],Vap. Fraction (mass),"
+    "Outlet vapour fraction,"
     "Liq. Density [kg/m3],Liq. Viscosity [cP],Vap. Density [kg/m3],Vap. Viscosity [cP],Surf. Tension [mN/m],"
     "Length [m],Eq. Length [m],Elev. Change [m]"
 )
