@@ -76,10 +76,8 @@ def recommend(
     unchecked = int((judgement.outcome == Outcome.NOT_CHECKED).sum())
     coverage = coverage_of(judgement)
     revise = [
-        f"{_plural(shall, 'outcome')} of force shall not met" if shall else "",
-        f"{_plural(gross, 'outcome')} of force should exceeded by more than the factor {gross_factor:g}"
-        if gross
-        else "",
+        f"{_plural(shall, 'outcome')} not met where the requirement is a `shall`" if shall else "",
+        f"{_plural(gross, 'outcome')} not met by more than the factor {gross_factor:g}" if gross else "",
     ]
     share = f"{100.0 * coverage:.1f} % of the applicable outcomes could be checked"
     incomplete = f"only {share}, less than {100.0 * coverage_minimum:g} %" if coverage < coverage_minimum else ""

@@ -42,6 +42,12 @@ class Breach:
         return ", ".join(dict.fromkeys(row.case for row in self.rows if row.case))
 
     @property
+    def alike(self) -> bool:
+        """True where every case says the very same, as for a condition on the pipe."""
+        said = {(row.value_shown, row.limit_shown, row.force, row.reason, row.calculation) for row in self.rows}
+        return len(said) == 1
+
+    @property
     def composite(self) -> bool:
         """True where the worst case is put together from several and the rule reads a field that goes by case."""
         return self.worst.composite and any(cell.field in _fields_by_case() for cell in self.worst.cells)
@@ -52,9 +58,7 @@ def breaches_of(exceptions: Iterable[OutcomeRow]) -> tuple[Breach, ...]:
     together: dict[tuple[str, str], list[OutcomeRow]] = {}
     for row in exceptions:
         together.setdefault((row.line_number, row.rule), []).append(row)
-    return tuple(
-        Breach(rank, rows[0], tuple(rows[1:])) for rank, rows in enumerate(together.values(), start=1)
-    )
+    return tuple(Breach(rank, rows[0], tuple(rows[1:])) for rank, rows in enumerate(together.values(), start=1))
 
 
 def counted_both_ways(outcomes: int, breaches: int) -> str:

@@ -9,10 +9,11 @@ import numpy as np
 from checker.errors import InputError, Problem
 from checker.report.numbers import MISSING, NARROW_SPACE, in_shown_unit, utilisation
 from checker.report.review_contract import ReviewLike
-from checker.report.safe_text import visible_line
+from checker.report.safe_text import shortened, visible_line
 from checker.report.states import state_of
 from checker.report.terminal import WIDTH, wrapped
 from checker.review_model import CellValue, OutcomeRow
+from checker.shown import meaning_of
 
 __all__ = ["CAUTION", "calculation_sheet"]
 
@@ -82,9 +83,10 @@ def _inputs(rows: tuple[OutcomeRow, ...]) -> Iterator[str]:
 
 
 def _input(cell: CellValue) -> Iterator[str]:
-    written = f"written {visible_line(cell.written)!r}, " if cell.written else ""
-    yield from wrapped(f"{cell.field:<26} {cell.shown}", first="  ", indent="    ")
-    yield from wrapped(f"{written}{cell.origin}", indent=" " * 29)
+    label = f"{cell.meaning or cell.field}:"
+    written = f"written {visible_line(shortened(cell.written))!r}, " if cell.written else ""
+    yield from wrapped(f"{label:<44} {shortened(cell.shown)}", first="  ", indent="    ")
+    yield from wrapped(f"{cell.field}, {written}{cell.origin}", indent=" " * 6)
 
 
 def _cases(review: ReviewLike, rows: tuple[OutcomeRow, ...]) -> Iterator[str]:
@@ -103,8 +105,9 @@ def _hydraulics(review: ReviewLike, line_case: int, row: OutcomeRow) -> Iterator
     for name, unit, values in review.hydraulics_columns():
         value = np.asarray(values)[line_case]
         shown = in_shown_unit(name, unit, float(value)) if np.asarray(values).dtype.kind in "iuf" else str(value)
-        yield _plain(f"  {name:<26} {shown or MISSING}")
-    yield _plain(f"  {'flow_regime':<26} {review.flow_regimes()[line_case] or MISSING}")
+        yield _plain(f"  {meaning_of(name):<44} {shown or MISSING:<20} {name}")
+    regime = review.flow_regimes()[line_case] or MISSING
+    yield _plain(f"  {meaning_of('flow_regime'):<44} {regime:<20} flow_regime")
 
 
 def _rules(rows: list[OutcomeRow]) -> Iterator[str]:

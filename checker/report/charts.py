@@ -10,7 +10,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from checker.report.drawing import NARROW, PALETTE, WIDE, new_figure, quiet_axes, steady_style, themed, to_svg
-from checker.report.numbers import count, significant, utilisation
+from checker.report.numbers import count, utilisation
 from checker.report.review_contract import ReviewLike, UtilisationLike, VelocityLike
 
 __all__ = ["NEAR_LIMIT", "Picture", "draw_pictures", "utilisation_picture", "velocity_picture"]
@@ -19,6 +19,7 @@ MOST_POINTS = 2_000
 NEAR_LIMIT = 0.9
 AT_LIMIT = 1.0 + 1e-9
 WIDEST_UTILISATION = 2.0
+SIDE_MARGIN = 1.3
 BINS = 40
 PALEST = 0.15
 # Few cells over the limit must not fade beside the many below it.
@@ -75,12 +76,14 @@ def velocity_picture(points: VelocityLike) -> Picture:
     if not panels:
         return _nothing(title, "No line case has both a velocity and an upper limit, so there is nothing to draw.")
     shaded = sum(velocity.size for _, velocity, _ in panels) > MOST_POINTS
+    beside = "" if shaded else ", points spread a little sideways so that none hides another"
     caption = (
-        "Velocity at the worst end of each line case against the highest velocity allowed, one panel a phase. "
+        "Velocity at the worst end of each line case divided by the highest velocity allowed, one panel a phase. "
+        f"Across stands that limit{beside}; what lies above the scale stands at its upper edge. "
         "The full line is the limit, the broken line 0.9 of it. " + _legend(shaded=shaded)
     )
     drawings = _both_widths("velocity", title, lambda width: _draw_velocity(panels, shaded=shaded, width=width))
-    head = ("Phase", "Line cases", "Over the limit", "From 0.9 to the limit", "Highest velocity over limit")
+    head = ("Phase", "Line cases", "Over the limit", "From 0.9 to the limit", "Highest velocity / limit")
     rows = tuple(_utilisation_row(name, velocity / limit) for name, velocity, limit in panels)
     return Picture(title, caption, *drawings, head, rows)
 
@@ -204,35 +207,51 @@ def _draw_velocity(panels: Sequence[tuple[str, FloatArray, FloatArray]], *, shad
     narrow = width < WIDE
     shape = (len(panels), 1) if narrow else (1, len(panels))
     figure = new_figure(width=width, height=2.6 * len(panels) if narrow else 3.0)
-    grid = figure.subplots(*shape, squeeze=False)
+    grid = figure.subplots(*shape, squeeze=False, sharey=True)
+    top = _last_shown([velocity / limit for _, velocity, limit in panels])
     for axes, (name, velocity, limit) in zip(grid.flat, panels, strict=True):
-        _draw_panel(axes, name, velocity, limit, shaded=shaded)
+        _draw_panel(axes, name, velocity / limit, limit, top, shaded=shaded)
     for axes in grid[:, 0]:
-        axes.set_ylabel("Velocity, m/s")
+        axes.set_ylabel("Velocity / limit")
     return figure
 
 
-def _draw_panel(axes: Any, name: str, velocity: FloatArray, limit: FloatArray, *, shaded: bool) -> None:
-    quiet_axes(axes, grid="both")
-    right = float(limit.max()) * 1.15
-    top = min(max(float(velocity.max()), right), 2.0 * right) * 1.05
-    shown = np.minimum(velocity, top)
+def _draw_panel(axes: Any, name: str, used: FloatArray, limit: FloatArray, top: float, *, shaded: bool) -> None:
+    quiet_axes(axes, grid="y")
+    first, last = float(limit.min()) / SIDE_MARGIN, float(limit.max()) * SIDE_MARGIN
+    shown = np.minimum(used, top)
     if shaded:
-        _shade_cells(axes, limit, shown, right, top)
+        _shade_cells(axes, np.log(limit), shown, (np.log(first), np.log(last)), top)
     else:
-        _scatter_states(axes, limit, shown, velocity / limit)
-    ends = np.array([0.0, right])
-    axes.plot(ends, ends, color=PALETTE["fails"], linewidth=1.1)
-    axes.plot(ends, NEAR_LIMIT * ends, color=PALETTE["muted"], linewidth=0.9, linestyle=(0, (4, 3)))
-    beyond = int((velocity > top).sum())
-    note = f"; {count(beyond)} above {significant(top)} m/s at the edge" if beyond else ""
-    axes.set(xlim=(0.0, right), ylim=(0.0, top), xlabel="Limit, m/s")
+        _scatter_states(axes, _beside(np.log(limit), np.log(last / first)), shown, used)
+    axes.axhline(1.0, color=PALETTE["fails"], linewidth=1.1)
+    axes.axhline(NEAR_LIMIT, color=PALETTE["muted"], linewidth=0.9, linestyle=(0, (4, 3)))
+    beyond = int((used > top).sum())
+    note = f"; {count(beyond)} above {top:.1f}" if beyond else ""
+    axes.set(xlim=(np.log(first), np.log(last)), ylim=(0.0, top * 1.02), xlabel="Limit, m/s (log scale)")
+    _mark_limits(axes, limit, np.log(last / first))
     axes.set_title(name + note, loc="left", fontsize=9)
 
 
-def _shade_cells(axes: Any, across: FloatArray, up: FloatArray, right: float, top: float) -> None:
-    numbers, columns, rows = np.histogram2d(across, up, bins=BINS, range=((0.0, right), (0.0, top)))
+def _beside(across: FloatArray, span: float) -> FloatArray:
+    """Return places a little to either side: many line cases share one limit and would hide one another."""
+    spread = np.arange(across.size) * GOLDEN % 1.0 - 0.5
+    return np.asarray(across + spread * span * 0.03, dtype=np.float64)
+
+
+def _mark_limits(axes: Any, limit: FloatArray, span: float) -> None:
+    """Mark the limits themselves on the axis, those left out that would run into the one before."""
+    marks: list[float] = []
+    for each in np.unique(limit).tolist():
+        if not marks or np.log(each / marks[-1]) > 0.11 * span:
+            marks.append(each)
+    axes.set_xticks(np.log(marks), [f"{each:.3g}" for each in marks])
+
+
+def _shade_cells(axes: Any, across: FloatArray, up: FloatArray, sides: tuple[float, float], top: float) -> None:
+    numbers, columns, rows = np.histogram2d(across, up, bins=BINS, range=(sides, (0.0, top)))
     filled = np.nonzero(numbers)
     corners = np.stack([columns[filled[0]], rows[filled[1]]], axis=1)
-    used = (corners[:, 1] + rows[1] / 2.0) / (corners[:, 0] + columns[1] / 2.0)
-    _shade(axes, corners, (float(columns[1]), float(rows[1])), used, numbers[filled] / numbers.max())
+    used = corners[:, 1] + rows[1] / 2.0
+    size = (float(columns[1] - columns[0]), float(rows[1]))
+    _shade(axes, corners, size, used, numbers[filled] / numbers.max())

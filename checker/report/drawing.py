@@ -9,6 +9,8 @@ from html import escape
 from io import StringIO
 from typing import Any
 
+from checker.report.quiet import quiet_drawing
+
 __all__ = ["NARROW", "PALETTE", "WIDE", "new_figure", "quiet_axes", "steady_style", "themed", "to_svg"]
 
 WIDE = 7.4
@@ -41,13 +43,14 @@ _STYLE: dict[str, Any] = {
 @contextmanager
 def steady_style() -> Iterator[None]:
     """Draw with this report's style alone, whatever the reader's own matplotlib settings say."""
-    import matplotlib
+    with quiet_drawing():
+        import matplotlib
 
-    with matplotlib.rc_context():
-        matplotlib.rcdefaults()
-        settings: Any = matplotlib.rcParams
-        settings.update(_STYLE)
-        yield
+        with matplotlib.rc_context():
+            matplotlib.rcdefaults()
+            settings: Any = matplotlib.rcParams
+            settings.update(_STYLE)
+            yield
 
 
 def new_figure(*, width: float, height: float) -> Any:

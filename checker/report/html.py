@@ -13,8 +13,7 @@ from checker.report.review_contract import ReviewLike
 from checker.report.safe_text import LONGEST_PROSE, shortened, visible
 from checker.report.states import state_of
 from checker.report.view import build_view
-from checker.report.wording import fields_in_words, plural
-from checker.shown import meaning_of
+from checker.report.wording import beyond, fields_in_words, listed_meaning, plural
 
 if TYPE_CHECKING:
     from jinja2 import Environment
@@ -62,7 +61,7 @@ def _environment() -> Environment:
     )
     environment.filters.update(significant=significant, utilisation=utilisation, count=count, fraction=fraction)
     environment.filters.update(drawn=Markup, state=state_of, shown=_in_shown_unit, prose=Prose, plural=plural)
-    environment.filters.update(meaning=meaning_of, fields_in_words=fields_in_words)
+    environment.filters.update(meaning=listed_meaning, fields_in_words=fields_in_words, beyond=beyond)
     environment.globals["style_sheet"] = lambda name: Markup((TEMPLATES / name).read_text(encoding="utf-8"))
     return environment
 
@@ -74,7 +73,7 @@ class Prose(str):
 
 
 def _harmless(value: Any) -> Any:
-    """Return a value as the page may show it: texts of bounded length, nothing hidden in them (escaping comes after)."""
+    """Return a value as the page may show it: bounded texts, nothing hidden in them (escaping comes after)."""
     if not isinstance(value, str) or hasattr(value, "__html__"):
         return value
     return visible(shortened(value, LONGEST_PROSE) if isinstance(value, Prose) else shortened(value))

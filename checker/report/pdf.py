@@ -6,7 +6,7 @@ from typing import Any, NoReturn
 
 from checker.report.charts import Picture
 from checker.report.html import render_html
-from checker.report.quiet import quiet_import
+from checker.report.quiet import quiet_printing
 from checker.report.review_contract import ReviewLike
 
 __all__ = ["PANGO_SENTENCE", "PdfUnavailableError", "render_pdf"]
@@ -47,10 +47,10 @@ def render_pdf(review: ReviewLike, *, pictures: tuple[Picture, ...] | None = Non
     PdfUnavailableError
         The PDF library or the system part that it needs is not there.
     """
-    page = render_html(review, pictures=pictures, paged=True)
-    with quiet_import():
-        document = _document_class()(string=page, url_fetcher=RefusingFetcher(), media_type="print")
-        content = document.write_pdf()
+    with quiet_printing():
+        document_class = _document_class()
+        page = render_html(review, pictures=pictures, paged=True)
+        content = document_class(string=page, url_fetcher=RefusingFetcher(), media_type="print").write_pdf()
     if not isinstance(content, bytes):
         raise TypeError(f"the PDF library gave no bytes but {type(content).__name__}")
     return content

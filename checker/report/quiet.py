@@ -11,12 +11,12 @@ from functools import cache
 from io import StringIO
 from pathlib import Path
 
-__all__ = ["quiet_drawing", "quiet_import"]
+__all__ = ["quiet_drawing", "quiet_printing"]
 
 
 @contextmanager
-def quiet_import() -> Iterator[None]:
-    """Let an import print nothing, and give the font caches a place where the home folder has none."""
+def quiet_printing() -> Iterator[None]:
+    """Let a library print nothing while it loads and sets pages; its caches get a place where home has none."""
     with _places_for_caches(("XDG_CACHE_HOME",)), redirect_stdout(StringIO()), redirect_stderr(StringIO()):
         yield
 
@@ -38,7 +38,8 @@ def quiet_drawing() -> Iterator[None]:
 def _places_for_caches(names: tuple[str, ...]) -> Iterator[None]:
     """Set environment variables to a temporary folder for as long as it takes, where the usual places are shut."""
     replaced = {name: os.environ.get(name) for name in names if not all(map(_is_open, _usual_places(name)))}
-    os.environ.update(dict.fromkeys(replaced, _temporary_folder().name) if replaced else {})
+    if replaced:
+        os.environ.update(dict.fromkeys(replaced, _temporary_folder().name))
     try:
         yield
     finally:
@@ -50,7 +51,7 @@ def _places_for_caches(names: tuple[str, ...]) -> Iterator[None]:
 
 
 def _usual_places(name: str) -> tuple[Path, ...]:
-    home = Path(os.path.expanduser("~"))  # noqa: PTH111 - gives the text back where there is no home
+    home = Path(os.path.expanduser("~"))
     own = os.environ.get(name)
     if own:
         return (Path(own),)

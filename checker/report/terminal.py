@@ -6,12 +6,13 @@ import math
 import textwrap
 from collections.abc import Iterator
 
+from checker.report.breaches import Breach, breaches_of, counted_both_ways
 from checker.report.numbers import NARROW_SPACE, count, utilisation
 from checker.report.review_contract import ReviewLike
-from checker.report.safe_text import visible_line
+from checker.report.safe_text import LONGEST_PROSE, shortened, visible_line
 from checker.report.states import TALLY_ORDER
+from checker.report.wording import no_exceptions, plural
 from checker.report.write import WrittenFiles
-from checker.review_model import OutcomeRow
 
 __all__ = ["WIDTH", "summary", "wrapped"]
 
@@ -37,7 +38,7 @@ def summary(review: ReviewLike, files: WrittenFiles | None) -> str:
 
 def wrapped(text: str, *, indent: str = "", first: str | None = None) -> list[str]:
     """Return a text on lines of at most 100 characters, nothing hidden in it."""
-    plain = visible_line(text.replace("\n", " ").replace(NARROW_SPACE, " "))
+    plain = visible_line(shortened(text, LONGEST_PROSE).replace("\n", " ").replace(NARROW_SPACE, " "))
     start = indent if first is None else first
     lines = textwrap.wrap(plain, WIDTH, initial_indent=start, subsequent_indent=indent, break_on_hyphens=False)
     return lines or [start.rstrip()]
@@ -54,30 +55,36 @@ def _head(review: ReviewLike) -> Iterator[str]:
 
 
 def _counts(review: ReviewLike) -> Iterator[str]:
-    extent = f"{count(review.lines_count)} lines, {count(review.line_cases)} line cases, {review.rules_count} rules"
+    extent = ", ".join(
+        (plural(review.lines_count, "line"), plural(review.line_cases, "line case"), plural(review.rules_count, "rule"))
+    )
     outcomes = ", ".join(f"{word} {count(review.tally.get(word, 0))}" for word in TALLY_ORDER)
     yield from wrapped(f"{extent}: {outcomes}", indent="  ")
     yield ""
 
 
 def _worst(review: ReviewLike) -> Iterator[str]:
-    total = len(review.exceptions)
-    if not total:
-        yield "No exceptions."
+    breaches = breaches_of(review.exceptions)
+    if not breaches:
+        yield from wrapped(no_exceptions(review))
         yield ""
         return
-    heading = "The exception" if total == 1 else f"The {min(WORST, total)} worst of {count(total)} exceptions"
-    yield from wrapped(heading)
-    for place, row in enumerate(review.exceptions[:WORST], start=1):
-        yield from wrapped(_exception(row), first=f"  {place}. ", indent="     ")
+    yield from wrapped(f"{counted_both_ways(len(review.exceptions), len(breaches))}.{_heading(len(breaches))}")
+    for breach in breaches[:WORST]:
+        yield from wrapped(_exception(breach), first=f"  {breach.rank}. ", indent="     ")
     yield ""
 
 
-def _exception(row: OutcomeRow) -> str:
-    case = row.case or "no case named"
+def _heading(total: int) -> str:
+    return f" The {WORST} worst:" if total > WORST else ""
+
+
+def _exception(breach: Breach) -> str:
+    row = breach.worst
     against = f"{row.value_shown} against {row.limit_shown}" if row.limit_shown else row.value_shown
     used = "" if math.isnan(row.utilisation) else f"utilisation {utilisation(row.utilisation)}"
-    return "; ".join(part for part in (f"{row.line_number}, {case}", row.title, against, used, row.force) if part)
+    line = f"{shortened(row.line_number)} ({shortened(breach.cases) or 'no case named'})"
+    return "; ".join(part for part in (line, row.title, against, used, row.force) if part)
 
 
 def _files(files: WrittenFiles) -> Iterator[str]:

@@ -2,14 +2,18 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass
 
+from checker.model import Source
+from checker.report.breaches import Breach, breaches_of, counted_both_ways
 from checker.report.charts import Picture
 from checker.report.numbers import percentage
 from checker.report.review_contract import ResultLike, ReviewLike
 from checker.report.states import TALLY_ORDER, State, state_of
-from checker.review_model import AssumptionItem, CellValue, OutcomeRow
+from checker.report.wording import no_exceptions
+from checker.review_model import AssumptionItem, CellValue
 
 __all__ = ["ON_PAPER", "ON_SCREEN", "AssumptionGroup", "Bounds", "LineExceptions", "Section", "View", "build_view"]
 
@@ -21,9 +25,11 @@ class Bounds:
     Attributes
     ----------
     details : int
-        Exceptions written out in full; the others stand in a compact table.
+        Exceptions (a rule on a line) written out in full; the others stand in a compact table.
     compact : int
         Rows of that compact table.
+    results : int
+        Lines in the results of every line.
     rows : int
         Rows of any other table.
     names : int
@@ -32,13 +38,16 @@ class Bounds:
 
     details: int
     compact: int
+    results: int
     rows: int
     names: int
 
 
 NO_BOUND = 10**9
-ON_SCREEN = Bounds(details=500, compact=NO_BOUND, rows=NO_BOUND, names=24)
-ON_PAPER = Bounds(details=150, compact=500, rows=1_000, names=60)
+ON_SCREEN = Bounds(details=500, compact=2_000, results=2_000, rows=NO_BOUND, names=24)
+ON_PAPER = Bounds(details=150, compact=500, results=1_000, rows=1_000, names=60)
+HTML = "exceptions.html"
+WORST_STATES_FIRST = ("does not meet", "not checked", "near limit", "approved deviation", "meets")
 
 RECOMMENDATION_STATES = {
     "no comments": "meets",
@@ -67,7 +76,7 @@ class LineExceptions:
 
     line_number: str
     service: str
-    ranked: tuple[tuple[int, OutcomeRow], ...]
+    breaches: tuple[Breach, ...]
     cells: tuple[tuple[CellValue, tuple[int, ...]], ...]
 
 
@@ -106,11 +115,17 @@ class View:
     state: State
     tally: tuple[TallyEntry, ...]
     outcomes_in_all: int
+    exceptions_text: str
     lines: tuple[LineExceptions, ...]
-    compact: tuple[tuple[int, OutcomeRow], ...]
+    compact: tuple[Breach, ...]
+    all_exceptions_in: str
     assumptions: tuple[AssumptionGroup, ...]
     results: Sequence[ResultLike]
-    inputs: str
+    results_count: int
+    all_results_in: str
+    line_list: Source | None
+    other_inputs: str
+    revisions: tuple[str, ...]
     titles: Mapping[str, str]
     approvals: tuple[Mapping[str, str], ...]
 
@@ -118,7 +133,9 @@ class View:
 def build_view(review: ReviewLike, pictures: tuple[Picture, ...], *, paged: bool) -> View:
     """Return what the templates show of a review, for the screen or for paper."""
     bounds = ON_PAPER if paged else ON_SCREEN
-    ranked = tuple(enumerate(review.exceptions, start=1))
+    breaches = breaches_of(review.exceptions)
+    results = review.results().rows
+    inputs = review.basis.inputs
     return View(
         review=review,
         pictures=pictures,
@@ -129,11 +146,17 @@ def build_view(review: ReviewLike, pictures: tuple[Picture, ...], *, paged: bool
         state=state_of(RECOMMENDATION_STATES.get(review.recommendation, "not checked")),
         tally=_tally(review),
         outcomes_in_all=sum(review.tally.values()),
-        lines=_by_line(ranked[: bounds.details]),
-        compact=ranked[bounds.details :],
+        exceptions_text=_exceptions_text(review, breaches),
+        lines=_by_line(breaches[: bounds.details]),
+        compact=breaches[bounds.details :],
+        all_exceptions_in=HTML if len(breaches) <= ON_SCREEN.details + ON_SCREEN.compact else "outcomes.json",
         assumptions=_assumption_groups(review.assumption_items),
-        results=review.results().rows,
-        inputs=", ".join(source.name for source in review.basis.inputs),
+        results=_most_telling(results, bounds.results),
+        results_count=len(results),
+        all_results_in=HTML if len(results) <= ON_SCREEN.results else "hydraulics.csv and outcomes.json",
+        line_list=inputs[0] if inputs else None,
+        other_inputs=", ".join(source.name for source in inputs[1:]),
+        revisions=tuple(getattr(review, "revisions", ())),
         titles={summary.rule: summary.title for summary in review.rule_summaries},
         approvals=_approvals(review),
     )
@@ -184,21 +207,39 @@ def _tally(review: ReviewLike) -> tuple[TallyEntry, ...]:
     return tuple(entries)
 
 
-def _by_line(ranked: Iterable[tuple[int, OutcomeRow]]) -> tuple[LineExceptions, ...]:
-    groups: dict[str, list[tuple[int, OutcomeRow]]] = {}
-    for rank, row in ranked:
-        groups.setdefault(row.line_number, []).append((rank, row))
+def _exceptions_text(review: ReviewLike, breaches: Sequence[Breach]) -> str:
+    outcomes = len(review.exceptions)
+    return f"{counted_both_ways(outcomes, len(breaches))}." if outcomes else no_exceptions(review)
+
+
+def _most_telling(rows: Sequence[ResultLike], most: int) -> Sequence[ResultLike]:
+    """Return all rows in the order of the list, or as many as may be shown, the worst states first."""
+    if len(rows) <= most:
+        return rows
+    places = {state: place for place, state in enumerate(WORST_STATES_FIRST)}
+
+    def standing(row: ResultLike) -> tuple[int, float]:
+        used = -1.0 if math.isnan(row.utilisation) else row.utilisation
+        return places.get(row.state, len(places)), -used
+
+    return sorted(rows, key=standing)[:most]
+
+
+def _by_line(breaches: Iterable[Breach]) -> tuple[LineExceptions, ...]:
+    groups: dict[str, list[Breach]] = {}
+    for breach in breaches:
+        groups.setdefault(breach.worst.line_number, []).append(breach)
     return tuple(
-        LineExceptions(line, members[0][1].service, tuple(members), _cells_once(members))
+        LineExceptions(line, members[0].worst.service, tuple(members), _cells_once(members))
         for line, members in groups.items()
     )
 
 
-def _cells_once(members: Iterable[tuple[int, OutcomeRow]]) -> tuple[tuple[CellValue, tuple[int, ...]], ...]:
+def _cells_once(members: Iterable[Breach]) -> tuple[tuple[CellValue, tuple[int, ...]], ...]:
     ranks: dict[CellValue, list[int]] = {}
-    for rank, row in members:
-        for cell in dict.fromkeys(row.cells):
-            ranks.setdefault(cell, []).append(rank)
+    for breach in members:
+        for cell in dict.fromkeys(cell for row in breach.rows for cell in row.cells):
+            ranks.setdefault(cell, []).append(breach.rank)
     return tuple((cell, tuple(mine)) for cell, mine in ranks.items())
 
 

@@ -3,13 +3,14 @@
 from __future__ import annotations
 
 import re
+from functools import cache
 
 from checker.fields import all_fields
 from checker.report.numbers import count
 from checker.report.review_contract import ReviewLike
 from checker.shown import meaning_of
 
-__all__ = ["fields_in_words", "no_exceptions", "plural"]
+__all__ = ["beyond", "fields_in_words", "listed_meaning", "no_exceptions", "plural"]
 
 _CHECKED = ("meets", "does not meet", "approved deviation")
 # Quoted texts are the list's own and stay as they are.
@@ -35,15 +36,31 @@ def no_exceptions(review: ReviewLike) -> str:
     return f"No exceptions: none among the {share:.1f} % that could be checked."
 
 
+def beyond(example: str, reason: str) -> str:
+    """Return what an example says beyond the reason of its group: the cell, and what stands in it."""
+    return example.removeprefix(reason).strip()
+
+
 def fields_in_words(text: str) -> str:
     """Return a sentence with each field called by its meaning; its name follows where the meaning differs."""
-    known = {field.name for field in all_fields()}
 
     def named(match: re.Match[str]) -> str:
         name = match[0]
-        meaning = name if name.startswith("'") else meaning_of(name)
-        if meaning == name or (name not in known and meaning == name.replace("_", " ")):
+        if name.startswith("'"):
             return name
-        return meaning if meaning == name.replace("_", " ") else f"{meaning} ({name})"
+        plain, meaning = name.replace("_", " "), listed_meaning(name)
+        if meaning != plain:
+            return f"{meaning} ({name})"
+        return plain if name in _listed() else name
 
     return _QUOTED_OR_NAME.sub(named, text)
+
+
+def listed_meaning(name: str) -> str:
+    """Return what a field of the list means; of a computed one, what that means."""
+    return _listed().get(name) or meaning_of(name)
+
+
+@cache
+def _listed() -> dict[str, str]:
+    return {field.name: field.meaning for field in all_fields()}

@@ -9,6 +9,7 @@ from pathlib import Path
 from checker.report.atomic import remove_file, write_files
 from checker.report.charts import Picture, draw_pictures
 from checker.report.csv_file import hydraulics_csv
+from checker.report.extent import pages_worth, what_is_prepared
 from checker.report.html import render_html
 from checker.report.json_file import outcomes_json
 from checker.report.pdf import PdfUnavailableError, render_pdf
@@ -56,14 +57,14 @@ def write_report(review: ReviewLike, folder: Path, *, progress: Callable[[str], 
     """
     progress("drawing the pictures")
     pictures = draw_pictures(review)
-    progress(f"preparing {HTML_NAME}, {JSON_NAME} and {CSV_NAME}")
+    progress(f"preparing {HTML_NAME}, {JSON_NAME} and {CSV_NAME}: {what_is_prepared(review)}")
     texts = {
         HTML_NAME: render_html(review, pictures=pictures),
         JSON_NAME: outcomes_json(review),
         CSV_NAME: hydraulics_csv(review),
     }
     contents = {name: text.encode("utf-8", errors="backslashreplace") for name, text in texts.items()}
-    progress(f"preparing {PDF_NAME}")
+    progress(f"preparing {PDF_NAME}: about {pages_worth(review)} pages worth")
     printed, problem = _printed(review, pictures)
     paths = write_files(folder, {**contents, **printed})
     if problem and remove_file(folder / PDF_NAME):
