@@ -76,7 +76,7 @@ def recommend(
     unchecked = int((judgement.outcome == Outcome.NOT_CHECKED).sum())
     coverage = coverage_of(judgement)
     revise = [
-        f"{_plural(shall, 'outcome')} not met where the requirement is a `shall`" if shall else "",
+        f"{_plural(shall, 'outcome')} not met where the requirement is a shall" if shall else "",
         f"{_plural(gross, 'outcome')} not met by more than the factor {gross_factor:g}" if gross else "",
     ]
     share = f"{100.0 * coverage:.1f} % of the applicable outcomes could be checked"

@@ -109,7 +109,7 @@ IMPOSSIBLE = [
     ("Flow [kg/h]", "-50000", "flow_mass", "is From/To reversed?"),
     ("Flow [kg/h]", "1e308", "flow_mass", "at or above"),
     ("Flow [kg/h]", "1e309", "flow_mass", "not a finite number"),
-    ("Visc [cP]", "0", "viscosity", "at or below 0 cP"),
+    ("Visc [cP]", "0", "viscosity", "at or below 0.0001 cP"),
     ("Length [m]", "-42", "length", "at or below 0 m"),
     ("Length [m]", "1e300", "length", "at or above 1e+06 m"),
     ("Size (NPS)", "0", "size", "not above zero"),
