@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from functools import cache
 from typing import Any
 
@@ -15,7 +16,7 @@ from checker.evaluation import derived, fluid_state, hydraulic_state, identity, 
 from checker.evaluation.provider import Provider
 from checker.fields import all_fields
 from checker.intake.placeholders import placeholder
-from checker.model import Coded, Gap, LineList
+from checker.model import Coded, LineList
 
 __all__ = ["BASE_FIELDS", "Values", "known_fields", "provider_of"]
 
@@ -52,6 +53,7 @@ def known_fields() -> frozenset[str]:
     return frozenset(listed | suffixed | set(_providers()) | set(LIMIT_DIMENSION) | states | set(BASE_FIELDS))
 
 
+_DIGIT = re.compile(r"\d")
 NORMAL_CASE = "normal"
 NO_LIMIT, NOT_KNOWN = 1, 2
 
@@ -153,9 +155,13 @@ def _groups(line_list: LineList) -> NDArray[np.int32]:
     """Return one code per distinct line number: rows of one number are one line, those without one each their own."""
     codes: dict[str | int, int] = {}
     numbers = line_list.line_number
-    given = {text: placeholder(text, "line_number") == Gap.GIVEN for text in dict.fromkeys(numbers)}
-    keys = (text.casefold() if given[text] else index for index, text in enumerate(numbers))
-    by_line = np.array([codes.setdefault(key, len(codes)) for key in keys], dtype=np.int32)
+    open_ones = {text for text in set(numbers) if not _DIGIT.search(text) and placeholder(text, "line_number")}
+    keys: list[str | int] = [text.casefold() for text in numbers]
+    if open_ones:
+        keys = [
+            index if text in open_ones else key for index, (text, key) in enumerate(zip(numbers, keys, strict=True))
+        ]
+    by_line = np.fromiter((codes.setdefault(key, len(codes)) for key in keys), dtype=np.int32, count=len(keys))
     return by_line[line_list.line] if by_line.size else np.zeros(0, dtype=np.int32)
 
 
