@@ -86,11 +86,18 @@ def _newlines(row: Sequence[str]) -> int:
     return sum(cell.count("\n") + cell.count("\r") - cell.count("\r\n") for cell in row)
 
 
-def _remembered(text: str, latest: list[str]) -> Iterator[str]:
-    """Yield the lines of a text and keep the latest at hand for a message."""
-    for line in io.StringIO(text, newline=""):
-        latest[0] = line
-        yield line
+class _TextLines:
+    """The lines of a text, split the first time a message needs one."""
+
+    def __init__(self, text: str) -> None:
+        self._text = text
+        self._lines: list[str] = []
+
+    def line(self, number: int) -> str:
+        """Return a line, counted from 1; empty beyond the last."""
+        if not self._lines:
+            self._lines = list(io.StringIO(self._text, newline=""))
+        return self._lines[number - 1] if 0 < number <= len(self._lines) else ""
 
 
 def _damaged(error: csv.Error, file: str, row: int, line: int, lines_read: int, latest: str) -> str:
@@ -111,8 +118,8 @@ def read_blocks(text: str, *, delimiter: str, file: str) -> Iterator[Block]:
     InputError
         If a quotation mark is not closed, or the file has too many rows or columns or too long a cell.
     """
-    latest = [""]
-    reader = csv.reader(_remembered(text, latest), delimiter=delimiter, strict=True)
+    text_lines = _TextLines(text)
+    reader = csv.reader(io.StringIO(text, newline=""), delimiter=delimiter, strict=True)
     long_lines = max(map(len, text.split("\n"))) > LONGEST_CELL
     first, line, width = 0, 0, 0
     while True:
@@ -122,7 +129,8 @@ def read_blocks(text: str, *, delimiter: str, file: str) -> Iterator[Block]:
         except csv.Error as error:
             line += len(block.rows) + sum(map(_newlines, block.rows))
             row = first + len(block.rows)
-            block.damaged[len(block.rows)] = _damaged(error, file, row + 1, line, reader.line_num, latest[0])
+            latest = text_lines.line(reader.line_num)
+            block.damaged[len(block.rows)] = _damaged(error, file, row + 1, line, reader.line_num, latest)
             block.rows.append([])
             line = reader.line_num - len(block.rows)
         if not block.rows:
