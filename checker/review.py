@@ -18,7 +18,7 @@ from checker.errors import InputError, Problem, ToolFaultError
 from checker.evaluation.values import Values, known_fields
 from checker.intake import read_line_list
 from checker.recommendation import recommend
-from checker.review_basis import UNMATCHED_WORDS, service_matches
+from checker.review_basis import ASSUMED_FIELDS, UNMATCHED_WORDS, service_matches
 from checker.review_record import AppliedDeviations, Review
 from checker.ruling.catalogue import load_rules
 from checker.ruling.contract import Outcome, Rule
@@ -99,9 +99,7 @@ def evaluate(values: Values, rules: tuple[Rule, ...], *, approvals: DeviationFil
     line_list = values.line_list
     unmatched = sum(match.matched.endswith(UNMATCHED_WORDS) for match in service_matches(values))
     without_flow, any_flow = _lines_without_flow(values)
-    assumed = int(
-        any(values[f"{name}_assumed"].any() for name in ("compressibility", "heat_capacity_ratio", "roughness"))
-    )
+    assumed = sum(bool(values[f"{name}_assumed"].any()) for name in ASSUMED_FIELDS)
     recommended = recommend(
         judgement,
         gross_factor=values.criteria.gross_factor,

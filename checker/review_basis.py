@@ -17,7 +17,7 @@ from checker.ruling.contract import Outcome
 from checker.ruling.run import Judgement
 from checker.shown import shown_number
 
-__all__ = ["UNMATCHED_WORDS", "assumption_items", "basis_of", "rule_summaries", "service_matches"]
+__all__ = ["ASSUMED_FIELDS", "UNMATCHED_WORDS", "assumption_items", "basis_of", "rule_summaries", "service_matches"]
 
 UNMATCHED_WORDS = "(general row: nothing matched)"
 _PACKAGES = ("linelist-checker", "numpy")
@@ -38,7 +38,7 @@ _TWO_PHASE = {
     ),
     "homogeneous": ("Homogeneous mixture", "two-phase pressure drop without slip", "no-slip mixture as one fluid"),
 }
-_ASSUMED_LISTED = ("schedule_used", "roughness", "compressibility", "heat_capacity_ratio")
+ASSUMED_FIELDS = ("schedule_used", "roughness", "compressibility", "heat_capacity_ratio")
 
 
 def _version(package: str) -> str:
@@ -101,7 +101,7 @@ def assumption_items(values: Values) -> tuple[AssumptionItem, ...]:
     """Return every value supplied for a line, once a line and field."""
     line_list = values.line_list
     items = []
-    for field in _ASSUMED_LISTED:
+    for field in ASSUMED_FIELDS:
         cases = np.flatnonzero(values[f"{field}_assumed"])
         _, first = np.unique(line_list.line[cases], return_index=True)
         for line_case in cases[first]:

@@ -9,7 +9,7 @@ from checker.hydraulics.cases import Cases, Fittings, Results, common_reasons, f
 from checker.hydraulics.ends import mass_flux, pressure_before_entrance, pressure_behind_entrance
 from checker.hydraulics.friction import friction_factor, reynolds, transitional
 from checker.hydraulics.gas import GasFlow, choking_pressure, inlet_from_outlet, mach_number, outlet_from_inlet
-from checker.hydraulics.gas_profile import along_line
+from checker.hydraulics.gas_profile import GasProfile, along_line
 from checker.hydraulics.kinetic_energy import LAMINAR_FACTOR, kinetic_energy_factor
 from checker.hydraulics.liquid import pressure_gradient
 from checker.hydraulics.solution import INLET, OUTLET, STATUS_CODES
@@ -64,6 +64,21 @@ class GasLine:
         return GasFlow(
             *(np.where(from_inlet, first, second) for first, second in zip(downstream, upstream, strict=True))
         )
+
+    def profile(self, flow: GasFlow) -> tuple[GasProfile, FloatArray]:
+        """Integrals along the solved line, and the share of its friction that the pipe itself takes."""
+        loss = self.loss_pipe + self.loss_fittings
+        found = along_line(
+            pressure_inlet=flow.pressure_inlet,
+            pressure_outlet=flow.pressure_outlet,
+            path=flow.path,
+            mass_flux=self.flux,
+            pressure_over_density=self.energy,
+            loss_coefficient=loss,
+            elevation_change=self.cases.elevation_change,
+            kinetic_energy_factor=self.alpha,
+        )
+        return found, np.where(loss == 0.0, 0.0, self.loss_pipe / loss)
 
 
 def solve_gas(cases: Cases) -> Results:
@@ -140,18 +155,7 @@ def _planes(line: GasLine, flow: GasFlow) -> tuple[FloatArray, FloatArray, BoolA
 
 
 def _drops(line: GasLine, flow: GasFlow, blocked: BoolArray) -> Results:
-    loss = line.loss_pipe + line.loss_fittings
-    profile = along_line(
-        pressure_inlet=flow.pressure_inlet,
-        pressure_outlet=flow.pressure_outlet,
-        path=flow.path,
-        mass_flux=line.flux,
-        pressure_over_density=line.energy,
-        loss_coefficient=loss,
-        elevation_change=line.cases.elevation_change,
-        kinetic_energy_factor=line.alpha,
-    )
-    share = np.where(loss == 0.0, 0.0, line.loss_pipe / loss)
+    profile, share = line.profile(flow)
     head = 0.5 * line.flux * line.flux * line.energy / flow.pressure_inlet
     taken_up = np.where(line.fittings.entrance == 0.0, 0.0, line.alpha * line.fittings.entrance * head)
     entry_loss = np.where(line.fittings.entrance == 0.0, 0.0, line.fittings.entrance_coefficient * head)

@@ -12,7 +12,7 @@ from checker.hydraulics.cases import Cases, Fittings, fittings_of
 from checker.hydraulics.compose import cases_from
 from checker.hydraulics.ends import mass_flux
 from checker.hydraulics.gas_line import GasLine
-from checker.hydraulics.gas_profile import along_line, pressure_energy
+from checker.hydraulics.gas_profile import pressure_energy
 from checker.hydraulics.solution import GAS, LIQUID, TWO_PHASE, Methods, Solution
 from checker.hydraulics.two_phase_solver import TwoPhaseCases
 
@@ -183,18 +183,7 @@ def _liquid(cases: Cases, solved: dict[str, FloatArray]) -> dict[str, FloatArray
 def _gas(cases: Cases, fittings: Fittings) -> dict[str, FloatArray]:
     line = GasLine(cases)
     flow = line.solve()
-    loss = line.loss_pipe + line.loss_fittings
-    profile = along_line(
-        pressure_inlet=flow.pressure_inlet,
-        pressure_outlet=flow.pressure_outlet,
-        path=flow.path,
-        mass_flux=line.flux,
-        pressure_over_density=line.energy,
-        loss_coefficient=loss,
-        elevation_change=cases.elevation_change,
-        kinetic_energy_factor=line.alpha,
-    )
-    share = np.where(loss == 0.0, 0.0, line.loss_pipe / loss)
+    profile, share = line.profile(flow)
     head = 0.5 * (line.flux * line.energy / flow.pressure_inlet) ** 2
     entrance = np.where(fittings.entrance == 0.0, 0.0, fittings.entrance_coefficient * head)
     step = np.where(fittings.entrance == 0.0, 0.0, line.entrance_step * head)

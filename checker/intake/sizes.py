@@ -1,24 +1,22 @@
 """Nominal sizes as lists write them: NPS with fractions, DN, inch marks; held as NPS inches.
 
-The pairs of NPS and DN stand in `tables/nominal_sizes.csv`, after ASME B36.10M (DN as in ISO 6708).
+The pairs of NPS and DN are those of the criteria, after ASME B36.10M (DN as in ISO 6708).
 """
 
 from __future__ import annotations
 
-import csv
 import re
 from collections.abc import Iterable
 from functools import cache, lru_cache
-from pathlib import Path
 from typing import NamedTuple
 
+from checker.criteria.nominal_size import nominal_sizes
 from checker.intake.placeholders import placeholder
 from checker.intake.texts import shown, tidy
 from checker.model import Gap
 
 __all__ = ["SizeReading", "column_basis", "read_size"]
 
-TABLE = Path(__file__).parent.parent / "tables" / "nominal_sizes.csv"
 NAN = float("nan")
 _VULGAR = {"\u00bc": "1/4", "\u00bd": "1/2", "\u00be": "3/4", "\u215b": "1/8", "\u215c": "3/8"}
 _DN = re.compile(
@@ -44,8 +42,7 @@ class SizeReading(NamedTuple):
 
 @cache
 def _pairs() -> tuple[tuple[float, float], ...]:
-    with TABLE.open(encoding="utf-8", newline="") as handle:
-        return tuple((float(row["nps"]), float(row["dn"])) for row in csv.DictReader(handle))
+    return tuple((nps, float(dn)) for nps, dn in nominal_sizes().items())
 
 
 def _refused(text: str, reason: str, basis: str = "") -> SizeReading:

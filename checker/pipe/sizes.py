@@ -12,7 +12,7 @@ from numpy.typing import ArrayLike, NDArray
 
 from checker.tables.reading import read_table
 
-__all__ = ["PipeDimensions", "dn_from_nps", "look_up", "normalised_schedule", "nps_from_dn", "schedules"]
+__all__ = ["PipeDimensions", "look_up", "normalised_schedule", "schedules"]
 
 FloatArray = NDArray[np.float64]
 BoolArray = NDArray[np.bool_]
@@ -135,21 +135,3 @@ def _row_of(size: FloatArray, sizes: FloatArray) -> NDArray[np.intp]:
     """Row of a size that stands in the table, else the last row."""
     place = np.minimum(np.searchsorted(sizes, size), sizes.size - 1)
     return np.where(np.abs(sizes[place] - size) <= 1e-9 * sizes[place], place, sizes.size).astype(np.intp)
-
-
-@cache
-def _pairs() -> tuple[FloatArray, FloatArray]:
-    pairs = sorted({(float(row["nps"]), float(row["dn"])) for row in read_table("pipe_dimensions")})
-    return np.array([nps for nps, _ in pairs]), np.array([dn for _, dn in pairs])
-
-
-def dn_from_nps(*, nps: ArrayLike) -> FloatArray:
-    """DN by ISO 6708 of a nominal pipe size in inches; NaN for a size in no standard (ASME B36.10M, table 1)."""
-    inches, nominal = _pairs()
-    return np.append(nominal, np.nan)[_row_of(np.asarray(nps, dtype=np.float64), inches)]
-
-
-def nps_from_dn(*, dn: ArrayLike) -> FloatArray:
-    """Nominal pipe size in inches of a DN by ISO 6708; NaN for a size in no standard (ASME B36.10M, table 1)."""
-    inches, nominal = _pairs()
-    return np.append(inches, np.nan)[_row_of(np.asarray(dn, dtype=np.float64), nominal)]

@@ -40,18 +40,28 @@ def test_gate_on_the_example_asks_for_a_revision() -> None:
     assert result.stdout.splitlines()[1] == "revise and resubmit"
 
 
-def test_gate_ends_with_0_on_comments_and_says_default_criteria(tmp_path: Path) -> None:
-    result = run("gate", str(written(tmp_path, GOOD_ROW)))
-    assert "screened on default criteria: " in result.stdout
-    recommendation = result.stdout.splitlines()[1].removeprefix("screened on default criteria: ")
-    assert (result.exit_code, recommendation) in {(0, "comments"), (0, "no comments"), (1, "incomplete")}
+def test_gate_ends_with_0_where_all_is_met_and_says_default_criteria(tmp_path: Path) -> None:
+    result = run("gate", str(written(tmp_path, GOOD_ROW.replace("CWS,L", "pump discharge,L"))))
+    assert result.exit_code == 0
+    assert result.stdout.splitlines()[:2] == [
+        "checked 100.0 %, not checked 0.0 %",
+        "screened on default criteria: no comments",
+    ]
 
 
-def test_gate_is_incomplete_where_nothing_could_be_judged(tmp_path: Path) -> None:
+def test_gate_never_ends_with_0_where_nothing_could_be_judged(tmp_path: Path) -> None:
+    held = '"6""-CWS-1-B1A",CWS,HOLD,"6""",HOLD,100000,4.0,25,997,0.89,50,none,0,carbon steel'
+    result = run("gate", str(written(tmp_path, held)))
+    assert result.exit_code == 1
+    assert result.stdout.splitlines()[0] == "checked 0.0 %, not checked 100.0 %"
+    assert "incomplete" in result.stdout
+
+
+def test_gate_refuses_a_list_of_which_no_number_can_be_read(tmp_path: Path) -> None:
     held = '"6""-CWS-1-B1A",HOLD,HOLD,HOLD,HOLD,HOLD,HOLD,HOLD,HOLD,HOLD,HOLD,HOLD,HOLD,HOLD'
     result = run("gate", str(written(tmp_path, held)))
-    assert result.exit_code != 0
-    assert "checked 0.0 %" in result.stdout or result.exit_code == 2
+    assert result.exit_code == 2
+    assert "not one number" in result.stderr
 
 
 @pytest.mark.parametrize(

@@ -6,7 +6,7 @@ import numpy as np
 import pytest
 from fluids.piping import nearest_pipe
 
-from checker.pipe.sizes import dn_from_nps, look_up, normalised_schedule, nps_from_dn, schedules
+from checker.pipe.sizes import look_up, normalised_schedule, schedules
 from checker.tables.reading import read_table
 
 ROWS = read_table("pipe_dimensions")
@@ -89,12 +89,3 @@ def test_which_schedules_exist(schedule: str, sizes: tuple[float, ...], missing:
     every = [*sizes, *missing]
     found = look_up(nps=every, schedule_code=np.zeros(len(every), dtype=int), schedule_names=[f"Sch {schedule}"])
     assert found.exists.tolist() == [True] * len(sizes) + [False] * len(missing)
-
-
-def test_nps_and_dn_both_ways() -> None:
-    """ISO 6708 and ASME B36.10M, table 1."""
-    pairs = {0.5: 15, 0.75: 20, 1: 25, 1.25: 32, 1.5: 40, 2: 50, 2.5: 65, 3: 80, 3.5: 90, 4: 100, 6: 150, 48: 1200}
-    assert dn_from_nps(nps=list(pairs)).tolist() == list(pairs.values())
-    assert nps_from_dn(dn=list(pairs.values())).tolist() == list(pairs)
-    assert np.isnan(dn_from_nps(nps=[7.0, np.nan])).all()
-    assert np.isnan(nps_from_dn(dn=[55.0, np.nan])).all()
