@@ -16,7 +16,7 @@ from numpy.typing import NDArray
 from checker.errors import InputError, Problem
 from checker.evaluation.values import Values
 from checker.intake.case_names import canonical_case
-from checker.model import Source
+from checker.model import Source, base_case
 from checker.ruling.contract import Outcome, Rule
 from checker.ruling.run import EQUAL_WITHIN, Judged
 from checker.units import UnitRefusedError, read_quantity
@@ -144,7 +144,7 @@ def where_approved(
     wanted = deviation.line_number.casefold()
     mine = np.array([number.casefold() == wanted for number in line_list.line_number], dtype=np.bool_)[line_list.line]
     if deviation.case:
-        mine &= line_list.case.where([text == deviation.case for text in line_list.case.texts])
+        mine &= line_list.case.where([deviation.case in (text, base_case(text)) for text in line_list.case.texts])
     spoken_of = mine & (judged.outcome == Outcome.DOES_NOT_MEET)
     slack = EQUAL_WITHIN * abs(deviation.approved_value)
     with np.errstate(invalid="ignore"):

@@ -6,31 +6,45 @@ with the kind of its gap beside it, and a cell's address is a row number per lin
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Callable, Mapping, Sequence
 from dataclasses import dataclass, field
 from enum import IntEnum
+from typing import NamedTuple
 
 import numpy as np
 from numpy.typing import NDArray
 
 __all__ = [
+    "RANGE_WORDS",
     "Address",
     "CaseKind",
+    "CellRecord",
     "Coded",
     "Column",
     "Gap",
+    "HeaderMatch",
     "HoldItem",
     "LineList",
     "Phase",
     "PressureBasis",
+    "RangeItem",
     "Source",
     "UnreadItem",
+    "base_case",
 ]
 
 FloatArray = NDArray[np.float64]
 IntArray = NDArray[np.int32]
 CodeArray = NDArray[np.int8]
 BoolArray = NDArray[np.bool_]
+
+#: Between a case and the end of a range that its line case takes: ``normal, with low pressure``.
+RANGE_WORDS = ", with "
+
+
+def base_case(case: str) -> str:
+    """Return the case as the list names it, without the end of a range that a line case takes."""
+    return case.partition(RANGE_WORDS)[0]
 
 
 class Phase(IntEnum):
@@ -92,6 +106,20 @@ class Address:
         return f"{self.file}, row {self.row}, column '{self.column}'"
 
 
+class CellRecord(NamedTuple):
+    """One number cell in full: as written, the number or numbers read, their unit, the SI values, and what to say.
+
+    A range has two numbers, the lower one first; a limit or an approximation has one, and `remark` says why it is
+    not used; a cell without a number has none.
+    """
+
+    text: str
+    numbers: tuple[float, ...] = ()
+    unit: str = ""
+    values: tuple[float, ...] = ()
+    remark: str = ""
+
+
 @dataclass(frozen=True, slots=True)
 class Column:
     """One matched column of the list.
@@ -108,6 +136,8 @@ class Column:
         Unit read for it, as written; empty for texts and for columns whose cells carry their own.
     cells : sequence of str
         The cells as written, one a line of the list.
+    record : callable, optional
+        Reads one cell of a number column again, in full; None where the column holds no numbers.
     """
 
     field: str
@@ -115,6 +145,7 @@ class Column:
     case: str
     unit: str
     cells: Sequence[str]
+    record: Callable[[str], CellRecord] | None = None
 
 
 @dataclass(frozen=True, slots=True)
@@ -159,6 +190,35 @@ class UnreadItem:
     address: Address
 
 
+@dataclass(frozen=True, slots=True)
+class HeaderMatch:
+    """What became of one header of the list.
+
+    `position` counts from 1; `field` is empty where no field claims the header, and `remark` then names the closest
+    one; `unit` is the unit as written, and `remark` also says where a unit came from that the header does not state,
+    or why the column is not read.
+    """
+
+    position: int
+    header: str
+    field: str
+    case: str
+    unit: str
+    remark: str
+
+
+@dataclass(frozen=True, slots=True)
+class RangeItem:
+    """One cell that states two values: both ends in SI, each judged as a line case of its own."""
+
+    line_number: str
+    field: str
+    text: str
+    low: float
+    high: float
+    address: Address
+
+
 @dataclass(frozen=True)
 class LineList:
     """A line list as it was understood.
@@ -195,6 +255,12 @@ class LineList:
         Sentence for each refused value, by field and line case.
     holds, unread : tuple
         HOLD register and refused rows or cells.
+    deleted : tuple of UnreadItem
+        Lines that their originator has deleted (struck through, or said so): listed, not checked.
+    matching : tuple of HeaderMatch
+        What became of every header.
+    ranges : tuple of RangeItem
+        Cells that state two values.
     """
 
     source: Source
@@ -213,6 +279,9 @@ class LineList:
     refusals: Mapping[tuple[str, int], str] = field(default_factory=dict)
     holds: tuple[HoldItem, ...] = ()
     unread: tuple[UnreadItem, ...] = ()
+    deleted: tuple[UnreadItem, ...] = ()
+    matching: tuple[HeaderMatch, ...] = ()
+    ranges: tuple[RangeItem, ...] = ()
 
     @property
     def line_cases(self) -> int:
@@ -241,7 +310,7 @@ class LineList:
     def column_of(self, name: str, line_case: int) -> Column | None:
         """Return the column from which a field of a line case was read."""
         mine = [column for column in self.columns if column.field == name]
-        case = self.case.text(line_case)
+        case = base_case(self.case.text(line_case))
         return next((column for column in mine if column.case == case), next((c for c in mine if not c.case), None))
 
     def address(self, name: str, line_case: int) -> Address | None:
@@ -255,3 +324,10 @@ class LineList:
         """Return the cell as written from which a field of a line case was read."""
         column = self.column_of(name, line_case)
         return "" if column is None else column.cells[int(self.line[line_case])]
+
+    def record(self, name: str, line_case: int) -> CellRecord | None:
+        """Return a number field's cell in full: text, number, unit and SI value; None where there is no such column."""
+        column = self.column_of(name, line_case)
+        if column is None or column.record is None:
+            return None
+        return column.record(column.cells[int(self.line[line_case])])

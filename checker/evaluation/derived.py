@@ -11,7 +11,7 @@ from checker.evaluation.gaps import given_state
 from checker.evaluation.provider import provider
 from checker.hydraulics.erosion import erosional_velocity as erosional_velocity_of
 from checker.hydraulics.suction import npsh_available as npsh_from_terms
-from checker.model import Coded, Gap
+from checker.model import Coded, Gap, base_case
 from checker.ruling.tristate import NO, UNKNOWN, YES
 
 __all__ = ["PROVIDERS"]
@@ -99,7 +99,7 @@ def continuous(*, case_kind: CodeArray) -> CodeArray:
 
 def is_minimum_case(*, case: Coded, own_flow: NDArray[np.bool_]) -> CodeArray:
     """Return 1 where the case is the minimum case with a flow of its own, 0 where not, -1 where it is not known."""
-    table = np.array([*(YES if text == MINIMUM_CASE else NO for text in case.texts), UNKNOWN], dtype=np.int8)
+    table = np.array([*(YES if base_case(text) == MINIMUM_CASE else NO for text in case.texts), UNKNOWN], dtype=np.int8)
     named = table[case.codes]
     return np.where((named == YES) & ~own_flow, NO, named).astype(np.int8)
 

@@ -11,7 +11,7 @@ from checker.criteria.criteria import Criteria
 from checker.criteria.services import service_codes, unmatched_codes
 from checker.evaluation.provider import provider
 from checker.fluid.gas_density import GREATEST_GAS_DENSITY
-from checker.model import Coded, Gap, Phase, PressureBasis
+from checker.model import Coded, Gap, Phase, PressureBasis, base_case
 
 __all__ = ["PROVIDERS"]
 
@@ -104,7 +104,7 @@ def relief_load_given(
     stated = np.zeros((len(criteria.services) + 1, len(case.texts) + 1), dtype=np.bool_)
     for row, service in enumerate(criteria.services):
         name = service.relief_case.casefold()
-        stated[row, :-1] = [text == name or text.startswith(f"{name} ") for text in case.texts]
+        stated[row, :-1] = [text == name or text.startswith(f"{name} ") for text in map(base_case, case.texts)]
     loads = np.where(relief & stated[service_code, case.codes], flow_mass, np.nan)
     groups = int(line_group.max(initial=-1)) + 1
     greatest, load = np.zeros(groups), np.zeros(groups)

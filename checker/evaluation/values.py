@@ -16,7 +16,7 @@ from checker.evaluation import derived, fluid_state, hydraulic_state, identity, 
 from checker.evaluation.provider import Provider
 from checker.fields import all_fields
 from checker.intake.placeholders import placeholder
-from checker.model import Coded, LineList
+from checker.model import Coded, LineList, base_case
 
 __all__ = ["BASE_FIELDS", "Values", "known_fields", "provider_of"]
 
@@ -147,7 +147,7 @@ def _own_flow(line_list: LineList) -> NDArray[np.bool_]:
     if line_list.has("case") or len(line_list.case.texts) < 2:
         return np.ones(line_list.line_cases, dtype=np.bool_)
     return line_list.case.where(
-        [text in named or (text == NORMAL_CASE and "" in named) for text in line_list.case.texts]
+        [text in named or (text == NORMAL_CASE and "" in named) for text in map(base_case, line_list.case.texts)]
     )
 
 

@@ -12,7 +12,7 @@ import numpy as np
 from checker.errors import InputError, Problem
 from checker.intake.cells import CellCollector, CodedCells, NumberCells, NumberCollector
 from checker.intake.layout import Layout
-from checker.intake.records import MOST_COLUMNS, Block, Form, read_blocks
+from checker.intake.records import MOST_COLUMNS, Block, Form
 from checker.intake.texts import place, shown
 from checker.model import Address, BoolArray, IntArray, UnreadItem
 
@@ -48,6 +48,7 @@ class Lines:
     broken: dict[int, str]
     unread: tuple[UnreadItem, ...]
     notes: tuple[str, ...]
+    deleted: tuple[UnreadItem, ...] = ()
 
 
 class _Table:
@@ -150,10 +151,10 @@ def _unread(index: int, row: int, reason: str, columns: Sequence[Cells], file: s
     return UnreadItem("", text[:200], f"Row {row} {shown(text)}: {reason}", Address(file, row, header))
 
 
-def _table(text: str, form: Form, layout: Layout, number_columns: Collection[int], file: str) -> _Table:
+def _table(blocks: Iterable[Block], form: Form, layout: Layout, number_columns: Collection[int], file: str) -> _Table:
     table = _Table(len(layout.headers), number_columns)
     skip = layout.first_row - 1
-    for block in read_blocks(text, delimiter=form.delimiter, file=file):
+    for block in blocks:
         above = max(0, min(skip - block.first, len(block.rows)))
         if above:
             _refuse_damaged_header(block, above, layout, form, file)
@@ -178,15 +179,40 @@ def _refuse_damaged_header(block: Block, above: int, layout: Layout, form: Form,
         raise InputError(Problem(what, where=place(file, block.first + row + 1), remedy=remedy))
 
 
+def _deleted(
+    row_numbers: Sequence[int],
+    numbers: Sequence[str],
+    keep: BoolArray,
+    struck: Collection[int],
+    file: str,
+    header: str,
+) -> tuple[UnreadItem, ...]:
+    """Take the lines that are struck through out of the lines kept, and return them."""
+    found = []
+    for index, row in enumerate(row_numbers if struck else ()):
+        if keep[index] and row - 1 in struck:
+            keep[index] = False
+            reason = f"Row {row}: the line is struck through, so it is taken as deleted and is not checked."
+            found.append(UnreadItem(numbers[index], numbers[index], reason, Address(file, row, header)))
+    return tuple(found)
+
+
 def find_lines(
-    text: str, form: Form, layout: Layout, *, file: str, line_column: int, number_columns: Collection[int]
+    blocks: Iterable[Block],
+    form: Form,
+    layout: Layout,
+    *,
+    file: str,
+    line_column: int,
+    number_columns: Collection[int],
+    struck: Collection[int] = frozenset(),
 ) -> Lines:
     """Read the rows beneath the header and return the lines, and the rows that are none.
 
     Parameters
     ----------
-    text : str
-        The whole text.
+    blocks : iterable of Block
+        Every row of the file from its first one on.
     form, layout : Form, Layout
         What was understood of its form and its headers.
     file : str
@@ -195,13 +221,15 @@ def find_lines(
         Column of the line number.
     number_columns : collection of int
         Columns whose plain numbers are read on the way.
+    struck : collection of int
+        Rows (counted from 0) that are struck through: lines deleted by their originator.
 
     Raises
     ------
     InputError
         If the table holds no line at all: nothing read is never nothing wrong.
     """
-    table = _table(text, form, layout, number_columns, file)
+    table = _table(blocks, form, layout, number_columns, file)
     header = layout.headers[line_column]
     columns = tuple(collector.cells() for collector in table.collectors)
     numbers = _numbers(columns[line_column])
@@ -213,6 +241,7 @@ def find_lines(
         keep[index] = not (blank or reason)
         if reason:
             unread.append(_unread(index, table.row_numbers[index], reason, columns, file, header))
+    deleted = _deleted(table.row_numbers, numbers, keep, struck, file, header)
     if not keep.any():
         raise InputError(
             Problem(
@@ -221,7 +250,7 @@ def find_lines(
                 remedy="Give a list with at least one line; an empty list is never checked as if it were in order.",
             )
         )
-    return _kept(table, columns, numbers, keep, tuple(unread), line_column)
+    return _kept(table, columns, numbers, keep, tuple(unread), deleted, line_column)
 
 
 def _kept(
@@ -230,6 +259,7 @@ def _kept(
     numbers: Sequence[str],
     keep: BoolArray,
     unread: tuple[UnreadItem, ...],
+    deleted: tuple[UnreadItem, ...],
     line_column: int,
 ) -> Lines:
     notes = []
@@ -251,4 +281,5 @@ def _kept(
         {int(place_of[index]): reason for index, reason in table.broken.items() if keep[index]},
         unread,
         tuple(notes),
+        deleted,
     )

@@ -1,4 +1,4 @@
-"""`read_line_list`: a CSV file becomes a `LineList`."""
+"""`read_line_list`: a CSV file or a sheet of a workbook becomes a `LineList`."""
 
 from __future__ import annotations
 
@@ -17,11 +17,11 @@ from checker.intake.cells import NumberCells
 from checker.intake.column_hints import hint_fields
 from checker.intake.columns import Plan, number_columns, plan_columns
 from checker.intake.convert import ConvertedNumbers, convert_line_numbers, convert_numbers, convert_sizes, convert_texts
-from checker.intake.decoding import Decoded, read_text
 from checker.intake.layout import Layout, find_layout, line_number_columns
 from checker.intake.lines import Lines, find_lines
+from checker.intake.opening import Opened, open_table
 from checker.intake.planned import PlannedColumn
-from checker.intake.records import Form, read_form
+from checker.intake.records import Form
 from checker.intake.texts import place
 from checker.model import Address, Column, Gap, HoldItem, LineList, Source, UnreadItem
 from checker.units import STANDARD_ATMOSPHERE
@@ -54,8 +54,10 @@ def read_line_list(
     units: Mapping[str, str] | None = None,
     columns: Mapping[str, ColumnHint] | None = None,
     atmosphere: float = STANDARD_ATMOSPHERE,
+    ambient: tuple[float, float] | None = None,
+    sheet: str | None = None,
 ) -> LineList:
-    """Read a line list from a CSV file.
+    """Read a line list from a delimited text or a workbook.
 
     Every number becomes SI, every value keeps its address, and nothing is guessed: a value without a unit, a pressure
     that says neither gauge nor absolute, or a cell with two readings is refused with a sentence. The file is only read.
@@ -70,6 +72,10 @@ def read_line_list(
         What the criteria say of single headers, by header; wins over the header itself.
     atmosphere : float, optional
         The site's atmospheric pressure, Pa, on which gauge pressures rest.
+    ambient : (float, float), optional
+        The site's lowest and highest ambient temperature, K, for cells that say ambient.
+    sheet : str, optional
+        Sheet of a workbook; without it the one that looks like a line list.
 
     Returns
     -------
@@ -82,40 +88,39 @@ def read_line_list(
         If the file cannot be read, holds no table, no line-number column, no line, two columns for one field in one
         case, or not one value besides the line numbers; or if `columns` gives a unit other than the list's own.
     """
-    hints, file = columns or {}, Path(path).name
+    hints = columns or {}
     with _no_collection():
-        decoded = read_text(Path(path))
         fields = hint_fields(hints)
-        form = read_form(decoded.text, hints=fields)
+        opened = open_table(Path(path), sheet=sheet, hints=fields)
+        form, file = opened.form, opened.label
         layout = find_layout(form.head, file=file, hints=fields)
         lines = find_lines(
-            decoded.text,
+            opened.blocks(),
             form,
             layout,
             file=file,
             line_column=line_number_columns(layout.headers, fields)[0],
             number_columns=frozenset() if form.comma else number_columns(layout, hints, file),
+            struck=opened.struck,
         )
         plan = plan_columns(layout, lines.columns, file=file, hints=hints, units=units or {}, comma=form.comma)
-        return _line_list(_Opened(file, decoded, form, layout), lines, plan, atmosphere)
+        return _line_list(opened, layout, lines, plan, Site(atmosphere, ambient))
 
 
 @dataclass(frozen=True, slots=True)
-class _Opened:
-    """A file and what was understood of its form."""
+class Site:
+    """What a cell may rest on: atmospheric pressure, Pa, and the range of ambient temperature, K, if known."""
 
-    file: str
-    decoded: Decoded
-    form: Form
-    layout: Layout
+    atmosphere: float
+    ambient: tuple[float, float] | None
 
 
-def _converted(column: PlannedColumn, lines: Lines, form: Form, atmosphere: float) -> Converted:
+def _converted(column: PlannedColumn, lines: Lines, form: Form, site: Site) -> Converted:
     cells = lines.columns[column.index]
     if column.field.name == "line_number":
         return convert_line_numbers(cells)
     if isinstance(cells, NumberCells) or column.field.kind == "number":
-        return convert_numbers(cells, column, atmosphere=atmosphere, delimiter=form.delimiter, comma=form.comma)
+        return convert_numbers(cells, column, atmosphere=site.atmosphere, delimiter=form.delimiter, comma=form.comma)
     if column.field.kind == "size":
         return convert_sizes(cells, column, comma=form.comma)
     return convert_texts(cells, column.field)
@@ -201,8 +206,24 @@ def _unread(
     return sorted(items, key=lambda item: item.address.row)
 
 
-def _notes(opened: _Opened, lines: Lines, plan: Plan, assembly: Assembly) -> tuple[str, ...]:
-    notes = [*opened.decoded.notes, *opened.form.notes, *opened.layout.notes, *plan.notes, *lines.notes]
+def _refuse_cells(
+    converted: Converted, column: PlannedColumn, lines: Lines, refused: Mapping[tuple[int, int], str]
+) -> None:
+    """Refuse the cells that a workbook marks as no value: an uncalculated formula, a text half struck out."""
+    row_of = {int(row) - 1: index for index, row in enumerate(lines.row)} if refused else {}
+    for (row, position), reason in refused.items():
+        if position == column.index and row in row_of:
+            index = row_of[row]
+            converted.gaps[index] = Gap.REFUSED
+            if isinstance(converted, ConvertedNumbers):
+                converted.values[index] = np.nan
+            else:
+                converted.coded.codes[index] = -1
+            converted.reasons[index] = reason
+
+
+def _notes(opened: Opened, layout: Layout, lines: Lines, plan: Plan, assembly: Assembly) -> tuple[str, ...]:
+    notes = [*opened.notes, *layout.notes, *plan.notes, *lines.notes]
     if bool(assembly.composite.any()):
         codes = np.unique(assembly.case.codes[assembly.composite])
         names = ", ".join(assembly.case.texts[int(code)] for code in codes)
@@ -212,24 +233,23 @@ def _notes(opened: _Opened, lines: Lines, plan: Plan, assembly: Assembly) -> tup
     return tuple(notes)
 
 
-def _line_list(opened: _Opened, lines: Lines, plan: Plan, atmosphere: float) -> LineList:
-    converted = {column.index: _converted(column, lines, opened.form, atmosphere) for column in plan.columns}
+def _line_list(opened: Opened, layout: Layout, lines: Lines, plan: Plan, site: Site) -> LineList:
+    file = opened.label
+    converted = {column.index: _converted(column, lines, opened.form, site) for column in plan.columns}
     for column in plan.columns:
         _refuse_broken(converted[column.index], column, lines.broken)
+        _refuse_cells(converted[column.index], column, lines, opened.refused)
     read = [column for column in plan.columns if column.field.name != "line_number"]
-    _refuse_if_nothing(read, converted, lines, opened.file, opened.layout)
-    assembly = assemble(
-        read, converted, cases=plan.cases, rows=lines.row, file=opened.file, header_row=opened.layout.header_row
-    )
-    form = " ".join([*opened.decoded.notes, *opened.form.notes])
+    _refuse_if_nothing(read, converted, lines, file, layout)
+    assembly = assemble(read, converted, cases=plan.cases, rows=lines.row, file=file, header_row=layout.header_row)
     return LineList(
-        source=Source(opened.file, opened.decoded.sha256, form),
+        source=Source(file, opened.sha256, " ".join(opened.notes)),
         columns=tuple(
             Column(column.field.name, column.header, column.case, column.unit, lines.columns[column.index])
             for column in plan.columns
         ),
         unmatched=plan.unmatched,
-        notes=_notes(opened, lines, plan, assembly),
+        notes=_notes(opened, layout, lines, plan, assembly),
         line_number=lines.numbers,
         row=lines.row,
         line=assembly.line,
@@ -240,6 +260,7 @@ def _line_list(opened: _Opened, lines: Lines, plan: Plan, atmosphere: float) -> 
         texts=assembly.texts,
         gaps=assembly.gaps,
         refusals=assembly.refusals,
-        holds=_holds(plan, converted, lines, opened.file),
-        unread=tuple(_unread(plan, converted, lines, opened.layout, opened.file)),
+        holds=_holds(plan, converted, lines, file),
+        unread=tuple(_unread(plan, converted, lines, layout, file)),
+        deleted=lines.deleted,
     )

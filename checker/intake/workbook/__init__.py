@@ -1,0 +1,7 @@
+"""Workbooks: which sheet holds the line list, and its cells as texts."""
+
+from __future__ import annotations
+
+from checker.intake.workbook.reading import is_workbook, read_sheet
+
+__all__ = ["is_workbook", "read_sheet"]
