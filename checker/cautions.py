@@ -26,15 +26,19 @@ def _counted(where: np.ndarray, values: Values) -> str:
 
 
 def twin_rows(values: Values) -> tuple[tuple[str, str, tuple[int, ...]], ...]:
-    """Return line number, case and rows wherever one line number states one case on several rows."""
+    """Return line number, case and rows wherever one line number states one case twice with nothing to tell it apart.
+
+    Rows that differ in case, from, to or size are cases and segments, and are left out.
+    """
     line_list = values.line_list
-    case = line_list.case.codes.astype(np.int64)
-    key = values["line_group"].astype(np.int64) * (len(line_list.case.texts) + 1) + case + 1
+    doubled = np.flatnonzero(values["doubled_line_number"])
+    case = line_list.case.codes.astype(np.int64)[doubled]
+    key = values["line_group"].astype(np.int64)[doubled] * (len(line_list.case.texts) + 1) + case + 1
     order = np.argsort(key, kind="stable")
     _, first, counts = np.unique(key[order], return_index=True, return_counts=True)
     twins = []
     for start, count in zip(first[counts > 1], counts[counts > 1], strict=True):
-        cases = order[start : start + count]
+        cases = doubled[order[start : start + count]]
         number = line_list.line_number[int(line_list.line[cases[0]])]
         rows = tuple(int(line_list.row[line_list.line[each]]) for each in cases)
         twins.append((number, line_list.case.text(int(cases[0])), rows))
@@ -46,8 +50,8 @@ def _twins(values: Values) -> list[CautionItem]:
     for number, _, rows in twin_rows(values):
         found.setdefault(number, rows)
     text = (
-        "One line number on several rows for the same case: each row is judged by itself. "
-        "Segments of one line are in order; anything else is a doubled number to take up with the originator."
+        "One line number on several rows for the same case, and neither from, to nor size tells the rows apart: each "
+        "row is judged by itself. Take it up with the originator: a doubled number, or segments that do not say so."
     )
     shown = [f"{number} (rows {', '.join(map(str, rows[:6]))})" for number, rows in list(found.items())[:5]]
     more = f" and {len(found) - 5} more" if len(found) > 5 else ""

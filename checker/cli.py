@@ -3,7 +3,9 @@
 from __future__ import annotations
 
 import sys
-from collections.abc import Callable
+import threading
+from collections.abc import Callable, Iterator
+from contextlib import contextmanager
 from pathlib import Path
 from typing import Any
 
@@ -19,6 +21,7 @@ CONTEXT = {"help_option_names": ["-h", "--help"], "max_content_width": 100}
 FAULT_STATUS = 3
 REFUSED_STATUS = 2
 STOPPED_STATUS = 130
+SLOW_AFTER = 2.0
 MOST_CASES_EXPLAINED = 5_000
 GATE_STATUS = {"no comments": 0, "comments": 0, "revise and resubmit": 1, "incomplete": 1}
 
@@ -73,6 +76,7 @@ def _inputs(command: Callable[..., None]) -> Callable[..., None]:
         click.option("--classes", type=PATH, help="Class file (CSV): schedule, wall and material by class and size."),
         click.option("--deviations", type=PATH, help="Approved deviations (CSV)."),
         click.option("--rules", type=PATH, help="Folder of further rule modules."),
+        click.option("--sheet", metavar="NAME", help="Sheet of a workbook. Without it: the one like a line list."),
         click.option("--quiet", is_flag=True, help="Say nothing but the answer."),
     )
     for option in reversed(options):
@@ -105,6 +109,19 @@ def _reviewed(line_list: Path, options: dict[str, Any], say: Callable[[str], Non
     return review(line_list, **options)
 
 
+@contextmanager
+def _progress_if_slow(quiet: bool) -> Iterator[Callable[[str], None]]:
+    """Give what to say progress with: its last sentence is said once the work has lasted for two seconds."""
+    sentences: list[str] = []
+    timer = threading.Timer(SLOW_AFTER, lambda: [_progress(quiet)(sentence) for sentence in sentences[-1:]])
+    timer.daemon = True
+    timer.start()
+    try:
+        yield sentences.append
+    finally:
+        timer.cancel()
+
+
 @click.group(cls=_Commands, context_settings=CONTEXT)
 @click.version_option(__version__, prog_name="linelist")
 def main() -> None:
@@ -125,9 +142,11 @@ def main() -> None:
 def review(line_list: Path, out: Path | None, quiet: bool, **options: Any) -> None:
     """Read LIST, compute, check, and write the report.
 
+    LIST is a CSV, TSV, semicolon or pipe text, or a workbook (XLSX, XLSM, XLS, ODS).
+
     \b
     Example:
-      linelist review list.csv --criteria criteria.toml --classes classes.csv --out review/
+      linelist review list.xlsx --sheet "Line list" --criteria criteria.toml --classes classes.csv
     """
     from checker.report.atomic import check_places
     from checker.report.terminal import summary
@@ -167,7 +186,8 @@ def gate(line_list: Path, json_file: Path | None, quiet: bool, **options: Any) -
 
         _spare_the_inputs([json_file], line_list, options)
         check_places(json_file.parent, (json_file.name,))
-    done = _reviewed(line_list, options, lambda sentence: None)
+    with _progress_if_slow(quiet) as say:
+        done = _reviewed(line_list, options, say)
     if json_file is not None:
         from checker.report.atomic import write_text
         from checker.report.json_file import outcomes_json
@@ -200,7 +220,8 @@ def calculation(line_list: Path, line_number: str, quiet: bool, **options: Any) 
     from checker.report.calculation_sheet import calculation_sheet
     from checker.review import require_no_fault
 
-    done = _reviewed(line_list, options, lambda sentence: None)
+    with _progress_if_slow(quiet) as say:
+        done = _reviewed(line_list, options, say)
     click.echo(calculation_sheet(done, line_number))
     require_no_fault(done)
 
@@ -224,22 +245,23 @@ def rules(rule_id: str | None, folder: Path | None) -> None:
 
 
 @main.command()
-def fields() -> None:
-    """List every field: header spellings understood, units, meaning.
+@click.argument("name", metavar="[NAME]", required=False)
+def fields(name: str | None) -> None:
+    """List every field of a list: meaning, units, header spellings; or one NAME in full.
 
     \b
     Example:
-      linelist fields
+      linelist fields flow_mass
     """
-    from checker.report.catalogue_text import fields_text
+    from checker.report.catalogue_text import fields_text, one_field_text
 
-    click.echo(fields_text())
+    click.echo(fields_text() if name is None else one_field_text(name))
 
 
 @main.command()
 @click.argument("folder", metavar="DIR", type=PATH)
 def template(folder: Path) -> None:
-    """Write a blank list, criteria, class file and deviations to begin from into DIR.
+    """Write a blank list (CSV and XLSX), criteria, class, equipment and deviations files into DIR.
 
     Files that are there already are left alone, and named.
 

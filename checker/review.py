@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import difflib
+import math
 import os
 from datetime import date
 from pathlib import Path
@@ -38,6 +39,7 @@ def review(
     equipment: PathLike | None = None,
     deviations: PathLike | None = None,
     rules: PathLike | None = None,
+    sheet: str | None = None,
     today: date | None = None,
 ) -> Review:
     """Read a line list, compute its hydraulics and judge every line case by every rule.
@@ -45,17 +47,19 @@ def review(
     Parameters
     ----------
     line_list : path
-        The contractor's line list (CSV).
+        The contractor's line list: a delimited text or a workbook.
     criteria : path, optional
         Criteria file (TOML); the bundled default criteria where none is given.
     classes : path, optional
         Class file (CSV): schedule, wall, material and roughness by piping class and size.
     equipment : path, optional
-        Not read by this version: naming one is an error, so that nobody thinks it was used.
+        Not used by this version yet: naming one is an error, so that nobody thinks it was used.
     deviations : path, optional
         Approved deviations (CSV).
     rules : path, optional
         A folder of further rule modules.
+    sheet : str, optional
+        Sheet of a workbook; the one that looks like a line list where none is named.
     today : date, optional
         Day on which deviations are held against their last day; the current day where none is given.
 
@@ -72,7 +76,7 @@ def review(
     """
     if equipment is not None:
         remedy = "Leave it out: suction data stand in the list's own columns."
-        raise InputError(Problem("an equipment list is not read by this version.", os.fspath(equipment), remedy))
+        raise InputError(Problem("an equipment list is not used by this version yet.", os.fspath(equipment), remedy))
     found = load_rules(known_fields=known_fields(), folder=None if rules is None else Path(rules))
     used_criteria = load_criteria(None if criteria is None else Path(criteria))
     _check_forces(used_criteria, found)
@@ -83,10 +87,21 @@ def review(
         else load_deviations(Path(deviations), rules=found, atmosphere=used_criteria.atmosphere)
     )
     listed = read_line_list(
-        Path(line_list), units=used_criteria.units, columns=used_criteria.columns, atmosphere=used_criteria.atmosphere
+        Path(line_list),
+        units=used_criteria.units,
+        columns=used_criteria.columns,
+        atmosphere=used_criteria.atmosphere,
+        ambient=_ambient(used_criteria),
+        sheet=sheet,
     )
     values = Values(line_list=listed, criteria=used_criteria, classes=used_classes)
     return evaluate(values, found, approvals=approvals, today=today or date.today())
+
+
+def _ambient(criteria: Criteria) -> tuple[float, float] | None:
+    """Return the site's lowest and highest ambient temperature, K; None unless the criteria state both."""
+    limits = (criteria.ambient_minimum, criteria.ambient_maximum)
+    return None if any(map(math.isnan, limits)) else limits
 
 
 def evaluate(values: Values, rules: tuple[Rule, ...], *, approvals: DeviationFile | None, today: date) -> Review:

@@ -15,7 +15,7 @@ from checker.deviations import Deviation
 from checker.errors import InputError, Problem
 from checker.evaluation.values import Values
 from checker.ledger_text import ledger_lines
-from checker.model import HoldItem, Source, UnreadItem
+from checker.model import CellRecord, HeaderMatch, HoldItem, RangeItem, Source, UnreadItem
 from checker.not_checked import not_checked_groups
 from checker.outcome_rows import outcome_row
 from checker.recommendation import Recommendation
@@ -181,6 +181,25 @@ class Review:
     def unread_items(self) -> tuple[UnreadItem, ...]:
         """Rows and cells that were refused."""
         return self.values.line_list.unread
+
+    @property
+    def deleted_items(self) -> tuple[UnreadItem, ...]:
+        """Lines that their originator deleted: listed, not checked, in no count of outcomes."""
+        return self.values.line_list.deleted
+
+    @property
+    def range_items(self) -> tuple[RangeItem, ...]:
+        """Cells that state two values, each end judged as a line case of its own."""
+        return self.values.line_list.ranges
+
+    @property
+    def matching(self) -> tuple[HeaderMatch, ...]:
+        """What became of every header of the list."""
+        return self.values.line_list.matching
+
+    def record(self, field: str, line_case: int) -> CellRecord | None:
+        """Return the cell of a number field in full: text, number, unit and SI value; None where there is none."""
+        return self.values.line_list.record(field, line_case)
 
     @cached_property
     def assumption_items(self) -> tuple[AssumptionItem, ...]:

@@ -75,7 +75,34 @@ _COMPUTED: dict[str, tuple[str, str, str]] = {
     "schedule_exists": ("", "", "in the tables"),
     "pipe_length": ("length", "m", "length"),
     "fittings_length": ("length", "m", "equivalent length of the fittings"),
-}
+    "pressure_first": ("pressure", "bara", "the pressure that is to be the higher"),
+    "pressure_second": ("pressure", "bara", "the pressure it is held against"),
+    "pressure_test_gauge": ("pressure difference", "bar", "test pressure, gauge"),
+    "pressure_test_least": ("pressure difference", "bar", "least test pressure, gauge"),
+    "temperature_first": ("temperature", "degC", "the temperature that is judged"),
+    "temperature_second": ("temperature", "degC", "the temperature it is held against"),
+    "saturation_temperature": ("temperature", "degC", "saturation temperature"),
+    "saturation_temperature_design": ("temperature", "degC", "saturation temperature at the design pressure"),
+    "flow_ratio": ("dimensionless", "-", "ratio of the flows of two cases"),
+    "flow_difference": ("dimensionless", "-", "relative difference of the row's flows"),
+    "flow_least": ("mass flow", "kg/h", "least of the row's flows as mass"),
+    "flow_most": ("mass flow", "kg/h", "greatest of the row's flows as mass"),
+    "flow_normal_share": ("dimensionless", "-", "normal flow by the greatest flow"),
+    "molar_volume_of_flows": ("dimensionless", "-", "volume flow by molar flow, m3/kmol"),
+    "implied_compressibility": ("dimensionless", "-", "compressibility factor that the listed density means"),
+    "density_expected": ("density", "kg/m3", "density by P M / (Z R T)"),
+    "density_of_liquid": ("density", "kg/m3", "density of the liquid"),
+    "viscosity_judged": ("viscosity", "cP", "viscosity, of two phases the one that is not usual"),
+    "hold_fields": ("", "", "the fields on HOLD"),
+    "newest_revision": ("", "", "the newest revision"),
+    **dict.fromkeys(
+        (
+            "pressure_rank_said", "temperature_rank_said", "gas_density_said", "liquid_density_said", "viscosity_said",
+            "gauge_density_said", "gauge_velocity_said", "zero_flow_said", "saturation_said", "size_basis_said",
+        ),
+        ("", "", "what agrees or contradicts"),
+    ),
+}  # fmt: skip
 
 
 @cache

@@ -1,160 +1,64 @@
 """The one door at which units become SI.
 
-Common spellings stand in `tables/units.csv`, whose factors come from pint and are tested against it; a spelling the
-table does not hold is offered to pint itself, once a column, after a strict look at its characters. Inside the
-program there are only SI floats.
+Common spellings stand in `tables/units.csv`, whose factors come from pint and are tested against it; those that could
+be read in two ways, or that are no such unit, stand in `tables/unit_questions.csv`, each with what to write instead.
+A spelling that neither holds is offered to pint itself, once a column, after a strict look at its characters. Inside
+the program there are only SI floats.
 """
 
 from __future__ import annotations
 
-import csv
 import re
-from collections.abc import Mapping
-from functools import cache
-from pathlib import Path
-from typing import TYPE_CHECKING, NamedTuple
 
 import numpy as np
 from numpy.typing import NDArray
 
+from checker.unit_pint import unit_of_pint
+from checker.unit_scripts import strange_letters
 from checker.unit_spelling import fold_unit
-
-if TYPE_CHECKING:
-    import pint as pint_types
+from checker.unit_table import (
+    QUESTIONS,
+    TABLE,
+    Unit,
+    dimensions_knowing,
+    forms_of,
+    is_known_spelling,
+    known_spelling,
+    question_of,
+)
 
 __all__ = [
+    "API",
+    "QUESTIONS",
     "STANDARD_ATMOSPHERE",
+    "TABLE",
     "Unit",
     "UnitRefusedError",
     "dimensions_knowing",
     "from_si",
+    "is_known_spelling",
     "read_quantity",
     "read_unit",
     "to_si",
 ]
 
 STANDARD_ATMOSPHERE = 101_325.0
-TABLE = Path(__file__).parent / "tables" / "units.csv"
+API = "API"
+"""Reference of degrees API, whose density holds at 60 degF."""
 FloatArray = NDArray[np.float64]
 
-_PINT_DIMENSION = {
-    "pressure": "[pressure]",
-    "pressure difference": "[pressure]",
-    "stress": "[pressure]",
-    "pressure gradient": "[pressure]/[length]",
-    "temperature": "[temperature]",
-    "mass flow": "[mass]/[time]",
-    "volume flow": "[volume]/[time]",
-    "density": "[mass]/[volume]",
-    "viscosity": "[viscosity]",
-    "molar mass": "[mass]/[substance]",
-    "length": "[length]",
-    "diameter": "[length]",
-    "velocity": "[speed]",
-    "surface tension": "[force]/[length]",
-    "time": "[time]",
-    "momentum flux": "[pressure]",
-}
-_PLAIN_UNIT = re.compile(r"[A-Za-zµ_]{1,24}[23]?([/*][A-Za-zµ_]{1,24}[23]?){0,3}")
-_SHORT = ("kg", "lb", "ft", "in", "yd", "mi", "m", "s", "h", "d", "N", "J", "W")
-_AMBIGUOUS = ("ton", "tons", "Ton", "Tons", "TON", "TONS", "cwt", "gallon", "gal", "barrel")
-_QUESTIONS = {
-    ("viscosity", "MPas"): "megapascal seconds are no viscosity of a fluid: write mPa.s if that is meant.",
-    ("mass flow", "MLB/H"): "M is a thousand to some and a million to others: write klb/h or lb/h.",
-    ("mass flow", "MLB/HR"): "M is a thousand to some and a million to others: write klb/h or lb/h.",
-    ("standard flow", "MSCFD"): "M is a thousand to some and a million to others: write MMSCFD or scf/d.",
-    ("density", "degAPI"): "degrees API are not linear in density: give kg/m3.",
-    ("density", "API"): "degrees API are not linear in density: give kg/m3.",
-    ("fraction", "mol"): "a mole fraction is not a mass fraction: give the mass fraction.",
-    ("fraction", "mol%"): "a mole fraction is not a mass fraction: give the mass fraction.",
-    ("fraction", "mole"): "a mole fraction is not a mass fraction: give the mass fraction.",
-}
+LONGEST_SHOWN = 60
+_FLOWS = ("mass flow", "volume flow", "standard flow")
+
+
+def _shown(text: str) -> str:
+    """Return a unit as a message may show it: shortened, unprintable characters escaped."""
+    head = text[:LONGEST_SHOWN] + ("..." if len(text) > LONGEST_SHOWN else "")
+    return repr(head) if head.isprintable() else f"'{head.encode('unicode_escape').decode('ascii')}'"
 
 
 class UnitRefusedError(ValueError):
     """A unit that cannot be read for this dimension; the text says why and what to write."""
-
-
-class Unit(NamedTuple):
-    """One unit of one dimension: ``SI = number * scale + offset`` (+ the site's atmosphere when gauge)."""
-
-    spelling: str
-    dimension: str
-    scale: float
-    offset: float
-    reference: str
-
-
-@cache
-def _table() -> Mapping[tuple[str, str], Unit]:
-    with TABLE.open(encoding="utf-8", newline="") as handle:
-        return {
-            (row["dimension"], row["spelling"]): Unit(
-                row["spelling"],
-                row["dimension"],
-                float(row["scale_to_SI"]),
-                float(row["offset_to_SI"]),
-                row["reference"],
-            )
-            for row in csv.DictReader(handle)
-        }
-
-
-@cache
-def _any_case() -> Mapping[tuple[str, str], tuple[Unit, ...]]:
-    units: dict[tuple[str, str], tuple[Unit, ...]] = {}
-    for (dimension, spelling), unit in _table().items():
-        key = (dimension, spelling.casefold())
-        units[key] = (*units.get(key, ()), unit)
-    return units
-
-
-def _in_any_case(folded: str, dimension: str) -> Unit | None:
-    """Return the unit whose spelling differs by case only, where no prefix hangs on that case."""
-    candidates = [
-        unit
-        for unit in _any_case().get((dimension, folded.casefold()), ())
-        if folded[0] == unit.spelling[0] or folded[0] not in "mM"
-    ]
-    meanings = {(unit.scale, unit.offset, unit.reference) for unit in candidates}
-    return candidates[0] if len(meanings) == 1 else None
-
-
-def _plain_names(folded: str, registry: pint_types.UnitRegistry[float]) -> bool:
-    """Return whether no name is read through a prefix but kilo: ``nm3/h`` and ``mt/h`` are no nano and no milli."""
-    names = [re.sub(r"[23]$", "", name) for name in re.split(r"[/*]", folded)]
-    return all(
-        name not in _AMBIGUOUS
-        and any(prefix in ("", "kilo") for prefix, _, _ in registry.parse_unit_name(name))
-        and (len(name) > 2 or name in _SHORT)
-        for name in names
-    )
-
-
-@cache
-def _registry() -> pint_types.UnitRegistry[float]:
-    import pint
-
-    return pint.UnitRegistry()
-
-
-def _from_pint(folded: str, dimension: str) -> Unit | None:
-    """Ask pint for a spelling the table does not hold; None where pint does not know it either."""
-    if dimension not in _PINT_DIMENSION or not _PLAIN_UNIT.fullmatch(folded):
-        return None
-    import pint
-
-    registry = _registry()
-    if not _plain_names(folded, registry):
-        return None
-    try:
-        one, two = (registry.Quantity(number, re.sub(r"([23])", r"**\1", folded)) for number in (1.0, 2.0))
-        if not one.check(_PINT_DIMENSION[dimension]):
-            return None
-        scale = float(one.to_base_units().magnitude)
-        return Unit(folded, dimension, scale, 0.0, "") if two.to_base_units().magnitude == 2.0 * scale else None
-    except (pint.errors.PintError, AttributeError, TypeError, ValueError):
-        return None
 
 
 def read_unit(text: str, dimension: str) -> Unit:
@@ -173,44 +77,63 @@ def read_unit(text: str, dimension: str) -> Unit:
         If the text names no unit of that dimension, or names one that could be read in two ways.
     """
     folded = fold_unit(text)
-    unit = _table().get((dimension, folded))
-    if unit is None and (dimension, folded) in _QUESTIONS:
-        raise UnitRefusedError(f"unit {text!r}: {_QUESTIONS[dimension, folded]}")
+    unit = known_spelling(folded, dimension)
+    if isinstance(unit, str):
+        raise UnitRefusedError(f"unit {_shown(text)}: {unit}")
     if unit is None and folded:
-        unit = _in_any_case(folded, dimension) or _from_pint(folded, dimension)
+        unit = unit_of_pint(folded, dimension)
     if unit is None:
-        raise UnitRefusedError(f"unit {text!r} is not a unit of {dimension} that is understood here.")
+        raise UnitRefusedError(
+            f"unit {_shown(text)} is not a unit of {dimension} that is understood here.{_hint(text)}"
+        )
     if unit.reference == "?" or (dimension == "pressure" and not unit.reference):
-        raise UnitRefusedError(f"unit {text!r} does not say gauge or absolute: write {folded}g or {folded}a.")
+        gauge, absolute = _with_reference(unit)
+        raise UnitRefusedError(f"unit {_shown(text)} does not say gauge or absolute: write {gauge} or {absolute}.")
     return unit
 
 
-def dimensions_knowing(text: str) -> tuple[str, ...]:
-    """Return the dimensions whose table holds this spelling, case aside."""
-    folded = fold_unit(text)
-    if not folded:
-        return ()
-    return tuple(
-        sorted(
-            {
-                dimension
-                for dimension, _ in _any_case()
-                if (dimension, folded) in _table() or _in_any_case(folded, dimension) is not None
-            }
-        )
-    )
+def _hint(text: str) -> str:
+    """Return what else is known of a unit that is none of its dimension."""
+    strange = strange_letters(fold_unit(text))
+    if strange:
+        return f" It holds {strange}."
+    others = dimensions_knowing(text)
+    if others:
+        return f" It is a unit of {others[0]}."
+    asked = ((dimension, form) for form in forms_of(fold_unit(text)) for dimension in _FLOWS)
+    question = next(filter(None, (question_of(form, dimension) for dimension, form in asked)), "")
+    return f" Of a flow: {question}" if question else ""
+
+
+def _with_reference(unit: Unit) -> tuple[str, str]:
+    """Return a bare pressure unit as gauge and as absolute, as people write it."""
+    spelling = "psi" if unit.spelling.startswith("#") else unit.spelling
+    if spelling.endswith(("g", "a", "O", "C")) and not spelling.endswith("Pa"):
+        return f"{spelling}(g)", f"{spelling}(a)"
+    return f"{spelling}g", f"{spelling}a"
 
 
 def to_si(numbers: FloatArray | float, unit: Unit, *, atmosphere: float = STANDARD_ATMOSPHERE) -> FloatArray:
     """Convert numbers of a unit to SI; a gauge pressure rests on the site's atmosphere (Pa)."""
+    if unit.reference == API:
+        return _of_degrees_api(numbers, unit)
     shift = unit.offset + (atmosphere if unit.reference == "gauge" else 0.0)
     return np.asarray(numbers, dtype=np.float64) * unit.scale + shift
 
 
 def from_si(values: FloatArray | float, unit: Unit, *, atmosphere: float = STANDARD_ATMOSPHERE) -> FloatArray:
     """Convert SI values back to numbers of a unit."""
+    if unit.reference == API:
+        with np.errstate(divide="ignore"):
+            return np.divide(unit.scale, np.asarray(values, dtype=np.float64)) - unit.offset
     shift = unit.offset + (atmosphere if unit.reference == "gauge" else 0.0)
     return (np.asarray(values, dtype=np.float64) - shift) / unit.scale
+
+
+def _of_degrees_api(numbers: FloatArray | float, unit: Unit) -> FloatArray:
+    """Return the density at 60 degF, kg/m3, by the definition of API MPMS 11.1: SG 60/60 = 141.5 / (API + 131.5)."""
+    with np.errstate(divide="ignore"):
+        return np.divide(unit.scale, np.asarray(numbers, dtype=np.float64) + unit.offset)
 
 
 _QUANTITY = re.compile(r"\s*([-+]?(?:\d+\.?\d*|\.\d+)(?:[eE][-+]?\d{1,3})?)\s*(.*?)\s*", re.ASCII)

@@ -10,14 +10,16 @@ from functools import cache
 from typing import Any
 
 from checker.criteria.hints import ColumnHint
+from checker.criteria.nominal_size import SIZE_BASES
 from checker.criteria.places import LONGEST_SHOWN, ProblemList, shown
 from checker.criteria.quantities import LARGEST_ROUGHNESS, read_atmosphere, read_number, read_value
 from checker.fields import all_fields, field_named
+from checker.unit_spelling import fold_unit
 from checker.units import STANDARD_ATMOSPHERE, UnitRefusedError, read_unit
 
 __all__ = ["Settings", "read_settings"]
 
-_SIZE_UNITS = ("nps", "dn", "in", "inch", "mm", '"')
+_SIZE_UNITS = frozenset(word for words in SIZE_BASES.values() for word in words.split())
 _TableOf = Mapping[str, Any]
 
 
@@ -86,7 +88,10 @@ def _units(document: _TableOf, problems: ProblemList) -> dict[str, str]:
     units: dict[str, str] = {}
     for key, unit in _table(document, "units").items():
         dimension = key.replace("_", " ")
-        if dimension not in _dimensions():
+        if dimension in ("size", "nominal size"):
+            if isinstance(unit, str) and _size_unit_is_read(unit, ["units", key], problems):
+                units["size"] = unit
+        elif dimension not in _dimensions():
             problems.add(["units", key], f"{shown(key)} is no dimension of a line list.", _closest(key, _dimensions()))
         elif isinstance(unit, str) and _unit_is_read(unit, dimension, ["units", key], problems):
             units[dimension] = unit
@@ -102,12 +107,20 @@ def _unit_is_read(unit: str, dimension: str, path: list[str | int], problems: Pr
     return True
 
 
+def _size_unit_is_read(unit: str, path: list[str | int], problems: ProblemList) -> bool:
+    read = fold_unit(unit).casefold() in _SIZE_UNITS
+    if not read:
+        what = f"{shown(unit)} is no unit of a nominal size."
+        problems.add(path, what, 'Write "NPS" or "DN", or "inches x 100" for codes such as 0600.')
+    return read
+
+
 def _check_column_unit(field: str, unit: str, path: list[str | int], problems: ProblemList) -> None:
     described = field_named(field)
     if described.kind == "number":
         _unit_is_read(unit, described.dimension, path, problems)
-    elif described.kind == "size" and unit.strip().casefold() not in _SIZE_UNITS:
-        problems.add(path, f"{shown(unit)} is no unit of a nominal size.", 'Write "NPS" or "DN".')
+    elif described.kind == "size":
+        _size_unit_is_read(unit, path, problems)
     elif described.kind == "text":
         problems.add(path, f"field {field!r} is a text and takes no unit.", "Leave the unit away.")
 

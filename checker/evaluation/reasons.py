@@ -6,6 +6,7 @@ from collections.abc import Callable
 
 import numpy as np
 
+from checker.evaluation.data_reasons import BY_PHASE, DATA_NEEDS
 from checker.evaluation.dependencies import direct
 from checker.evaluation.identity import LEAST_LIQUID_DENSITY
 from checker.evaluation.values import Values
@@ -318,6 +319,18 @@ _SPECIAL: dict[str, Special] = {
 }
 
 
+def _data_rule(values: Values, name: str, line_case: int) -> Reason:
+    """Return the first open cell behind a field of a data rule; HOLD and refused before blank."""
+    needs = DATA_NEEDS[name]
+    if name in BY_PHASE and values["phase_contradictory"][line_case]:
+        return _phase(values, line_case)
+    for wanted in (Gap.HOLD, Gap.REFUSED, Gap.BLANK):
+        for field in needs.fields:
+            if values.line_list.gap(field)[line_case] == wanted and values.line_list.address(field, line_case):
+                return gap_sentence(values, field, line_case)
+    return needs.otherwise
+
+
 def why_missing(values: Values, name: str, line_case: int, depth: int = 0) -> Reason:
     """Return the sentence that says why a field of a line case has no value.
 
@@ -326,6 +339,8 @@ def why_missing(values: Values, name: str, line_case: int, depth: int = 0) -> Re
     """
     if name in _SPECIAL:
         return _SPECIAL[name](values, line_case)
+    if name in DATA_NEEDS:
+        return _data_rule(values, name, line_case)
     phase = int(values["phase"][line_case])
     for need in direct(name, phase):
         if depth < _DEEPEST and not need.endswith("_gap") and is_missing(values, need, line_case):

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import re
+from collections.abc import Callable
 from functools import cache
 from typing import Any
 
@@ -12,10 +13,25 @@ from numpy.typing import NDArray
 from checker.criteria.classes import Classes
 from checker.criteria.criteria import Criteria
 from checker.criteria.limits import LIMIT_DIMENSION, limit_values
-from checker.evaluation import derived, fluid_state, hydraulic_state, identity, pipe_state
+from checker.evaluation import (
+    data_flow,
+    data_fluid,
+    data_ranks,
+    data_rows,
+    data_steam,
+    derived,
+    fluid_state,
+    hydraulic_state,
+    identity,
+    line_number_state,
+    list_facts,
+    pipe_state,
+    substances,
+)
 from checker.evaluation.provider import Provider
 from checker.fields import all_fields
 from checker.intake.placeholders import placeholder
+from checker.line_numbers.folding import folded_keys
 from checker.model import Coded, LineList, base_case
 
 __all__ = ["BASE_FIELDS", "Values", "known_fields", "provider_of"]
@@ -27,7 +43,13 @@ BASE_FIELDS = (
     "case_kind",
     "line",
     "line_group",
+    "line_number_text",
     "own_flow",
+    "case_columns",
+    "case_group",
+    "first_of_row",
+    "hold_fields",
+    "state_told",
     "composite",
     "stated_values_tolerance",
 )
@@ -35,7 +57,10 @@ BASE_FIELDS = (
 
 @cache
 def _providers() -> dict[str, Provider]:
-    modules = (identity, pipe_state, fluid_state, hydraulic_state, derived)
+    modules = (
+        identity, substances, pipe_state, fluid_state, hydraulic_state, derived,
+        data_ranks, data_fluid, data_flow, data_steam, data_rows, line_number_state,
+    )  # fmt: skip
     return {output: found for module in modules for found in module.PROVIDERS for output in found.outputs}
 
 
@@ -86,6 +111,7 @@ class Values:
             "case": line_list.case,
             "case_kind": line_list.case_kind,
             "line": line_list.line,
+            "line_number_text": Coded(line_list.line, line_list.line_number),
             "composite": line_list.composite,
             "stated_values_tolerance": np.full(line_list.line_cases, criteria.stated_values_tolerance),
             **(overrides or {}),
@@ -112,6 +138,8 @@ class Values:
             return {name: _read_only(_own_flow(self.line_list))}
         if name == "line_group":
             return {name: _read_only(_groups(self.line_list))}
+        if name in _LIST_FACTS:
+            return {name: _read_only(_LIST_FACTS[name](self))}
         key = name.removesuffix("_state")
         if key in LIMIT_DIMENSION:
             return self._limit(key)
@@ -138,6 +166,13 @@ class Values:
         return self.line_list.text(name) if field.kind == "text" else self.line_list.number(name)
 
 
+_LIST_FACTS: dict[str, Callable[[Values], Any]] = {
+    "case_columns": lambda values: list_facts.case_columns(values.line_list),
+    "case_group": lambda values: list_facts.case_group(values.line_list, values["line_group"]),
+    "first_of_row": lambda values: list_facts.first_of_row(values.line_list),
+    "hold_fields": lambda values: list_facts.hold_fields(values.line_list),
+    "state_told": lambda values: list_facts.state_told(values.line_list),
+}
 FLOW_FIELDS = ("flow_mass", "flow_volume", "flow_standard")
 
 
@@ -152,11 +187,14 @@ def _own_flow(line_list: LineList) -> NDArray[np.bool_]:
 
 
 def _groups(line_list: LineList) -> NDArray[np.int32]:
-    """Return one code per distinct line number: rows of one number are one line, those without one each their own."""
+    """Return one code per distinct line number: rows of one number are one line, those without one each their own.
+
+    Numbers are the same where their folded keys are: case, blanks, quotation marks and kinds of hyphen do not count.
+    """
     codes: dict[str | int, int] = {}
     numbers = line_list.line_number
     open_ones = {text for text in set(numbers) if not _DIGIT.search(text) and placeholder(text, "line_number")}
-    keys: list[str | int] = [text.casefold() for text in numbers]
+    keys: list[str | int] = [key or text for key, text in zip(folded_keys(numbers), numbers, strict=True)]
     if open_ones:
         keys = [
             index if text in open_ones else key for index, (text, key) in enumerate(zip(numbers, keys, strict=True))

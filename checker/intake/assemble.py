@@ -10,8 +10,8 @@ import numpy as np
 from checker.fields import Field
 from checker.intake.case_kinds import case_kinds
 from checker.intake.case_names import canonical_case
-from checker.intake.convert import ConvertedNumbers, ConvertedTexts
-from checker.intake.number_cells import KINEMATIC, SPECIFIC_GRAVITY
+from checker.intake.converted import Converted, ConvertedNumbers, ConvertedTexts
+from checker.intake.number_cells import AT_60_DEGF, KINEMATIC, SPECIFIC_GRAVITY
 from checker.intake.planned import FLOWS, PlannedColumn
 from checker.intake.texts import place, shown
 from checker.model import BoolArray, CodeArray, Coded, FloatArray, Gap, IntArray
@@ -25,12 +25,14 @@ STATE_FIELDS = frozenset(
     }
 )  # fmt: skip
 DENSITY_OF = {"viscosity": "density", "liquid_viscosity": "liquid_density", "vapour_viscosity": "vapour_density"}
-Converted = ConvertedNumbers | ConvertedTexts
 
 
 @dataclass
 class Assembly:
-    """Arrays over the line cases, as `checker.model.LineList` holds them."""
+    """Arrays over the line cases, as `checker.model.LineList` holds them.
+
+    `highs` and `lowest` hold, by field and line case, the upper ends of ranges and the lowest design values.
+    """
 
     file: str
     rows: IntArray
@@ -42,6 +44,8 @@ class Assembly:
     texts: dict[str, Coded] = field(default_factory=dict)
     gaps: dict[str, CodeArray] = field(default_factory=dict)
     refusals: dict[tuple[str, int], str] = field(default_factory=dict)
+    highs: dict[tuple[str, int], float] = field(default_factory=dict)
+    lowest: dict[tuple[str, int], float] = field(default_factory=dict)
 
 
 @dataclass(frozen=True)
@@ -80,19 +84,23 @@ def _spread_numbers(
     into: Assembly,
 ) -> CodeArray:
     """Write a number field over the line cases; return what its values still rest on."""
-    shape = (grid.lines, len(grid.cases))
-    values, gaps = np.full(shape, np.nan), np.full(shape, Gap.BLANK, dtype=np.int8)
-    rests_on = np.zeros(shape, dtype=np.int8)
-    for position, case in enumerate(grid.cases):
-        column = _column_for(columns, case)
+    steps = len(grid.cases)
+    by_case = [_column_for(columns, case) for case in grid.cases]
+    values, gaps = np.empty((grid.lines, steps)), np.empty((grid.lines, steps), dtype=np.int8)
+    rests_on = np.zeros((grid.lines, steps), dtype=np.int8)
+    for position, column in enumerate(by_case):
         if column is None:
+            values[:, position] = np.nan
             gaps[:, position] = Gap.NOT_APPLICABLE if field_.one_case else Gap.BLANK
             continue
         mine = converted[column.index]
         assert isinstance(mine, ConvertedNumbers)
         values[:, position], gaps[:, position] = mine.values, mine.gaps
-        rests_on[:, position] = mine.rests_on
+        if mine.rests_on.any():
+            rests_on[:, position] = mine.rests_on
         _refusal_texts(column, mine, grid, position, into)
+        for sparse, spread in ((mine.highs, into.highs), (mine.lowest, into.lowest)):
+            spread.update({(field_.name, line * steps + position): value for line, value in sparse.items()})
     into.numbers[field_.name], into.gaps[field_.name] = values.ravel(), gaps.ravel()
     return rests_on.ravel()
 
@@ -113,6 +121,7 @@ def _refuse(name: str, indices: IntArray, reason: str, columns: Sequence[Planned
         column = _column_for(columns, into.case.text(index)) or columns[0]
         where = place(into.file, int(into.rows[into.line[index]]), column.header)
         into.refusals[name, index] = f"{where}: {reason}"
+        into.highs.pop((name, index), None)
 
 
 def _with_density(name: str, rests_on: CodeArray, columns: Sequence[PlannedColumn], into: Assembly) -> None:
@@ -122,6 +131,8 @@ def _with_density(name: str, rests_on: CodeArray, columns: Sequence[PlannedColum
         return
     density = into.numbers.get(DENSITY_OF[name], np.full(mine.shape, np.nan))
     into.numbers[name][mine] *= density[mine]
+    for field_name, index in [key for key in into.highs if key[0] == name and mine[key[1]]]:
+        into.highs[field_name, index] *= float(density[index])
     reason = f"a kinematic viscosity needs the {DENSITY_OF[name].replace('_', ' ')} of the same row."
     _refuse(name, np.flatnonzero(mine & ~np.isfinite(density)).astype(np.int32), reason, columns, into)
 
@@ -136,6 +147,17 @@ def _water_or_air(name: str, rests_on: CodeArray, columns: Sequence[PlannedColum
     wrong = (rests_on == SPECIFIC_GRAVITY) & (into.gaps[name] == Gap.GIVEN) & ~liquid
     reason = "a specific gravity may stand on water or on air where the phase is not liquid: give the density in kg/m3."
     _refuse(name, np.flatnonzero(wrong).astype(np.int32), reason, columns, into)
+
+
+def _at_60_degf(name: str, rests_on: CodeArray, columns: Sequence[PlannedColumn], into: Assembly) -> None:
+    """Refuse a density in degrees API, which holds at 60 degF by definition and not at the flowing temperature."""
+    mine = (rests_on == AT_60_DEGF) & (into.gaps[name] == Gap.GIVEN)
+    for index in np.flatnonzero(mine).astype(np.int32):
+        reason = (
+            f"degrees API give the density at 60 degF (15.6 degC), here {into.numbers[name][index]:.1f} kg/m3, not the "
+            "one at the flowing temperature: give that in kg/m3."
+        )
+        _refuse(name, np.array([index]), reason, columns, into)
 
 
 def _case_codes(case_column: Coded | None, cases: Sequence[str], lines: int) -> Coded:
@@ -218,8 +240,19 @@ def assemble(
             rests_on[name] = _spread_numbers(mine[0].field, mine, converted, grid, into)
     for name in (name for name in rests_on if name.endswith("density")):
         _water_or_air(name, rests_on[name], by_field[name], into)
+        _at_60_degf(name, rests_on[name], by_field[name], into)
     for name in (name for name in rests_on if name in DENSITY_OF):
         _with_density(name, rests_on[name], by_field[name], into)
     own = _own_flows(by_field, grid.cases, grid.lines)
-    into.case_kind = case_kinds(case, line, into.numbers, into.gaps, own)
+    into.case_kind = case_kinds(case, line, _flowing(into), into.gaps, own)
     return into
+
+
+def _flowing(into: Assembly) -> Mapping[str, FloatArray]:
+    """Return the numbers with the upper end of each flow that is a range: one from zero up is a flow."""
+    numbers = dict(into.numbers)
+    for name, index in (key for key in into.highs if key[0] in FLOWS):
+        if numbers[name] is into.numbers[name]:
+            numbers[name] = into.numbers[name].copy()
+        numbers[name][index] = into.highs[name, index]
+    return numbers

@@ -13,11 +13,13 @@ from checker.intake.column_cases import named_cases, one_case, with_cases
 from checker.intake.column_hints import absent_headers, hinted_column
 from checker.intake.headers import read_header, says_reid
 from checker.intake.layout import Layout
+from checker.intake.matching import header_matches, near_header_reason
 from checker.intake.planned import PlannedColumn
 from checker.intake.sizes import column_basis
 from checker.intake.texts import key_of, place, shown
 from checker.intake.unit_words import settled_by, size_basis, unit_in_cell, unit_or_refusal
 from checker.intake.unread_headers import unread_reason
+from checker.model import HeaderMatch
 from checker.units import read_unit
 
 __all__ = ["Plan", "number_columns", "plan_columns"]
@@ -25,13 +27,15 @@ __all__ = ["Plan", "number_columns", "plan_columns"]
 DESCRIPTIVE = frozenset({"area", "drawing", "remarks", "revision"})
 UNITLESS = frozenset({"dimensionless", "fraction"})
 CELLS_LOOKED_AT = 2_000
+MOST_COMPARED = 60
+_ASIDE = "the field {} is read from another column"
 
 
 @dataclass(frozen=True)
 class Plan:
     """Columns to be read, headers no field claimed, cases named by columns, what to say, and what is an open item.
 
-    `unread` holds headers that are open items, each with its sentence.
+    `unread` holds headers that are open items, each with its sentence; `matching` what became of every header.
     """
 
     columns: tuple[PlannedColumn, ...]
@@ -39,6 +43,7 @@ class Plan:
     cases: tuple[str, ...]
     notes: tuple[str, ...]
     unread: tuple[tuple[str, str], ...]
+    matching: tuple[HeaderMatch, ...] = ()
 
 
 @dataclass(frozen=True)
@@ -99,6 +104,27 @@ def _one_field(draft: _Draft, row_unit: str, units: Mapping[str, str], cells: Se
                 return found[0]
         return _by_cells(fields, cells) or fields[0]
     return fields[0]
+
+
+def _which_field(draft: _Draft, row_unit: str, units: Mapping[str, str], cells: Sequence[str]) -> str:
+    """Return the question that a header asks which names several quantities and no unit that decides."""
+    fields = [field for field in draft.fields if field.kind == "number"]
+    written = draft.unit or row_unit
+    if written:
+        fields = [field for field in fields if _may_have(field, written)]
+    elif sum(field.dimension in units for field in fields) == 1 or _by_cells(fields, cells) is not None:
+        return ""
+    if len(fields) < 2:
+        return ""
+    names = " or ".join(f"the {field.meaning} ({field.name})" for field in fields)
+    said = f"{shown(draft.header)} in {shown(written)}" if written else f"no unit: {shown(draft.header)}"
+    return f"{said} could be {names}: name its field in [columns], or write its unit in the header."
+
+
+def _may_have(field: Field, unit: str) -> bool:
+    """Return whether a unit is one of a field's dimension, a pressure's without gauge or absolute among them."""
+    reading = unit_or_refusal(unit, field.dimension)
+    return not isinstance(reading, str) or "gauge or absolute" in reading
 
 
 def _with_unit(column: PlannedColumn, row_unit: str, units: Mapping[str, str]) -> PlannedColumn:
@@ -228,10 +254,12 @@ def _unread_headers(
     left_out: Sequence[PlannedColumn],
     settled: Collection[int],
     hints: Mapping[str, ColumnHint],
-) -> list[tuple[str, str]]:
-    """Return the headers that are open items: those that name a case beside a case column, and those in doubt."""
+    taken: Collection[str],
+) -> list[tuple[int, str]]:
+    """Return the columns that are open items: those that name a case beside a case column, and those in doubt."""
     aside = {column.index: column.case for column in left_out}
     keys = {key_of(header) for header in hints}
+    compared = frozenset(unmatched[:MOST_COMPARED])
     found = []
     for index in unmatched:
         header = layout.headers[index]
@@ -241,9 +269,28 @@ def _unread_headers(
             reason = ""
         else:
             reason = unread_reason(header, row_unit=layout.units[index], cells=cells[index])
+            if not reason and index in compared:
+                reason = near_header_reason(header, taken)
         if reason:
-            found.append((header, reason))
+            found.append((index, reason))
     return found
+
+
+def _asked(
+    columns: Sequence[PlannedColumn],
+    drafts: Sequence[_Draft],
+    layout: Layout,
+    units: Mapping[str, str],
+    cells: Sequence[Sequence[str]],
+) -> list[PlannedColumn]:
+    """Return the columns, those refused with a question whose header names several quantities."""
+    asked = {
+        draft.index: question
+        for draft in drafts
+        if len(draft.fields) > 1
+        and (question := _which_field(draft, layout.units[draft.index], units, cells[draft.index]))
+    }
+    return [replace(c, reading=None, refusal=asked[c.index]) if c.index in asked else c for c in columns]
 
 
 def plan_columns(
@@ -277,6 +324,7 @@ def plan_columns(
     InputError
         If two columns carry one field in one case.
     """
+    drafts = _drafts(layout, hints, file)
     columns = [
         PlannedColumn(
             draft.index,
@@ -286,7 +334,7 @@ def plan_columns(
             unit=draft.unit,
             hinted=draft.hinted,
         )
-        for draft in _drafts(layout, hints, file)
+        for draft in drafts
     ]
     left_out = [column for column in columns if column.case] if _has_case_column(columns) else []
     kept = _without_overruled([column for column in columns if column not in left_out])
@@ -297,16 +345,26 @@ def plan_columns(
     _refuse_duplicates(kept, file, layout.header_row)
     cases = named_cases(kept)
     kept = [_measured(c, layout, units, cells[c.index], comma) for c in one_case(kept, cases)]
+    kept = _asked(kept, drafts, layout, units, cells)
     read = {column.index for column in kept}
     unmatched = [index for index, header in enumerate(layout.headers) if header and index not in read]
     settled = {column.index for column in (*overruled, *repeated)}
+    unread = _unread_headers(layout, cells, unmatched, left_out, settled, hints, {column.field.name for column in kept})
+    why = dict(unread) | {c.index: _ASIDE.format(c.field.name) for c in (*overruled, *repeated)}
     return Plan(
         tuple(kept),
         tuple(layout.headers[index] for index in unmatched),
         cases,
         (*_notes(kept, left_out, cases, layout), *_notes_aside(kept, overruled, repeated)),
         (
-            *_unread_headers(layout, cells, unmatched, left_out, settled, hints),
+            *((layout.headers[index], reason) for index, reason in unread),
             *absent_headers(hints, layout.headers),
+        ),
+        header_matches(
+            layout.headers,
+            layout.units,
+            read=kept,
+            units_in_headers={draft.index: draft.unit for draft in drafts},
+            unread=why,
         ),
     )

@@ -7,15 +7,25 @@ from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 
 from checker.errors import InputError, Problem
+from checker.intake.header_rows import (
+    bare,
+    count_understood,
+    is_numbering,
+    is_symbols_row,
+    is_units_row,
+    join_rows,
+    means_another,
+    names_quantities,
+)
 from checker.intake.headers import HeaderReading, read_header
 from checker.intake.texts import key_of, place, shown
-from checker.intake.unit_words import is_unit_text
 
 __all__ = ["Layout", "find_layout", "header_score", "line_number_columns"]
 
-ROWS_SEARCHED = 30
+ROWS_SEARCHED = 40
 LINE_NUMBER_WEIGHT = 1000
 ENOUGH = LINE_NUMBER_WEIGHT + 4
+MOST_HEADER_ROWS = 5
 _LETTER = re.compile(r"[^\W\d_]")
 
 
@@ -54,38 +64,6 @@ def header_score(cells: Sequence[str], hints: Mapping[str, str]) -> int:
     return min(sum(worths), LINE_NUMBER_WEIGHT + sum(worth == 1 for worth in worths))
 
 
-def _joined(upper: Sequence[str], lower: Sequence[str]) -> tuple[str, ...]:
-    """Return two header rows as one: a group name holds for the blanks to its right."""
-    width = max(len(upper), len(lower))
-    upper, lower = [*upper, *[""] * (width - len(upper))], [*lower, *[""] * (width - len(lower))]
-    group, joined = "", []
-    for over, under in zip(upper, lower, strict=True):
-        group = over.strip() or (group if under.strip() else "")
-        joined.append(f"{group} {under.strip()}".strip() if group != under.strip() else group)
-    return tuple(joined)
-
-
-def _is_units_row(row: Sequence[str], headers: Sequence[str], line_column: int) -> bool:
-    first = row[line_column].strip().casefold() if line_column < len(row) else ""
-    if first not in ("", "-", "units", "unit", "uom"):
-        return False
-    cells = [cell.strip() for index, cell in enumerate(row[: len(headers)]) if index != line_column and cell.strip()]
-    known = sum(is_unit_text(_bare(cell)) for cell in cells)
-    return known > 0 and 2 * known >= len(cells)
-
-
-def _bare(cell: str) -> str:
-    """Return a units cell without the brackets around it."""
-    text = cell.strip()
-    return text[1:-1] if text[:1] in "[(" and text[-1:] in "])" and len(text) > 2 else text
-
-
-def _is_numbering(row: Sequence[str]) -> bool:
-    """Return whether a row only numbers the columns."""
-    cells = [cell.strip().strip("()") for cell in row if cell.strip()]
-    return len(cells) > 2 and cells == [str(number) for number in range(1, len(cells) + 1)]
-
-
 def _best(rows: Sequence[Sequence[str]], hints: Mapping[str, str]) -> tuple[int, int]:
     best, best_score = 0, 0
     for index, row in enumerate(rows[:ROWS_SEARCHED]):
@@ -122,8 +100,87 @@ def line_number_columns(headers: Sequence[str], hints: Mapping[str, str]) -> lis
     return sorted(mine, key=lambda index: key_of(headers[index]) not in hints)
 
 
+def _refuse_transposed(rows: Sequence[Sequence[str]], index: int, hints: Mapping[str, str], file: str) -> None:
+    """Refuse a table whose lines stand in columns: its headers run down one column.
+
+    Raises
+    ------
+    InputError
+        If more headers stand beneath the line number's than beside it.
+    """
+    row = rows[index]
+    line_column = next(position for position, cell in enumerate(row) if _line_number_header(cell, hints))
+    beside = sum(_worth(cell, hints) == 1 for cell in row)
+    column = [cells[line_column] for cells in rows[index + 1 : ROWS_SEARCHED] if line_column < len(cells)]
+    beneath = count_understood(column, hints)
+    if beneath >= 3 and beneath > beside:
+        what = f"the table is transposed: {beneath} headers stand beneath {shown(row[line_column])}, one line a column."
+        remedy = (
+            "Turn it (copy, paste special, transpose), so that each line is a row and the headers are the first row."
+        )
+        raise InputError(Problem(what, where=place(file, index + 1), remedy=remedy))
+
+
+def _with_group_above(
+    rows: Sequence[Sequence[str]], index: int, headers: tuple[str, ...], hints: Mapping[str, str]
+) -> tuple[str, ...] | None:
+    """Return the headers with the group names of the row above them, None where that row names no groups."""
+    if index == 0 or not any(cell.strip() for cell in rows[index - 1]):
+        return None
+    joined = join_rows(rows[index - 1], headers, hints)
+    keeps_line_number = any(_line_number_header(cell, hints) for cell in joined)
+    as_many = count_understood(joined, hints) >= count_understood(headers, hints)
+    return joined if as_many and keeps_line_number and means_another(joined, headers, hints) else None
+
+
+def _no_number(row: Sequence[str], headers: Sequence[str], line_column: int) -> bool:
+    """Return whether a row beneath the headers has no line number: a blank, a dash, or the header's own text again."""
+    cell = row[line_column].strip() if line_column < len(row) else ""
+    return cell in ("", "-", "\u2013") or cell.casefold() == headers[line_column].casefold()
+
+
+@dataclass
+class _Beneath:
+    """What was found beneath the first header row."""
+
+    headers: tuple[str, ...]
+    units: tuple[str, ...]
+    follows: int
+    joined: list[int]
+    notes: list[str]
+
+
+def _read_beneath(
+    rows: Sequence[Sequence[str]], index: int, headers: tuple[str, ...], hints: Mapping[str, str]
+) -> _Beneath:
+    """Read the rows beneath a header row: further header rows, symbols, units and a numbering of the columns."""
+    found = _Beneath(headers, (), index + 1, [], [])
+    line_column = line_number_columns(headers, hints)[0]
+    for number in range(index + 1, min(index + 1 + MOST_HEADER_ROWS, len(rows))):
+        row = rows[number]
+        if is_numbering(row):
+            found.notes.append(f"Row {number + 1} numbers the columns: left out.")
+        elif not found.units and is_units_row(row, found.headers, line_column):
+            found.units = tuple(bare(cell) for cell in row)
+            found.notes.append(f"Units in row {number + 1}.")
+        elif any(cell.strip() for cell in row) and _no_number(row, found.headers, line_column):
+            joined = join_rows(found.headers, row, hints)
+            better = count_understood(joined, hints) > count_understood(found.headers, hints)
+            if not found.units and (better or names_quantities(row, found.headers, hints)):
+                found.headers = joined
+                found.joined.append(number)
+            elif is_symbols_row(row, line_column):
+                found.notes.append(f"Row {number + 1} holds symbols: left out.")
+            else:
+                break
+        else:
+            break
+        found.follows = number + 1
+    return found
+
+
 def find_layout(rows: Sequence[Sequence[str]], *, file: str, hints: Mapping[str, str]) -> Layout:
-    """Find the header row, a second header row, and a units row.
+    """Find the header rows, one to three, and the rows of units, symbols and column numbers beneath them.
 
     Parameters
     ----------
@@ -137,30 +194,19 @@ def find_layout(rows: Sequence[Sequence[str]], *, file: str, hints: Mapping[str,
     Raises
     ------
     InputError
-        If no row holds headers, or the headers hold no line number.
+        If no row holds headers, the headers hold no line number, or the lines stand in columns.
     """
     index, score = _best(rows, hints)
     if score < LINE_NUMBER_WEIGHT:
         raise _refuse(file, index + 1, rows[index] if rows else (), score)
+    _refuse_transposed(rows, index, hints, file)
     headers = tuple(cell.strip() for cell in rows[index])
-    line_column = line_number_columns(headers, hints)[0]
-    notes, follows = [f"Headers in row {index + 1}."], index + 1
-    lower = rows[follows] if follows < len(rows) else ()
-    blank_beneath = line_column >= len(lower) or not lower[line_column].strip()
-    if lower and blank_beneath and not _is_units_row(lower, headers, line_column):
-        joined = _joined(headers, lower)
-        if header_score(joined, hints) > score:
-            headers, follows = joined, follows + 1
-            notes = [f"Headers in rows {index + 1} and {index + 2}, read together."]
-    units: tuple[str, ...] = ("",) * len(headers)
-    for ahead in range(follows, min(follows + 2, len(rows))):
-        if _is_units_row(rows[ahead], headers, line_column):
-            units = tuple(_bare(cell) for cell in rows[ahead])[: len(headers)]
-            units += ("",) * (len(headers) - len(units))
-            notes.append(f"Units in row {ahead + 1}.")
-            follows = ahead + 1 if ahead == follows else follows
-            break
-    while follows < len(rows) and _is_numbering(rows[follows]):
-        notes.append(f"Row {follows + 1} numbers the columns: left out.")
-        follows += 1
-    return Layout(headers, units, index + 1, follows + 1, tuple(notes))
+    above = _with_group_above(rows, index, headers, hints)
+    found = _read_beneath(rows, index, above or headers, hints)
+    numbers = [*([index] if above else []), index + 1, *(number + 1 for number in found.joined)]
+    if len(numbers) > 1:
+        notes = [f"Headers in rows {', '.join(map(str, numbers[:-1]))} and {numbers[-1]}, read together."]
+    else:
+        notes = [f"Headers in row {index + 1}."]
+    units = (*found.units, *[""] * len(found.headers))[: len(found.headers)]
+    return Layout(found.headers, units, index + 1, found.follows + 1, (*notes, *found.notes))

@@ -1,64 +1,61 @@
-"""One cell that should be a number: its value and its own unit, or a sentence that says why not.
+"""One cell that should be a number: its value or both its ends in SI, or a sentence that says why not.
 
-Nothing here evaluates a cell: a number is ASCII digits with one sign, one decimal mark and one exponent, so that
-what Python's ``float`` also takes (``nan``, ``1_000``, digits of other scripts) is refused.
+Nothing here evaluates a cell, and a text longer than `LONGEST_NUMBER` is never parsed.
 """
 
 from __future__ import annotations
 
+import math
 import re
-from dataclasses import dataclass
-from typing import NamedTuple
+
+import numpy as np
 
 from checker.fields import Field
-from checker.intake.placeholders import AMBIENT, ATMOSPHERE, FULL_VACUUM, NO_FLOW, placeholder, word_of
+from checker.intake.cell_parts import APPROXIMATION, CellParts, read_parts
+from checker.intake.cell_reading import (
+    AT_60_DEGF,
+    KINEMATIC,
+    SPECIFIC_GRAVITY,
+    Cell,
+    CellReading,
+    NumberContext,
+    of_two,
+    refused,
+)
+from checker.intake.decimal_marks import marks_without_evidence
+from checker.intake.doubts import is_stand_in, stand_in_reason
+from checker.intake.not_numbers import known_words
+from checker.intake.number_shapes import NumberRefusedError
+from checker.intake.placeholders import open_behind_number, placeholder
+from checker.intake.ranges import LOWEST_DESIGN
 from checker.intake.texts import shown, tidy
 from checker.intake.unit_words import unit_in_cell
-from checker.model import Gap
-from checker.units import Unit, to_si
+from checker.intake.word_values import word_value
+from checker.model import CellRecord, Gap
+from checker.shown import si_unit_of_dimension
+from checker.units import API, Unit, from_si, to_si
 
-__all__ = ["KINEMATIC", "LONGEST_NUMBER", "SPECIFIC_GRAVITY", "CellReading", "NumberContext", "read_number_cell"]
+__all__ = [
+    "AT_60_DEGF",
+    "KINEMATIC",
+    "LONGEST_NUMBER",
+    "SPECIFIC_GRAVITY",
+    "CellReading",
+    "NumberContext",
+    "read_number_cell",
+    "record_of",
+    "unit_rests_on",
+]
 
 NAN = float("nan")
 LONGEST_NUMBER = 60
-KINEMATIC, SPECIFIC_GRAVITY = 1, 2
-_SHAPE = re.compile(
-    r"([-+]?)\s?((?:\d[\d.,]*|[.,]\d[\d.,]*)(?:[ ']\d{3}(?!\d)[\d.,]*)*)([eE][-+]?\d{1,4}(?!\d))?(.*)",
-    re.DOTALL | re.ASCII,
+_LOWEST_FIELDS = frozenset(LOWEST_DESIGN.values())
+_BARE = re.compile(r"[-+]?\d+(?:[.,]\d+)?(?:[eE][-+]?\d+)?", re.ASCII)
+_VACUUM = r"(?:F[./]?V\.?|full\s?vac(?:uum)?\.?|vacuum)"
+_WITH_VACUUM = re.compile(
+    rf"(?:{_VACUUM}\s?(?:[/&+,-]|to|and)\s?(?P<behind>.+)|(?P<before>.+?)\s?(?:[/&+,-]|to|and)\s?{_VACUUM})",
+    re.IGNORECASE | re.ASCII,
 )
-_LIMIT = re.compile(
-    r"(?:[<>~\u2264\u2265\u2248\u00b1=@]|ca\.?\s|approx|abt|about|max|min|up to|less|more)", re.IGNORECASE
-)
-_SECOND = re.compile(
-    r"(?:[-~/\u00b1x\u00d7&;:]|to\b|\.\.+|and\b|or\b)\s*[-+]?\s*[\d.]|/\s*[A-Za-z]{2,3}$", re.IGNORECASE | re.ASCII
-)
-_THOUSANDS = re.compile(r"\d{1,3}(?:[ ']\d{3})+(?:[.,]\d+)?", re.ASCII)
-_FLOWS = frozenset({"flow_mass", "flow_volume", "flow_standard"})
-
-
-class CellReading(NamedTuple):
-    """One number cell: SI value (NaN where there is none), its gap, the reason, and what its unit still rests on."""
-
-    value: float
-    gap: Gap
-    reason: str = ""
-    rests_on: int = 0
-
-
-@dataclass(frozen=True, slots=True)
-class NumberContext:
-    """What a column says of its cells: field, unit (None: the refusal says why), site's atmosphere, decimal marks."""
-
-    field: Field
-    unit: Unit | None
-    refusal: str
-    atmosphere: float
-    delimiter: str
-    comma: bool
-
-
-class _Refusal(Exception):  # noqa: N818
-    """The reason why a text is no number; never leaves this module."""
 
 
 def unit_rests_on(unit: Unit | None) -> int:
@@ -67,103 +64,143 @@ def unit_rests_on(unit: Unit | None) -> int:
         return 0
     if unit.reference == "kinematic":
         return KINEMATIC
+    if unit.reference == API:
+        return AT_60_DEGF
     relative = unit.dimension == "density" and unit.spelling.casefold().startswith(("sg", "spgr"))
     return SPECIFIC_GRAVITY if relative else 0
 
 
-def _with_comma(body: str, *, comma: bool, delimiter: str) -> str:
-    """Return a body that holds a comma with its decimal mark as a point and no thousands marks."""
-    if re.fullmatch(r"\d{1,3}(?:,\d{2,3})*,\d{3}\.\d+", body) or re.fullmatch(r"\d{1,3}(?:,\d{2,3})+,\d{3}", body):
-        return body.replace(",", "")
-    if re.fullmatch(r"[1-9]\d{0,2},\d{3}", body):
-        raise _Refusal(f"reads as {body.replace(',', '.')} or as {body.replace(',', '')}: write it without a comma.")
-    decimal = re.fullmatch(r"(\d*|\d{1,3}(?:\.\d{3})+),(\d+)", body)
-    if decimal is None:
-        raise _Refusal("is not one number.")
-    if delimiter == "," and not comma:
-        value = f"{decimal[1].replace('.', '')}.{decimal[2]}"
-        raise _Refusal(f"has a decimal comma in a comma-delimited list: write {value} if that is meant.")
-    return f"{decimal[1].replace('.', '')}.{decimal[2]}"
+def _parts(plain: str, context: NumberContext) -> CellParts:
+    if len(plain) > LONGEST_NUMBER:
+        raise NumberRefusedError("is too long for a number.")
+    known = "" if _BARE.fullmatch(plain) else known_words(plain)
+    if known:
+        raise NumberRefusedError(known)
+    marks = context.marks or marks_without_evidence(comma=context.comma)
+    dimension = context.field.dimension
+    parts = read_parts(plain, dimension=dimension, unit=context.unit, marks=marks, delimiter=context.delimiter)
+    if not all(map(math.isfinite, parts.numbers)):
+        raise NumberRefusedError("is not a finite number.")
+    return parts
 
 
-def _body(body: str, *, comma: bool, delimiter: str) -> str:
-    if " " in body or "'" in body:
-        if not _THOUSANDS.fullmatch(body):
-            raise _Refusal("is more than one number: give one value per case.")
-        body = body.replace(" ", "").replace("'", "")
-        return (
-            body.replace(",", ".")
-            if comma
-            else _with_comma(body, comma=False, delimiter=delimiter)
-            if ("," in body)
-            else body
+def _with_vacuum(text: str, plain: str, context: NumberContext) -> Cell | None:
+    """Return the reading of a pressure written beside full vacuum (``3.5/FV``), None for any other cell."""
+    match = _WITH_VACUUM.fullmatch(plain) if len(plain) <= LONGEST_NUMBER else None
+    if match is None or context.field.dimension != "pressure":
+        return None
+    if context.field.name not in LOWEST_DESIGN:
+        return refused(text, f"{shown(text)} says full vacuum, a design condition: give the pressure alone.")
+    cell = _read((match["behind"] or match["before"]).strip(), context)
+    if cell.reading.gap is not Gap.GIVEN or not math.isnan(cell.reading.lowest):
+        return refused(text, f"{shown(text)} is not a design pressure beside full vacuum: write it as '3.5/FV'.")
+    record, own = cell.record, unit_in_cell(cell.record.unit, "pressure")
+    unit = context.unit if isinstance(own, str) else own
+    vacuum = float(from_si(0.0, unit, atmosphere=context.atmosphere)) if unit else 0.0
+    record = CellRecord(text, (vacuum, *record.numbers), record.unit, (0.0, *record.values), "down to full vacuum")
+    return Cell(cell.reading._replace(lowest=0.0), record)
+
+
+def _not_used(parts: CellParts, record: CellRecord, context: NumberContext) -> Cell:
+    """Return the refusal of a limit or an approximation, with what is known of it."""
+    known = f"{' and '.join(f'{number:g}' for number in parts.numbers)} {record.unit}".rstrip()
+    if record.values:
+        values = " and ".join(f"{value:.6g}" for value in record.values)
+        known += f" ({values} {si_unit_of_dimension(context.field.dimension)})".replace(" -)", ")")
+    what = f"{parts.kind}, not a value" if parts.kind != APPROXIMATION else f"{parts.kind}, not the value"
+    return refused(
+        record.text, f"{shown(record.text)} is {what}: {known} is kept but not used; write the value itself.", record
+    )
+
+
+def _measured(text: str, parts: CellParts, context: NumberContext) -> Cell:
+    """Return the SI values of the numbers of a cell."""
+    units = [unit or context.unit for unit in parts.units]
+    spelling = parts.spelling or (context.unit.spelling if context.unit else "")
+    numbers = parts.numbers
+    if any(unit is None for unit in units):
+        record = CellRecord(text, numbers, spelling, (), context.refusal)
+        if parts.kind:
+            return _not_used(parts, record, context)
+        return Cell(CellReading(NAN, Gap.REFUSED, context.refusal), record)
+    known = [unit for unit in units if unit is not None]
+    with np.errstate(all="ignore"):
+        pairs = zip(numbers, known, strict=True)
+        values = tuple(float(to_si(number, unit, atmosphere=context.atmosphere)) + 0.0 for number, unit in pairs)
+    if not all(map(math.isfinite, values)):
+        return refused(text, f"{shown(text)} is not a finite number.", CellRecord(text, numbers, spelling))
+    record = CellRecord(text, numbers, spelling, values)
+    if any(is_stand_in(number, context.field) for number in numbers):
+        return refused(text, stand_in_reason(text), record)
+    if parts.kind:
+        return _not_used(parts, record, context)
+    note = f"footnote mark {shown(parts.mark)}" if parts.mark else ""
+    rests_on = {unit_rests_on(unit) for unit in known}
+    if len(values) == 1:
+        return Cell(CellReading(values[0], Gap.GIVEN, "", rests_on.pop(), NAN, note), record._replace(remark=note))
+    return _two_values(record, rests_on, note, parts, context)
+
+
+def _two_values(record: CellRecord, rests_on: set[int], note: str, parts: CellParts, context: NumberContext) -> Cell:
+    """Return the reading of a cell with two values, in order."""
+    text, field = record.text, context.field
+    low, high = record.values
+    one_unit = parts.units[0] == parts.units[1]
+    if not parts.either and (record.numbers[0] > record.numbers[1] if one_unit else low > high):
+        first, second = (f"{number:g}" for number in record.numbers)
+        return refused(
+            text, f"{shown(text)} runs downwards: is it {second} to {first}? Write the lower end first.", record
         )
-    if "," in body:
-        return _with_comma(body, comma=comma, delimiter=delimiter)
-    if comma and re.fullmatch(r"[1-9]\d{0,2}\.\d{3}", body):
-        raise _Refusal(f"reads as {body} or as {body.replace('.', '')} in a list with decimal commas: write which.")
-    if comma and re.fullmatch(r"\d{1,3}(?:\.\d{3}){2,}", body):
-        return body.replace(".", "")
-    if body.count(".") > 1:
-        raise _Refusal("is not one number.")
-    return body
+    if low > high:
+        unit = " and ".join(reversed(record.unit.split(" and ")))
+        record = record._replace(numbers=record.numbers[::-1], unit=unit, values=record.values[::-1])
+        low, high = record.values
+    if len(rests_on) > 1:
+        return refused(text, f"{shown(text)} names two kinds of unit: write both ends in one.", record)
+    if field.name in _LOWEST_FIELDS and low != high:
+        return refused(
+            text, f"{shown(text)} states two values for the {field.meaning}: write the lowest alone.", record
+        )
+    reading = of_two(low, high, field, rests_on.pop(), note)
+    if not math.isnan(reading.lowest) and not _possible_lowest(reading.lowest, field):
+        return refused(text, f"{shown(text)} has an impossible lower value: write the {field.meaning} alone.", record)
+    return Cell(reading, record._replace(remark=note or "two values: both ends are kept"))
 
 
-def _split(text: str, context: NumberContext) -> tuple[float, str]:
-    """Return the number at the head of a cell and the rest, its unit."""
-    if len(text) > LONGEST_NUMBER:
-        raise _Refusal("is too long for a number.")
-    if _LIMIT.match(text):
-        raise _Refusal("is a limit or an approximation: give one value per case.")
-    match = _SHAPE.fullmatch(text)
-    if match is None:
-        raise _Refusal("is not a number.")
-    sign, body, exponent, rest = match[1], match[2], match[3] or "", match[4].strip()
-    if _SECOND.match(rest) or rest[:1].isdigit():
-        raise _Refusal("holds two readings (a range, two values or a broken number): give one value per case.")
-    if rest[:1] in ("*", "+"):
-        raise _Refusal("is a limit or carries a mark: give one value per case and put notes into the remarks.")
-    return float(f"{sign}{_body(body, comma=context.comma, delimiter=context.delimiter)}{exponent}"), rest
+def _possible_lowest(value: float, field: Field) -> bool:
+    """Return whether the lower of two design values is possible: unlike a design pressure it may be full vacuum."""
+    return field.above < value < field.below or (field.dimension == "pressure" and value == 0.0)
 
 
-def _special(text: str, context: NumberContext) -> CellReading | None:
-    """Return the reading of a word that stands for a value, or that asks for one."""
-    word, field = word_of(text), context.field
-    if word in NO_FLOW and field.name in _FLOWS:
-        return CellReading(0.0, Gap.GIVEN)
-    if word in ATMOSPHERE and field.dimension == "pressure":
-        return CellReading(context.atmosphere, Gap.GIVEN)
-    if word in FULL_VACUUM and field.dimension == "pressure":
-        return CellReading(NAN, Gap.REFUSED, f"{shown(text)} is full vacuum, no operating value: give the pressure.")
-    if word in AMBIENT:
-        return CellReading(NAN, Gap.REFUSED, f"{shown(text)} is a range of the site, no value: give the number.")
-    return None
-
-
-def _converted(number: float, rest: str, text: str, context: NumberContext) -> CellReading:
-    unit = context.unit
-    if rest:
-        own = unit_in_cell(rest, context.field.dimension)
-        if isinstance(own, str):
-            return CellReading(NAN, Gap.REFUSED, f"{shown(text)}: {own}")
-        unit = own
-    if unit is None:
-        return CellReading(NAN, Gap.REFUSED, context.refusal)
-    value = float(to_si(number, unit, atmosphere=context.atmosphere))
-    return CellReading(value, Gap.GIVEN, rests_on=unit_rests_on(unit))
+def _read(text: str, context: NumberContext) -> Cell:
+    plain = tidy(text)
+    special = word_value(text, plain, context)
+    if special is not None:
+        return special
+    gap = placeholder(plain, context.field.name)
+    if gap is Gap.GIVEN and len(plain) <= LONGEST_NUMBER and open_behind_number(plain):
+        gap = Gap.HOLD
+    if gap is not Gap.GIVEN:
+        return Cell(CellReading(NAN, gap), CellRecord(text))
+    beside_vacuum = _with_vacuum(text, plain, context)
+    if beside_vacuum is not None:
+        return beside_vacuum
+    try:
+        parts = _parts(plain, context)
+    except NumberRefusedError as refusal:
+        return refused(text, f"{shown(text)} {refusal}")
+    return _measured(text, parts, context)
 
 
 def read_number_cell(text: str, context: NumberContext) -> CellReading:
     """Read one cell of a number column; never raises, whatever the cell holds."""
-    plain = tidy(text)
-    special = _special(plain, context)
-    if special is not None:
-        return special
-    gap = placeholder(plain, context.field.name)
-    if gap is not Gap.GIVEN:
-        return CellReading(NAN, gap)
-    try:
-        number, rest = _split(plain, context)
-    except _Refusal as refusal:
-        return CellReading(NAN, Gap.REFUSED, f"{shown(text)} {refusal}")
-    return _converted(number, rest, text, context)
+    return _read(text, context).reading
+
+
+def record_of(text: str, context: NumberContext) -> CellRecord:
+    """Return one cell of a number column in full: text, numbers, unit as read, SI values and what to say of it.
+
+    A plain number has a record too; a blank, an open item or a text has one without numbers. The bounds of the field
+    are not looked at: a number that is impossible keeps its SI value here.
+    """
+    return _read(text, context).record

@@ -8,13 +8,14 @@ from pathlib import Path
 
 from checker.errors import InputError, Problem
 from checker.intake.decoding import read_text
-from checker.intake.records import Block, Form, read_blocks, read_form
+from checker.intake.layout import ROWS_SEARCHED
+from checker.intake.records import ROWS_BENEATH, Block, Form, read_blocks, read_form
 from checker.intake.texts import place, shown
-from checker.intake.workbook import is_workbook, read_sheet
+from checker.intake.workbook import is_workbook, name_says, read_sheet
 
 __all__ = ["Opened", "open_table"]
 
-HEAD_ROWS = 40
+HEAD_ROWS = ROWS_SEARCHED + ROWS_BENEATH
 MOST_HEAD_COLUMNS = 2_000
 
 
@@ -34,8 +35,9 @@ class Opened:
         Yields the rows in blocks.
     notes : tuple of str
         Encoding, delimiter, sheet: what was understood.
-    refused : mapping of (int, int) to str
-        Sentence for each cell that must not be read, by row and column, both counted from 0.
+    refused, no_numbers : mapping of int to mapping of int to str
+        Sentence for each cell that must not be read at all, or not as a number or a size: by column, then by row, both
+        counted from 0.
     struck, hidden : frozenset of int
         Rows (counted from 0) struck through, and hidden rows.
     """
@@ -45,7 +47,8 @@ class Opened:
     form: Form
     blocks: Callable[[], Iterator[Block]]
     notes: tuple[str, ...]
-    refused: Mapping[tuple[int, int], str] = field(default_factory=dict)
+    refused: Mapping[int, Mapping[int, str]] = field(default_factory=dict)
+    no_numbers: Mapping[int, Mapping[int, str]] = field(default_factory=dict)
     struck: frozenset[int] = frozenset()
     hidden: frozenset[int] = frozenset()
 
@@ -73,14 +76,21 @@ def open_table(path: Path, *, sheet: str | None, hints: Mapping[str, str]) -> Op
         what = f"the sheet {shown(sheet)} is asked for, but this file is a text and has no sheets."
         raise InputError(Problem(what, where=place(path.name), remedy="Leave --sheet out, or give the workbook."))
     decoded = read_text(path)
-    form = read_form(decoded.text, hints=hints)
+    form = read_form(decoded.pieces, hints=hints, file=path.name)
     return Opened(
         label=path.name,
         sha256=decoded.sha256,
         form=form,
-        blocks=lambda: read_blocks(decoded.text, delimiter=form.delimiter, file=path.name),
-        notes=(*decoded.notes, *form.notes),
+        blocks=lambda: read_blocks(_let_go(decoded.pieces), delimiter=form.delimiter, file=path.name),
+        notes=tuple(note for note in (name_says(path), *decoded.notes, *form.notes) if note),
     )
+
+
+def _let_go(pieces: list[str]) -> Iterator[str]:
+    """Yield pieces in turn and keep none: the rows made of them need the room."""
+    pieces.reverse()
+    while pieces:
+        yield pieces.pop()
 
 
 def _open_workbook(path: Path, sheet: str | None, hints: Mapping[str, str]) -> Opened:
@@ -92,7 +102,15 @@ def _open_workbook(path: Path, sheet: str | None, hints: Mapping[str, str]) -> O
         form=Form("", False, head, found.notes),
         blocks=found.blocks,
         notes=found.notes,
-        refused=found.refused,
+        refused=_by_column(found.refused),
+        no_numbers=_by_column(found.no_numbers),
         struck=found.struck,
         hidden=found.hidden,
     )
+
+
+def _by_column(marked: Mapping[tuple[int, int], str]) -> dict[int, dict[int, str]]:
+    columns: dict[int, dict[int, str]] = {}
+    for (row, column), sentence in marked.items():
+        columns.setdefault(column, {})[row] = sentence
+    return columns

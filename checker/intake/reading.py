@@ -3,30 +3,44 @@
 from __future__ import annotations
 
 import gc
-from collections.abc import Iterator, Mapping, Sequence
+from collections.abc import Collection, Iterator, Mapping, Sequence
 from contextlib import contextmanager
 from dataclasses import dataclass
+from functools import partial
 from pathlib import Path
-
-import numpy as np
 
 from checker.criteria.hints import ColumnHint
 from checker.errors import InputError, Problem
-from checker.intake.assemble import Assembly, Converted, assemble
-from checker.intake.cells import NumberCells
+from checker.intake.assemble import assemble
+from checker.intake.cells import CodedCells
 from checker.intake.column_hints import hint_fields
 from checker.intake.columns import Plan, number_columns, plan_columns
-from checker.intake.convert import ConvertedNumbers, convert_line_numbers, convert_numbers, convert_sizes, convert_texts
+from checker.intake.convert import convert_line_numbers, convert_sizes, convert_texts
+from checker.intake.convert_numbers import column_evidence, convert_numbers
+from checker.intake.converted import Converted, ConvertedNumbers
+from checker.intake.decimal_marks import decide, together
+from checker.intake.headers import read_header
 from checker.intake.layout import Layout, find_layout, line_number_columns
 from checker.intake.lines import Lines, find_lines
+from checker.intake.listing import (
+    decimal_sentence,
+    hold_register,
+    notes_on_cells,
+    notes_on_list,
+    unread_items,
+)
+from checker.intake.number_cells import NumberContext, record_of
 from checker.intake.opening import Opened, open_table
 from checker.intake.planned import PlannedColumn
+from checker.intake.ranges import expand
 from checker.intake.records import Form
-from checker.intake.texts import place
-from checker.model import Address, Column, Gap, HoldItem, LineList, Source, UnreadItem
+from checker.intake.texts import key_of, place
+from checker.model import Column, Gap, LineList, Source
 from checker.units import STANDARD_ATMOSPHERE
 
 __all__ = ["read_line_list"]
+
+SAYS_DELETED = frozenset({"remarks", "status"})
 
 
 @contextmanager
@@ -93,18 +107,39 @@ def read_line_list(
         fields = hint_fields(hints)
         opened = open_table(Path(path), sheet=sheet, hints=fields)
         form, file = opened.form, opened.label
-        layout = find_layout(form.head, file=file, hints=fields)
+        layout = _layout(opened, fields)
         lines = find_lines(
             opened.blocks(),
             form,
             layout,
             file=file,
             line_column=line_number_columns(layout.headers, fields)[0],
-            number_columns=frozenset() if form.comma else number_columns(layout, hints, file),
+            number_columns=number_columns(layout, hints, file),
+            said_columns=_columns_of(layout.headers, SAYS_DELETED, fields),
             struck=opened.struck,
         )
         plan = plan_columns(layout, lines.columns, file=file, hints=hints, units=units or {}, comma=form.comma)
         return _line_list(opened, layout, lines, plan, Site(atmosphere, ambient))
+
+
+def _layout(opened: Opened, fields: Mapping[str, str]) -> Layout:
+    """Find the headers; a refusal says how the file was read so far, which may be why there are none."""
+    try:
+        return find_layout(opened.form.head, file=opened.label, hints=fields)
+    except InputError as error:
+        read_as = Problem(f"The file was read so: {' '.join(opened.notes)}", where=place(opened.label))
+        raise InputError((*error.problems, read_as)) from error
+
+
+def _columns_of(headers: Sequence[str], names: Collection[str], hinted: Mapping[str, str]) -> list[int]:
+    """Return the columns whose header names one of some fields."""
+    found = []
+    for index, header in enumerate(headers):
+        name = hinted.get(key_of(header), "")
+        reading = None if name or not header else read_header(header)
+        if name in names or (reading is not None and reading.fields[0].name in names):
+            found.append(index)
+    return found
 
 
 @dataclass(frozen=True, slots=True)
@@ -115,29 +150,47 @@ class Site:
     ambient: tuple[float, float] | None
 
 
-def _converted(column: PlannedColumn, lines: Lines, form: Form, site: Site) -> Converted:
+def _contexts(plan: Plan, lines: Lines, form: Form, site: Site) -> dict[int, NumberContext]:
+    """Return what each number column says of its cells, by column."""
+    numbers = [column for column in plan.columns if column.field.kind == "number"]
+    evidence = {column.index: column_evidence(lines.columns[column.index]) for column in numbers}
+    of_list = together(evidence.values())
+    return {
+        column.index: NumberContext(
+            column.field,
+            column.reading,
+            column.refusal,
+            site.atmosphere,
+            form.delimiter,
+            form.comma,
+            site.ambient,
+            decide(evidence[column.index], of_list, comma=form.comma, delimiter=form.delimiter),
+        )
+        for column in numbers
+    }
+
+
+def _converted(column: PlannedColumn, lines: Lines, form: Form, context: NumberContext | None) -> Converted:
     cells = lines.columns[column.index]
     if column.field.name == "line_number":
         return convert_line_numbers(cells)
-    if isinstance(cells, NumberCells) or column.field.kind == "number":
-        return convert_numbers(cells, column, atmosphere=site.atmosphere, delimiter=form.delimiter, comma=form.comma)
+    if context is not None:
+        return convert_numbers(cells, context)
+    assert isinstance(cells, CodedCells)
     if column.field.kind == "size":
         return convert_sizes(cells, column, comma=form.comma)
     return convert_texts(cells, column.field)
 
 
-def _refuse_broken(converted: Converted, column: PlannedColumn, broken: Mapping[int, str]) -> None:
-    """Refuse every value of the rows whose cells may have moved."""
-    if not broken or column.field.name == "line_number":
-        return
-    indices = list(broken)
-    converted.gaps[indices] = Gap.REFUSED
-    if isinstance(converted, ConvertedNumbers):
-        converted.values[indices] = np.nan
-    else:
-        converted.coded.codes[indices] = -1
-    converted.reasons.update(broken)
-    converted.holds[:] = [index for index in converted.holds if index not in broken]
+def _refuse_marked(converted: Converted, column: PlannedColumn, lines: Lines, opened: Opened) -> None:
+    """Refuse every value of the rows whose cells may have moved, and the cells that a workbook marks as no value."""
+    if lines.broken and column.field.name != "line_number":
+        converted.refuse(lines.broken)
+    marked = dict(opened.no_numbers.get(column.index, {})) if column.field.kind != "text" else {}
+    marked.update(opened.refused.get(column.index, {}))
+    if marked:
+        line_of = {row - 1: index for index, row in enumerate(lines.row.tolist())}
+        converted.refuse({line_of[row]: reason for row, reason in marked.items() if row in line_of})
 
 
 def _first_refusal(column: PlannedColumn, converted: Converted, lines: Lines, header_row: int) -> tuple[str, int]:
@@ -168,88 +221,39 @@ def _refuse_if_nothing(
     raise InputError(problems)
 
 
-def _holds(plan: Plan, converted: Mapping[int, Converted], lines: Lines, file: str) -> tuple[HoldItem, ...]:
-    found = [(index, column) for column in plan.columns for index in converted[column.index].holds]
+def _columns(plan: Plan, lines: Lines, contexts: Mapping[int, NumberContext]) -> tuple[Column, ...]:
     return tuple(
-        HoldItem(
-            lines.numbers[index],
+        Column(
             column.field.name,
-            lines.columns[column.index][index].strip(),
-            Address(file, int(lines.row[index]), column.header),
+            column.header,
+            column.case,
+            column.unit,
+            lines.columns[column.index],
+            partial(record_of, context=contexts[column.index]) if column.index in contexts else None,
         )
-        for index, column in sorted(found, key=lambda item: (item[0], item[1].index))
+        for column in plan.columns
     )
-
-
-def _unread(
-    plan: Plan, converted: Mapping[int, Converted], lines: Lines, layout: Layout, file: str
-) -> list[UnreadItem]:
-    """Return the refused headers, rows and cells, each with its sentence."""
-    items = [UnreadItem("", header, why, Address(file, layout.header_row, header)) for header, why in plan.unread]
-    items.extend(lines.unread)
-    for column in plan.columns:
-        mine = converted[column.index]
-        if isinstance(mine, ConvertedNumbers) and mine.column_refusal:
-            address = Address(file, layout.header_row, column.header)
-            items.append(UnreadItem("", column.header, mine.column_refusal, address))
-        cells = lines.columns[column.index]
-        items.extend(
-            UnreadItem(lines.numbers[index], cells[index], reason, Address(file, int(lines.row[index]), column.header))
-            for index, reason in mine.reasons.items()
-            if index not in lines.broken
-        )
-    header = layout.headers[next(column.index for column in plan.columns if column.field.name == "line_number")]
-    items.extend(
-        UnreadItem(lines.numbers[index], lines.numbers[index], reason, Address(file, int(lines.row[index]), header))
-        for index, reason in lines.broken.items()
-    )
-    return sorted(items, key=lambda item: item.address.row)
-
-
-def _refuse_cells(
-    converted: Converted, column: PlannedColumn, lines: Lines, refused: Mapping[tuple[int, int], str]
-) -> None:
-    """Refuse the cells that a workbook marks as no value: an uncalculated formula, a text half struck out."""
-    row_of = {int(row) - 1: index for index, row in enumerate(lines.row)} if refused else {}
-    for (row, position), reason in refused.items():
-        if position == column.index and row in row_of:
-            index = row_of[row]
-            converted.gaps[index] = Gap.REFUSED
-            if isinstance(converted, ConvertedNumbers):
-                converted.values[index] = np.nan
-            else:
-                converted.coded.codes[index] = -1
-            converted.reasons[index] = reason
-
-
-def _notes(opened: Opened, layout: Layout, lines: Lines, plan: Plan, assembly: Assembly) -> tuple[str, ...]:
-    notes = [*opened.notes, *layout.notes, *plan.notes, *lines.notes]
-    if bool(assembly.composite.any()):
-        codes = np.unique(assembly.case.codes[assembly.composite])
-        names = ", ".join(assembly.case.texts[int(code)] for code in codes)
-        notes.append(
-            f"Composite cases (their own flow beside pressure, temperature or properties of all cases): {names}."
-        )
-    return tuple(notes)
 
 
 def _line_list(opened: Opened, layout: Layout, lines: Lines, plan: Plan, site: Site) -> LineList:
-    file = opened.label
-    converted = {column.index: _converted(column, lines, opened.form, site) for column in plan.columns}
+    file, contexts = opened.label, _contexts(plan, lines, opened.form, site)
+    converted: dict[int, Converted] = {}
     for column in plan.columns:
-        _refuse_broken(converted[column.index], column, lines.broken)
-        _refuse_cells(converted[column.index], column, lines, opened.refused)
+        mine = converted[column.index] = _converted(column, lines, opened.form, contexts.get(column.index))
+        _refuse_marked(mine, column, lines, opened)
     read = [column for column in plan.columns if column.field.name != "line_number"]
     _refuse_if_nothing(read, converted, lines, file, layout)
     assembly = assemble(read, converted, cases=plan.cases, rows=lines.row, file=file, header_row=layout.header_row)
-    return LineList(
-        source=Source(file, opened.sha256, " ".join(opened.notes)),
-        columns=tuple(
-            Column(column.field.name, column.header, column.case, column.unit, lines.columns[column.index])
-            for column in plan.columns
-        ),
+    form = tuple(note for note in (*opened.notes, decimal_sentence(opened.form, contexts.values())) if note)
+    line_list = LineList(
+        source=Source(file, opened.sha256, " ".join(form)),
+        columns=_columns(plan, lines, contexts),
         unmatched=plan.unmatched,
-        notes=_notes(opened, layout, lines, plan, assembly),
+        notes=(
+            *form,
+            *notes_on_list(layout, lines, plan, assembly),
+            *notes_on_cells(plan, contexts, converted, lines),
+        ),
         line_number=lines.numbers,
         row=lines.row,
         line=assembly.line,
@@ -260,7 +264,11 @@ def _line_list(opened: Opened, layout: Layout, lines: Lines, plan: Plan, site: S
         texts=assembly.texts,
         gaps=assembly.gaps,
         refusals=assembly.refusals,
-        holds=_holds(plan, converted, lines, file),
-        unread=tuple(_unread(plan, converted, lines, layout, file)),
+        holds=hold_register(plan, converted, lines, file),
+        unread=tuple(unread_items(plan, converted, lines, layout, file)),
         deleted=lines.deleted,
+        matching=plan.matching,
     )
+    if assembly.highs or assembly.lowest:
+        return expand(line_list, assembly.highs, assembly.lowest)
+    return line_list

@@ -5,23 +5,25 @@ from __future__ import annotations
 import csv
 import io
 import re
-from collections.abc import Iterator, Mapping, Sequence
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass
-from itertools import islice
+from itertools import chain, islice
 
 from checker.errors import InputError, Problem
-from checker.intake.layout import ROWS_SEARCHED, header_score
+from checker.intake.layout import LINE_NUMBER_WEIGHT, ROWS_SEARCHED, header_score
 from checker.intake.texts import place, shown
 
 __all__ = ["LONGEST_CELL", "MOST_COLUMNS", "MOST_ROWS", "Block", "Form", "read_blocks", "read_form"]
 
 MOST_COLUMNS = 2_000
-MOST_ROWS = 1_000_000
+MOST_ROWS = 200_000
 LONGEST_CELL = 32_767
 MOST_NEWLINES = 20
 SAMPLE = 200_000
 ROWS_BENEATH = 6
 BLOCK = 500
+_OTHER_ENDS_ASCII = "\x0b\x0c\x1c\x1d\x1e"
+_OTHER_ENDS = "\x85\u2028\u2029"
 DELIMITERS = {",": "comma", ";": "semicolon", "\t": "tab", "|": "pipe"}
 _CLOSE_QUOTES = 'Close the quotation mark, or double it inside a quoted cell (6"" for 6").'
 
@@ -54,7 +56,7 @@ def _refuse(file: str, row: int | None, what: str, remedy: str) -> InputError:
 
 
 def _sample(text: str, delimiter: str) -> list[list[str]]:
-    reader = csv.reader(io.StringIO(text[:SAMPLE], newline=""), delimiter=delimiter)
+    reader = csv.reader(io.StringIO(text, newline=""), delimiter=delimiter)
     rows: list[list[str]] = []
     try:
         rows.extend(islice(reader, ROWS_SEARCHED + ROWS_BENEATH))
@@ -87,40 +89,58 @@ def _newlines(row: Sequence[str]) -> int:
 
 
 class _TextLines:
-    """The lines of a text, split the first time a message needs one."""
+    """The lines of a text, piece by piece; `any_long` says whether one met so far outgrows a cell."""
 
-    def __init__(self, text: str) -> None:
-        self._text = text
+    def __init__(self, pieces: Iterable[str]) -> None:
+        self._pieces = pieces
         self._lines: list[str] = []
+        self._before = 0
+        self.any_long = False
+
+    def __iter__(self) -> Iterator[str]:
+        return chain.from_iterable(map(self._split, self._pieces))
+
+    def _split(self, piece: str) -> list[str]:
+        self._before += len(self._lines)
+        self._lines = _lines_of(piece)
+        self.any_long = self.any_long or max(map(len, self._lines), default=0) > LONGEST_CELL
+        return self._lines
 
     def line(self, number: int) -> str:
-        """Return a line, counted from 1; empty beyond the last."""
-        if not self._lines:
-            self._lines = list(io.StringIO(self._text, newline=""))
-        return self._lines[number - 1] if 0 < number <= len(self._lines) else ""
+        """Return a line of the latest piece, counted from 1 over all; empty outside it."""
+        place = number - 1 - self._before
+        return self._lines[place] if 0 <= place < len(self._lines) else ""
+
+
+def _lines_of(piece: str) -> list[str]:
+    """Return the lines of a piece with their ends: only line feed and carriage return end one."""
+    if any(sign in piece for sign in _OTHER_ENDS_ASCII) or (
+        not piece.isascii() and any(sign in piece for sign in _OTHER_ENDS)
+    ):
+        return list(io.StringIO(piece, newline=""))
+    return piece.splitlines(keepends=True)
 
 
 def _damaged(error: csv.Error, file: str, row: int, line: int, lines_read: int, latest: str) -> str:
     """Return the text of a row that contradicts itself, or refuse the file where the rows beyond are in doubt."""
-    if "field larger" in str(error):
-        raise _refuse(file, row, f"a cell is longer than {LONGEST_CELL} characters.", "Shorten it.") from error
     if lines_read > line + 1 or "unexpected end" in str(error):
         what = f"a quotation mark opened in this row (text row {line + 1}) is not closed."
         raise _refuse(file, row, what, _CLOSE_QUOTES) from error
+    if "field larger" in str(error):
+        raise _refuse(file, row, f"a cell is longer than {LONGEST_CELL} characters.", "Shorten it.") from error
     return latest.rstrip("\r\n")
 
 
-def read_blocks(text: str, *, delimiter: str, file: str) -> Iterator[Block]:
-    """Yield the rows of a delimited text, some hundreds at a time.
+def read_blocks(pieces: Iterable[str], *, delimiter: str, file: str) -> Iterator[Block]:
+    """Yield the rows of a delimited text, given in pieces that end where a line ends, some hundreds at a time.
 
     Raises
     ------
     InputError
         If a quotation mark is not closed, or the file has too many rows or columns or too long a cell.
     """
-    text_lines = _TextLines(text)
-    reader = csv.reader(io.StringIO(text, newline=""), delimiter=delimiter, strict=True)
-    long_lines = max(map(len, text.split("\n"))) > LONGEST_CELL
+    text_lines = _TextLines(pieces)
+    reader = csv.reader(text_lines, delimiter=delimiter, strict=True)
     first, line, width = 0, 0, 0
     while True:
         block = Block(first, [], {})
@@ -140,7 +160,7 @@ def read_blocks(text: str, *, delimiter: str, file: str) -> Iterator[Block]:
         _refuse_oversize(block, file)
         if spans:
             _refuse_swallowed(block, delimiter, file, width)
-        if spans or long_lines:
+        if spans or text_lines.any_long:
             _refuse_long_cells(block, file)
         first += len(block.rows)
         yield block
@@ -177,17 +197,49 @@ def _refuse_long_cells(block: Block, file: str) -> None:
                 raise _refuse(file, index + 1, what, "Shorten it, or check the quotation marks of the row.")
 
 
-def _decimal_commas(text: str, delimiter: str) -> bool:
+def _decimal_commas(pieces: Iterable[str], delimiter: str) -> bool:
     """Return whether a list that is not parted by commas writes its decimals with commas."""
     if delimiter == ",":
         return False
     edge = re.escape(delimiter)
-    return re.search(rf"(?:^|[{edge}\"]) *[-+]?\d+,\d+ *(?:[{edge}\"\r\n]|$)", text, re.MULTILINE) is not None
+    decimal = re.compile(rf"(?:^|[{edge}\"]) *[-+]?\d+,\d+ *(?:[{edge}\"\r\n]|$)", re.MULTILINE)
+    return any("," in piece and decimal.search(piece) is not None for piece in pieces)
 
 
-def read_form(text: str, *, hints: Mapping[str, str]) -> Form:
-    """Return the delimiter of a text, whether it is written with decimal commas, and its first rows."""
-    delimiter, note = _delimiter(text, hints)
-    comma = _decimal_commas(text, delimiter)
-    head = tuple(map(tuple, _sample(text, delimiter)))
-    return Form(delimiter, comma, head, (note, "Decimal commas.") if comma else (note,))
+def _refuse_fixed_width(text: str, delimiter: str, hints: Mapping[str, str], file: str) -> None:
+    """Refuse a table whose columns are parted by runs of blanks: where one ends cannot be told from the text."""
+    if (
+        max((header_score(row, hints) for row in _sample(text, delimiter) if len(row) > 1), default=0)
+        >= LINE_NUMBER_WEIGHT
+    ):
+        return
+    for index, line in enumerate(text[:SAMPLE].splitlines()[:ROWS_SEARCHED]):
+        cells = re.split(r" {2,}|\t+", line.strip())
+        if len(cells) > 2 and header_score(cells, hints) > LINE_NUMBER_WEIGHT:
+            what = "no table found: the columns are parted by blanks (fixed width), so cells cannot be told apart."
+            raise _refuse(file, index + 1, what, "Ask for the list as CSV, or open it in a spreadsheet and save it so.")
+
+
+def read_form(pieces: Sequence[str], *, hints: Mapping[str, str], file: str) -> Form:
+    """Return the delimiter of a text, whether it is written with decimal commas, and its first rows.
+
+    Raises
+    ------
+    InputError
+        If the text is a table of fixed width.
+    """
+    start = _start(pieces)
+    delimiter, note = _delimiter(start, hints)
+    _refuse_fixed_width(start, delimiter, hints, file)
+    comma = _decimal_commas(pieces, delimiter)
+    head = tuple(map(tuple, _sample(start, delimiter)))
+    return Form(delimiter, comma, head, (note,))
+
+
+def _start(pieces: Iterable[str]) -> str:
+    start = ""
+    for piece in pieces:
+        start += piece[:SAMPLE]
+        if len(start) >= SAMPLE:
+            break
+    return start[:SAMPLE]

@@ -24,6 +24,8 @@ class Sheet:
         Every row from the first one on, as texts; rows may differ in width, and a blank cell is an empty text.
     refused : mapping of (int, int) to str
         Sentence for each cell whose value must not be read, by row and column, both counted from 0.
+    no_numbers : mapping of (int, int) to str
+        Sentence for each cell that is no number and no size, though a text column may show it: a date, for one.
     struck : frozenset of int
         Rows (counted from 0) whose written cells are struck through: deleted lines.
     hidden : frozenset of int
@@ -36,6 +38,7 @@ class Sheet:
     sha256: str
     rows: list[list[str]]
     refused: Mapping[tuple[int, int], str] = field(default_factory=dict)
+    no_numbers: Mapping[tuple[int, int], str] = field(default_factory=dict)
     struck: frozenset[int] = frozenset()
     hidden: frozenset[int] = frozenset()
     notes: tuple[str, ...] = ()

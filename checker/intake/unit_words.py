@@ -2,39 +2,29 @@
 
 from __future__ import annotations
 
-import csv
-from functools import cache, lru_cache
+from functools import lru_cache
 
+from checker.criteria.nominal_size import SIZE_BASES
+from checker.intake.texts import shown
 from checker.unit_spelling import fold_unit
-from checker.units import TABLE, Unit, UnitRefusedError, read_unit
+from checker.units import Unit, UnitRefusedError, dimensions_knowing, is_known_spelling, read_unit
 
 __all__ = ["is_unit_text", "settled_by", "size_basis", "unit_in_cell", "unit_or_refusal"]
 
-_SIZE_WORDS = {
-    "nps": "NPS", "in": "NPS", "inch": "NPS", "inches": "NPS", '"': "NPS", "''": "NPS", "ins": "NPS",
-    "dn": "DN", "mm": "DN", "nb": "DN", "nbmm": "DN", "mmnb": "DN", "dnmm": "DN", "npsin": "NPS", "npsinch": "NPS",
-}  # fmt: skip
-
-
-@cache
-def _spellings() -> frozenset[tuple[str, str]]:
-    with TABLE.open(encoding="utf-8", newline="") as handle:
-        return frozenset((row["dimension"], row["spelling"].casefold()) for row in csv.DictReader(handle))
-
-
-@cache
-def _any_spelling() -> frozenset[str]:
-    return frozenset(spelling for _, spelling in _spellings() if spelling)
+_SIZE_WORDS = {word: basis for basis, words in SIZE_BASES.items() for word in words.split()}
 
 
 def size_basis(text: str) -> str:
-    """Return ``NPS`` or ``DN`` where a text names the basis of nominal sizes, else an empty text."""
+    """Return ``NPS``, ``DN`` or ``NPS x 100`` where a text names the basis of nominal sizes, else an empty text."""
     return _SIZE_WORDS.get(fold_unit(text).casefold(), "")
 
 
 def is_unit_text(text: str) -> bool:
-    """Return whether a text is a known spelling of a unit of any dimension, or a basis of sizes."""
-    return bool(size_basis(text)) or fold_unit(text).casefold() in _any_spelling()
+    """Return whether a text is a known spelling of a unit of any dimension, or a basis of sizes.
+
+    A spelling that raises a question (``MSCFD``, ``mol%``) is one too: its column is refused with the question.
+    """
+    return bool(size_basis(text)) or is_known_spelling(text)
 
 
 @lru_cache(maxsize=4096)
@@ -49,9 +39,11 @@ def unit_or_refusal(text: str, dimension: str) -> Unit | str:
 @lru_cache(maxsize=4096)
 def unit_in_cell(text: str, dimension: str) -> Unit | str:
     """Return the unit a single cell names: known spellings only, so that a cell costs no search."""
-    if (dimension, fold_unit(text).casefold()) not in _spellings():
-        return f"'{text[:40]}' is not a unit of {dimension} that is understood here."
-    return unit_or_refusal(text, dimension)
+    if is_known_spelling(text, dimension):
+        return unit_or_refusal(text, dimension)
+    others = dimensions_knowing(text)
+    hint = f" It is a unit of {others[0]}." if others else ""
+    return f"{shown(text)} is not a unit of {dimension} that is understood here.{hint}"
 
 
 def settled_by(bare: str, stated: str) -> Unit | None:

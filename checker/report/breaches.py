@@ -7,6 +7,7 @@ from dataclasses import dataclass
 from functools import cache
 
 from checker.fields import all_fields
+from checker.model import base_case
 from checker.report.wording import plural
 from checker.review_model import OutcomeRow
 
@@ -38,8 +39,18 @@ class Breach:
 
     @property
     def cases(self) -> str:
-        """The names of the cases, the worst first; empty where the list names none."""
-        return ", ".join(dict.fromkeys(row.case for row in self.rows if row.case))
+        """The names of the cases, the worst first; empty where the list names none.
+
+        Line cases that differ only by the ends of ranges are counted, not named one by one.
+        """
+        named: dict[str, dict[str, None]] = {}
+        for row in self.rows:
+            if row.case:
+                named.setdefault(base_case(row.case), {})[row.case] = None
+        return ", ".join(
+            next(iter(cases)) if len(cases) == 1 else f"{base} in {len(cases)} combinations of its ranges"
+            for base, cases in named.items()
+        )
 
     @property
     def alike(self) -> bool:

@@ -3,19 +3,25 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Iterator
+from typing import TypeVar
 
 import numpy as np
 
 from checker.errors import InputError, Problem
+from checker.model import HoldItem, RangeItem, UnreadItem
+from checker.report.cell_record_text import read_as, si_text
 from checker.report.numbers import MISSING, NARROW_SPACE, in_shown_unit, utilisation
 from checker.report.review_contract import ReviewLike
 from checker.report.safe_text import shortened, visible_line
 from checker.report.states import state_of
-from checker.report.terminal import WIDTH, wrapped
+from checker.report.text_lines import WIDTH, wrapped
+from checker.report.wording import listed_meaning
 from checker.review_model import CellValue, OutcomeRow
-from checker.shown import meaning_of
+from checker.shown import meaning_of, shown_value
 
 __all__ = ["CAUTION", "calculation_sheet"]
+
+_Item = TypeVar("_Item", HoldItem, RangeItem, UnreadItem)
 
 CAUTION = (
     "A screening check: it does not replace the codes in force, hazard studies or the judgement of a licensed "
@@ -40,7 +46,8 @@ def calculation_sheet(review: ReviewLike, line_number: str) -> str:
     ledger = [_plain(line) for line in review.ledger_text(line_number)]
     parts = [
         _title(review, line_number, rows),
-        _section("Inputs", _inputs(rows)),
+        _section("Inputs", _inputs(review, rows)),
+        *(_section(heading, iter(body)) for heading, body in _said_of_cells(review, line_number) if body),
         _section("Balance from end to end", iter(ledger)) if ledger else iter(()),
         _cases(review, rows),
         _section("Caution", iter(wrapped(CAUTION))),
@@ -74,19 +81,50 @@ def _section(title: str, body: Iterable[str]) -> Iterator[str]:
     yield from body
 
 
-def _inputs(rows: tuple[OutcomeRow, ...]) -> Iterator[str]:
-    cells = dict.fromkeys(cell for row in rows for cell in row.cells)
+def _inputs(review: ReviewLike, rows: tuple[OutcomeRow, ...]) -> Iterator[str]:
+    cells: dict[CellValue, int] = {}
+    for row in rows:
+        for cell in row.cells:
+            cells.setdefault(cell, row.line_case)
     if not cells:
         yield "  none were read"
-    for cell in cells:
-        yield from _input(cell)
+    for cell, line_case in cells.items():
+        yield from _input(cell, read_as(review.record(cell.field, line_case), cell.field))
 
 
-def _input(cell: CellValue) -> Iterator[str]:
+def _input(cell: CellValue, read: str) -> Iterator[str]:
     label = f"{cell.meaning or cell.field}:"
-    written = f"written {visible_line(shortened(cell.written))!r}, " if cell.written else ""
     yield from wrapped(f"{label:<44} {shortened(cell.shown)}", first="  ", indent="    ")
-    yield from wrapped(f"{cell.field}, {written}{cell.origin}", indent=" " * 6)
+    written = f"written {visible_line(shortened(cell.written))!r}" if cell.written else ""
+    said = (cell.field, written, f"read as {read}" if read else "", cell.origin)
+    yield from wrapped(", ".join(text for text in said if text), indent=" " * 6)
+
+
+def _said_of_cells(review: ReviewLike, line_number: str) -> Iterator[tuple[str, list[str]]]:
+    """Yield what else stands in the cells of a line: two values, open items, and what was refused."""
+    wanted = line_number.strip().casefold()
+
+    def mine(items: Iterable[_Item]) -> list[_Item]:
+        return [item for item in items if item.line_number.casefold() == wanted]
+
+    ranges = [
+        f"{listed_meaning(item.field)}: written {shortened(item.text)!r}, from {shown_value(item.field, item.low)} "
+        f"({si_text((item.low,), item.field)}) to {shown_value(item.field, item.high)} "
+        f"({si_text((item.high,), item.field)}), {item.address}"
+        for item in mine(review.range_items)
+    ]
+    holds = [
+        f"{listed_meaning(item.field)}: written {shortened(item.text)!r}, {item.address}"
+        for item in mine(review.hold_items)
+    ]
+    refused = [f"{item.reason} ({item.address})" for item in mine(review.unread_items)]
+    yield "Cells with two values: each end is a case of its own", _listed(ranges)
+    yield "Open items (HOLD)", _listed(holds)
+    yield "Cells that were refused", _listed(refused)
+
+
+def _listed(sentences: Iterable[str]) -> list[str]:
+    return [line for sentence in sentences for line in wrapped(sentence, first="  ", indent="      ")]
 
 
 def _cases(review: ReviewLike, rows: tuple[OutcomeRow, ...]) -> Iterator[str]:

@@ -7,10 +7,19 @@ import inspect
 import textwrap
 
 from checker.errors import InputError, Problem
-from checker.fields import all_fields
+from checker.fields import Field, all_fields
+from checker.report.field_texts import (
+    all_units,
+    example_header,
+    example_of,
+    shown_unit_of,
+    spellings_text,
+    units_text,
+    words_in,
+)
 from checker.ruling.contract import Rule
 
-__all__ = ["all_rules_text", "fields_text", "one_rule_text"]
+__all__ = ["all_rules_text", "fields_text", "one_field_text", "one_rule_text"]
 
 WIDTH = 100
 
@@ -59,16 +68,72 @@ def one_rule_text(rules: tuple[Rule, ...], rule_id: str) -> str:
     return "\n".join(_paragraph(label, text) for label, text in parts)
 
 
+_GROUPS = {
+    "identity": "What the line is",
+    "duty": "What flows in it; each may name a case (min, norm, max, relief ...) in its header",
+    "route": "Where it runs",
+    "stated": "What the contractor states, to be compared",
+    "limits": "Limits on the row",
+    "suction": "Suction of a pump",
+    "mechanical": "Mechanical design",
+}
+_EVERYWHERE = (
+    "A header may carry its unit in [ ], in ( ), after a comma or after the name; a units row, the cell itself or "
+    "[units] of the criteria may say it too. Letters' case, accents and punctuation do not matter. In every column: "
+    "HOLD, TBC, TBA, VTA and the like are open items; N/A does not apply; a dash or a blank is not given. "
+    "`linelist fields NAME` shows one field in full."
+)
+
+
 def fields_text() -> str:
-    """Return every field: its name, unit, meaning and the header spellings understood."""
-    blocks = []
+    """Return every field by part of the list: meaning, units, an example of a header, and the spellings understood."""
+    blocks: list[str] = []
+    grouped: dict[str, list[Field]] = {}
     for field in all_fields():
-        unit = f" [{field.dimension}, shown in {field.unit}]" if field.dimension else ""
-        case = " May name a case (min, norm, max ...)." if field.per_case else ""
-        spellings = ", ".join(field.spellings) or "its own name only"
-        body = f"{field.meaning[:1].upper()}{field.meaning[1:]}.{case} Headers: {spellings}."
-        blocks.append(f"{field.name}{unit}\n" + textwrap.indent("\n".join(textwrap.wrap(body, WIDTH - 4)), "    "))
-    closing = (
-        "A header may carry its unit in [ ], in ( ) or after the name; letters' case and punctuation do not matter."
-    )
-    return "\n".join([*blocks, "", closing])
+        grouped.setdefault(field.group, []).append(field)
+    for group, fields in grouped.items():
+        title = _GROUPS.get(group, group)
+        blocks += [title, "-" * len(title), *(_field_block(field) for field in fields), ""]
+    return "\n".join([*blocks, *textwrap.wrap(_EVERYWHERE, WIDTH)])
+
+
+def _field_block(field: Field) -> str:
+    units = f" Units: {units_text(field)}." if field.kind != "text" else ""
+    meaning = f"{field.meaning[:1].upper()}{field.meaning[1:]}.{units}"
+    lines = [field.name]
+    lines += textwrap.wrap(meaning, WIDTH, initial_indent="    ", subsequent_indent="    ")
+    headers = f"Headers: {spellings_text(field)}. For example: {example_header(field)}"
+    lines += textwrap.wrap(headers, WIDTH, initial_indent="    ", subsequent_indent="    ", break_on_hyphens=False)
+    return "\n".join(lines)
+
+
+def one_field_text(name: str) -> str:
+    """Return one field in full, with every spelling of every unit and what words stand for in its cells.
+
+    Raises
+    ------
+    InputError
+        If there is no such field.
+    """
+    known = {field.name: field for field in all_fields()}
+    field = known.get(name.strip().casefold().replace(" ", "_").replace("-", "_"))
+    if field is None:
+        close = difflib.get_close_matches(name, list(known), n=3)
+        remedy = f"Did you mean {' or '.join(close)}?" if close else "`linelist fields` lists them."
+        raise InputError(Problem(f"there is no field {name!r}.", "", remedy))
+    units = [", ".join(spellings) for spellings in all_units(field.dimension)] if field.kind == "number" else []
+    parts = [
+        ("field", field.name),
+        ("meaning", field.meaning),
+        ("part", _GROUPS.get(field.group, field.group).partition(";")[0]),
+        ("by case", "yes: a header may name the case" if field.per_case else "no: one value a line"),
+        ("headers", spellings_text(field)),
+        ("example header", example_header(field)),
+        ("example cell", example_of(field)),
+        ("words in cells", words_in(field) or "free text"),
+        ("shown in", shown_unit_of(field) or "-"),
+        ("units", units_text(field) if not units else "one unit a line, with all its spellings:"),
+    ]
+    lines = [_paragraph(label, text) for label, text in parts]
+    lines += [_paragraph("", "plain number" if text == "-" else text) for text in units]
+    return "\n".join(lines)

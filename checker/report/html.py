@@ -7,13 +7,15 @@ from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
 from checker import __version__
+from checker.report.cell_record_text import read_as
 from checker.report.charts import Picture, draw_pictures
 from checker.report.numbers import count, fraction, shown_unit, significant, utilisation
 from checker.report.review_contract import ReviewLike
 from checker.report.safe_text import LONGEST_PROSE, shortened, visible
 from checker.report.states import state_of
 from checker.report.view import build_view
-from checker.report.wording import beyond, fields_in_words, listed_meaning, plural
+from checker.report.wording import beyond, fields_in_words, goes_by_case, listed_meaning, plural
+from checker.shown import shown_value
 
 if TYPE_CHECKING:
     from jinja2 import Environment
@@ -62,6 +64,8 @@ def _environment() -> Environment:
     environment.filters.update(significant=significant, utilisation=utilisation, count=count, fraction=fraction)
     environment.filters.update(drawn=Markup, state=state_of, shown=_in_shown_unit, prose=Prose, plural=plural)
     environment.filters.update(meaning=listed_meaning, fields_in_words=fields_in_words, beyond=beyond)
+    environment.filters.update(read_as=read_as, in_field_unit=lambda value, name: shown_value(name, value))
+    environment.filters.update(by_case=goes_by_case)
     environment.globals["style_sheet"] = lambda name: Markup((TEMPLATES / name).read_text(encoding="utf-8"))
     return environment
 

@@ -5,10 +5,12 @@ from __future__ import annotations
 import json
 import math
 from collections.abc import Iterator
+from dataclasses import asdict
 from pathlib import Path
 from typing import Any
 
 from checker import __version__
+from checker.report.reading_view import reading_of
 from checker.report.review_contract import ReviewLike
 
 __all__ = ["SCHEMA_FILE", "SCHEMA_NAME", "outcomes_json"]
@@ -44,8 +46,27 @@ def _head(review: ReviewLike) -> dict[str, Any]:
         "recommendation_text": review.recommendation_text,
         "reasons": list(review.reasons),
         "coverage": {"checked": _number(review.coverage), "text": review.coverage_text},
-        "counts": {"lines": review.lines_count, "line_cases": review.line_cases, "rules": review.rules_count},
+        "counts": {
+            "lines": review.lines_count,
+            "line_cases": review.line_cases,
+            "rules": review.rules_count,
+            "deleted_lines": len(review.deleted_items),
+        },
         "tally": {word: int(number) for word, number in review.tally.items()},
+        "reading": _reading(review),
+    }
+
+
+def _reading(review: ReviewLike) -> dict[str, Any]:
+    """Return how the list was read: notes, columns, and the lines that are listed but not checked."""
+    return {
+        "notes": list(review.understood),
+        "columns": [asdict(match) for match in reading_of(review).every],
+        "deleted": [
+            {"line_number": item.line_number, "row": item.address.row, "reason": item.reason}
+            for item in review.deleted_items
+        ],
+        "cells_with_two_values": len(review.range_items),
     }
 
 

@@ -1,23 +1,24 @@
-"""The end of a review in the terminal: coverage first, then the recommendation, the worst exceptions, the files."""
+"""The end of a review in the terminal: coverage, how the list was read, recommendation, worst exceptions, files."""
 
 from __future__ import annotations
 
 import math
-import textwrap
 from collections.abc import Iterator
 
 from checker.report.breaches import Breach, breaches_of, counted_both_ways
-from checker.report.numbers import NARROW_SPACE, count, utilisation
+from checker.report.numbers import count, utilisation
+from checker.report.reading_summary import reading_summary
 from checker.report.review_contract import ReviewLike
-from checker.report.safe_text import LONGEST_PROSE, shortened, visible_line
+from checker.report.safe_text import shortened, visible_line
 from checker.report.states import TALLY_ORDER
+from checker.report.text_lines import wrapped
 from checker.report.wording import no_exceptions, plural
 from checker.report.write import WrittenFiles
 
-__all__ = ["WIDTH", "summary", "wrapped"]
+__all__ = ["summary"]
 
-WIDTH = 100
 WORST = 5
+LONGEST_REASON = 160
 
 
 def summary(review: ReviewLike, files: WrittenFiles | None) -> str:
@@ -36,16 +37,10 @@ def summary(review: ReviewLike, files: WrittenFiles | None) -> str:
     return "\n".join(lines)
 
 
-def wrapped(text: str, *, indent: str = "", first: str | None = None) -> list[str]:
-    """Return a text on lines of at most 100 characters, nothing hidden in it."""
-    plain = visible_line(shortened(text, LONGEST_PROSE).replace("\n", " ").replace(NARROW_SPACE, " "))
-    start = indent if first is None else first
-    lines = textwrap.wrap(plain, WIDTH, initial_indent=start, subsequent_indent=indent, break_on_hyphens=False)
-    return lines or [start.rstrip()]
-
-
 def _head(review: ReviewLike) -> Iterator[str]:
     yield from wrapped(review.coverage_text)
+    yield ""
+    yield from reading_summary(review)
     yield from wrapped(review.recommendation_text, first="Recommendation: ", indent="  ")
     for reason in review.reasons:
         yield from wrapped(reason, first="  - ", indent="    ")
@@ -58,6 +53,8 @@ def _counts(review: ReviewLike) -> Iterator[str]:
     extent = ", ".join(
         (plural(review.lines_count, "line"), plural(review.line_cases, "line case"), plural(review.rules_count, "rule"))
     )
+    if review.deleted_items:
+        extent += f" ({plural(len(review.deleted_items), 'deleted line')} aside)"
     outcomes = ", ".join(f"{word} {count(review.tally.get(word, 0))}" for word in TALLY_ORDER)
     yield from wrapped(f"{extent}: {outcomes}", indent="  ")
     yield ""
@@ -82,6 +79,7 @@ def _heading(total: int) -> str:
 def _exception(breach: Breach) -> str:
     row = breach.worst
     against = f"{row.value_shown} against {row.limit_shown}" if row.limit_shown else row.value_shown
+    against = shortened(row.reason, LONGEST_REASON) if row.limit_shown == "yes" else against
     used = "" if math.isnan(row.utilisation) else f"utilisation {utilisation(row.utilisation)}"
     line = f"{shortened(row.line_number)} ({shortened(breach.cases) or 'no case named'})"
     return "; ".join(part for part in (line, row.title, against, used, row.force) if part)

@@ -10,6 +10,7 @@ from checker.model import Source
 from checker.report.breaches import Breach, breaches_of, counted_both_ways
 from checker.report.charts import Picture
 from checker.report.numbers import percentage
+from checker.report.reading_view import Reading, reading_of
 from checker.report.review_contract import ResultLike, ReviewLike
 from checker.report.states import TALLY_ORDER, State, state_of
 from checker.report.wording import no_exceptions
@@ -108,6 +109,7 @@ class View:
 
     review: ReviewLike
     pictures: tuple[Picture, ...]
+    reading: Reading
     sections: tuple[Section, ...]
     bounds: Bounds
     paged: bool
@@ -139,6 +141,7 @@ def build_view(review: ReviewLike, pictures: tuple[Picture, ...], *, paged: bool
     return View(
         review=review,
         pictures=pictures,
+        reading=reading_of(review),
         sections=_sections(review),
         bounds=bounds,
         paged=paged,

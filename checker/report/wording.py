@@ -10,7 +10,7 @@ from checker.report.numbers import count
 from checker.report.review_contract import ReviewLike
 from checker.shown import meaning_of
 
-__all__ = ["beyond", "fields_in_words", "listed_meaning", "no_exceptions", "plural"]
+__all__ = ["beyond", "fields_in_words", "goes_by_case", "listed_meaning", "no_exceptions", "plural"]
 
 _CHECKED = ("meets", "does not meet", "approved deviation")
 # Quoted texts are the list's own and stay as they are.
@@ -59,6 +59,12 @@ def fields_in_words(text: str) -> str:
 def listed_meaning(name: str) -> str:
     """Return what a field of the list means; of a computed one, what that means."""
     return _listed().get(name) or meaning_of(name)
+
+
+@cache
+def goes_by_case(name: str) -> bool:
+    """Return whether a field of the list belongs to a case of its line."""
+    return any(field.name == name and field.per_case for field in all_fields())
 
 
 @cache

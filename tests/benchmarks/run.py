@@ -2,6 +2,7 @@
 
     python tests/benchmarks/run.py              everything
     python tests/benchmarks/run.py --lines 20000 --rounds 3
+    python tests/benchmarks/run.py --only intake
 
 Nothing here is asserted: machines differ, ratios are for people to read.
 """
@@ -18,7 +19,7 @@ from collections.abc import Callable
 from pathlib import Path
 
 import numpy as np
-from large_list import write_large_list
+from large_list import write_large_list, write_large_workbook
 
 ROOT = Path(__file__).parents[2]
 EXAMPLE = ROOT / "example_linelists"
@@ -42,7 +43,7 @@ def in_turn(first: list[str], second: list[str], rounds: int) -> tuple[float, fl
 
 def show(what: str, mine: float, reference: float, ratio: float, aim: str) -> None:
     """Print one comparison."""
-    print(f"{what:<62} {mine:9.3f} s {reference:9.3f} s   ratio {ratio:7.4f}   aim {aim}", flush=True)
+    print(f"{what:<74} {mine:9.3f} s {reference:9.3f} s   ratio {ratio:7.4f}   aim {aim}", flush=True)
 
 
 def bench_long_list(lines: int, rounds: int) -> None:
@@ -56,6 +57,44 @@ def bench_long_list(lines: int, rounds: int) -> None:
             *in_turn([*GATE, str(path), *GIVEN], read, rounds),
             "4, later 2.5",
         )
+
+
+INTAKE = "from pathlib import Path; from checker.intake import read_line_list; read_line_list(Path({path!r}))"
+PEAK = "; import resource; print(resource.getrusage(resource.RUSAGE_SELF).ru_maxrss)"
+CELL_BY_CELL = (
+    "from openpyxl import load_workbook; book = load_workbook({path!r}, read_only=True);"
+    "[[cell.value for cell in row] for row in book.worksheets[0].iter_rows()]"
+)
+
+
+def bench_intake(lines: int, rounds: int) -> None:
+    """Read a long list, nothing else, against a plain read of the same file; and its peak memory against its size."""
+    with tempfile.TemporaryDirectory() as folder:
+        path = Path(folder) / "long.csv"
+        write_large_list(path, lines=lines)
+        mine = [sys.executable, "-c", INTAKE.format(path=str(path))]
+        read = [sys.executable, "-c", f"import pandas; pandas.read_csv({str(path)!r}, dtype=object)"]
+        what = f"intake alone, {lines} lines x 40 columns / pandas.read_csv(dtype=object)"
+        show(what, *in_turn(mine, read, rounds), "2.2")
+        command = [sys.executable, "-c", INTAKE.format(path=str(path)) + PEAK]
+        peak = int(subprocess.run(command, capture_output=True, text=True, check=True).stdout) * 1024
+        size = path.stat().st_size
+        mebi = 2**20
+        print(
+            f"{'peak memory of that process / size of the file':<74} {peak / mebi:7.0f} MiB {size / mebi:7.1f} MiB ",
+            end="",
+        )
+        print(f"ratio {peak / size:7.4f}   aim 12", flush=True)
+
+
+def bench_workbook(rows: int, rounds: int) -> None:
+    """Read a workbook against the library's own read of it, cell by cell."""
+    with tempfile.TemporaryDirectory() as folder:
+        path = Path(folder) / "long.xlsx"
+        write_large_workbook(path, lines=rows)
+        mine = [sys.executable, "-c", INTAKE.format(path=str(path))]
+        read = [sys.executable, "-c", CELL_BY_CELL.format(path=str(path))]
+        show(f"intake of an XLSX of {rows} rows / openpyxl cell by cell", *in_turn(mine, read, rounds), "1.5")
 
 
 def bench_example(rounds: int) -> None:
@@ -98,10 +137,23 @@ def main() -> None:
     parser = argparse.ArgumentParser(description=__doc__, formatter_class=argparse.RawDescriptionHelpFormatter)
     parser.add_argument("--lines", type=int, default=100_000)
     parser.add_argument("--rounds", type=int, default=5)
+    parser.add_argument("--rows", type=int, default=20_000, help="rows of the workbook")
+    parser.add_argument(
+        "--only",
+        choices=("friction", "example", "gate", "intake"),
+        help="one part alone; intake is texts and workbooks",
+    )
     given = parser.parse_args()
-    bench_friction()
-    bench_example(given.rounds)
-    bench_long_list(given.lines, given.rounds)
+    parts: dict[str, Callable[[], None]] = {
+        "friction": bench_friction,
+        "example": lambda: bench_example(given.rounds),
+        "gate": lambda: bench_long_list(given.lines, given.rounds),
+        "intake": lambda: bench_intake(given.lines, given.rounds),
+        "workbook": lambda: bench_workbook(given.rows, given.rounds),
+    }
+    for name, part in parts.items():
+        if given.only in (None, name) or (given.only == "intake" and name == "workbook"):
+            part()
 
 
 if __name__ == "__main__":

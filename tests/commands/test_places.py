@@ -53,7 +53,8 @@ def test_a_filled_template_is_judged(tmp_path: Path) -> None:
         "piping_class": "EXAMPLE-1", "case": "normal", "flow_mass [kg/h]": "100000", "pressure [barg]": "4",
         "pressure_basis": "inlet", "temperature [degC]": "25", "density [kg/m3]": "997", "viscosity [cP]": "0.89",
         "vapour_pressure [bara]": "0.032", "length [m]": "50", "fittings": "2 x elbow 90 LR",
-        "elevation_change [m]": "0", "pressure_drop_allowed [bar]": "1",
+        "elevation_change [m]": "0", "pressure_drop_allowed [bar]": "1", "pressure_design [barg]": "10",
+        "temperature_design [degC]": "60", "temperature_design_minimum [degC]": "-10",
     }  # fmt: skip
     assert set(line) <= set(header)
     path = tmp_path / "filled.csv"

@@ -13,9 +13,12 @@ from checker.ruling.catalogue import load_rules
 from checker.ruling.contract import Source, rule
 
 BUNDLED = (
-    "erosional-velocity", "gas-velocity", "liquid-velocity", "mach-number", "minimum-velocity", "momentum-flux",
-    "npsh-margin", "phase-change", "pressure-budget", "pressure-gradient", "schedule-exists", "stated-values",
-    "steam-velocity", "two-phase-velocity",
+    "aged-hold", "case-order", "composite-case", "erosional-velocity", "gas-density", "gas-velocity",
+    "gauge-absolute", "gauge-absolute-by-velocity", "impossible-value", "liquid-density", "liquid-velocity",
+    "mach-number", "mass-against-volume-flow", "minimum-velocity", "momentum-flux", "nominal-size-basis",
+    "npsh-margin", "phase-change", "pressure-budget", "pressure-gradient", "pressure-rank", "schedule-exists",
+    "standard-taken-for-actual", "standing-hold", "stated-values", "steam-saturation", "steam-velocity",
+    "temperature-rank", "test-pressure-rank", "two-phase-velocity", "viscosity-magnitude", "zero-flow-row",
 )  # fmt: skip
 
 OWN_RULE = '''

@@ -55,6 +55,9 @@ class Line:
     not_set: frozenset[str]
     fittings_n: float
     entrances: int
+    row: dict[str, str]
+    atmosphere: float
+    end: str
     schedule: str
     wall_exists: bool
     bore: float
@@ -106,7 +109,11 @@ def find_service(criteria: dict[str, Any], text: str, nps: float, pressure: floa
 
 
 def number(text: str) -> float:
-    """A cell's number: no flow and atmospheric gauge pressure are zero; an ambient temperature is a range."""
+    """A cell's number: no flow and atmospheric gauge pressure are zero; an ambient temperature is a range.
+
+    Of a design pressure such as 3.5/FV the first is the design pressure; full vacuum is the other side.
+    """
+    text = text.removesuffix("/FV")
     if text in ZERO:
         return 0.0
     return math.nan if text in ("", AMBIENT, *OPEN, *NOT_APPLICABLE) else float(text)
@@ -142,10 +149,23 @@ def wall(classes: list[dict[str, str]], name: str, nps: float) -> tuple[str, boo
     raise KeyError(f"{name} {nps}")
 
 
-def read_line(row: dict[str, str], criteria: dict[str, Any], classes: list[dict[str, str]]) -> Line:
+def ends(row: dict[str, str], criteria: dict[str, Any]) -> list[tuple[str, float]]:
+    """Both ends of the site's ambient range where the temperature says AMB, each a case of its own; else none."""
+    if row["Oper. Temp. [°C]"] != AMBIENT:
+        return [("", math.nan)]
+    site = criteria["site"]
+    pairs = (("low", site["ambient_minimum"]), ("high", site["ambient_maximum"]))
+    return [(f", with {word} temperature", float(text.removesuffix(" degC"))) for word, text in pairs]
+
+
+def read_line(
+    row: dict[str, str], criteria: dict[str, Any], classes: list[dict[str, str]], end: str, ambient: float
+) -> Line:
     atmosphere = quantity(criteria["site"]["atmospheric_pressure"])
     values = {name: number(row[header]) * factor for header, (name, factor) in COLUMNS.items()}
     values["pressure"] += atmosphere
+    if end:
+        values["temperature"] = ambient
     nps = size(row["Size (NPS)"])
     fittings_n, entrances = fittings(row["Fittings"])
     schedule, exists, bore, roughness = wall(classes, row["Piping Class"], nps)
@@ -159,6 +179,9 @@ def read_line(row: dict[str, str], criteria: dict[str, Any], classes: list[dict[
         not_set=frozenset(name for header, (name, _) in COLUMNS.items() if row[header] in NOT_APPLICABLE),
         fittings_n=fittings_n,
         entrances=entrances,
+        row=row,
+        atmosphere=atmosphere,
+        end=end,
         schedule=schedule,
         wall_exists=exists,
         bore=bore,
@@ -168,10 +191,11 @@ def read_line(row: dict[str, str], criteria: dict[str, Any], classes: list[dict[
 
 
 def read(list_path: Path, criteria_path: Path, classes_path: Path) -> tuple[list[Line], float]:
-    """Every line of the list, and the tolerance on stated values."""
+    """Every line of the list (each end of a range as one of its own), and the tolerance on stated values."""
     criteria = tomllib.loads(criteria_path.read_text(encoding="utf-8"))
     with classes_path.open(encoding="utf-8", newline="") as stream:
         classes = list(csv.DictReader(stream))
     with list_path.open(encoding="utf-8", newline="") as stream:
-        lines = [read_line(row, criteria, classes) for row in csv.DictReader(stream)]
+        rows = list(csv.DictReader(stream))
+    lines = [read_line(row, criteria, classes, *end) for row in rows for end in ends(row, criteria)]
     return lines, float(criteria.get("defaults", {}).get("stated_values_tolerance", 0.10))

@@ -66,6 +66,11 @@ COLUMNS: dict[str, tuple[str, float]] = {
     "NPSHr Flow [m³/h]": ("npsh_required_flow", 1 / 3600),
     "Source Press. [bara]": ("source_pressure", 1e5),
     "Static Head [m]": ("static_head", 1.0),
+    "Vol. Flow Norm [m³/h]": ("volume_flow_normal", 1 / 3600),
+    "Design Press. [barg]": ("design_pressure_gauge", 1e5),
+    "Design Temp. [°C]": ("design_temperature", 1.0),
+    "Min. Design Temp. [°C]": ("design_temperature_minimum", 1.0),
+    "Test Press. [barg]": ("test_pressure_gauge", 1e5),
 }
 
 PHASES = {"L": "liquid", "V": "gas", "M": "two-phase"}

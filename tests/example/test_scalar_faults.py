@@ -13,11 +13,12 @@ from pathlib import Path
 import pytest
 import scalar_check
 from scalar_check import CLASSES, CRITERIA, FAILS, LIST, MEETS, NOT_CHECKED, RULES, Key, Outcome
+from scalar_data import DATA_RULES
 from scalar_reading import OPEN
 
 HERE = Path(__file__).parent
-MINIMA = ("minimum-velocity", "npsh-margin")
-OWN_MODULES = {"scalar_check", "scalar_hydraulics", "scalar_reading", "scalar_tables"}
+MINIMA = ("minimum-velocity", "npsh-margin", "test-pressure-rank")
+OWN_MODULES = {"scalar_check", "scalar_data", "scalar_hydraulics", "scalar_reading", "scalar_tables"}
 
 
 @cache
@@ -34,7 +35,8 @@ def test_exactly_the_deliberate_faults_do_not_meet() -> None:
     found = defaultdict(list)
     for (line, case, rule), (outcome, _, _) in outcomes().items():
         if outcome == FAILS:
-            found[line, rule].append(case)
+            name = case.partition(", with ")[0]
+            found[line, rule] += [name] if name not in found[line, rule] else []
     table = rows(HERE / "deliberate_faults.csv")
     deliberate = {(row["line_number"], row["rule"]): row["cases"].split() for row in table}
     assert dict(found) == deliberate
@@ -42,13 +44,15 @@ def test_exactly_the_deliberate_faults_do_not_meet() -> None:
 
 @pytest.mark.parametrize("rule", RULES)
 def test_every_rule_is_met_and_failed_somewhere(rule: str) -> None:
+    """An open item is never met; all of the list is of one revision, so that none is older."""
     seen = {outcome for (_, _, name), (outcome, _, _) in outcomes().items() if name == rule}
-    assert {MEETS, FAILS} <= seen
+    assert {"standing-hold": {FAILS}, "aged-hold": set()}.get(rule, {MEETS, FAILS}) <= seen
 
 
-def test_about_one_line_in_eight_fails_something() -> None:
+def test_about_one_line_in_eight_fails_something_of_its_duty() -> None:
     lines = {line for line, _, _ in outcomes()}
-    failing = {line for (line, _, _), (outcome, _, _) in outcomes().items() if outcome == FAILS}
+    failed = [(line, rule) for (line, _, rule), (outcome, _, _) in outcomes().items() if outcome == FAILS]
+    failing = {line for line, rule in failed if rule not in DATA_RULES}
     assert len(lines) >= 150
     assert 18 <= len(failing) <= 24
 

@@ -69,7 +69,7 @@ def test_no_pressure_is_left_in_no_case(tmp_path: Path) -> None:
 
 
 def test_design_flow_is_a_case_that_is_judged_where_it_is_given(tmp_path: Path) -> None:
-    cells = ["100", "", "N/A", "HOLD", "5-7", "0"]
+    cells = ["100", "", "N/A", "HOLD", "<7", "0"]
     rows = "".join(f"P-{index},90,{cell}\n" for index, cell in enumerate(cells))
     listed = read(tmp_path, "Line No,Flow normal [m3/h],Flow design [m3/h]\n" + rows)
     assert listed.case.texts == ("normal", "design")

@@ -137,3 +137,50 @@ def test_specific_gravity_is_refused_where_the_phase_is_not_liquid(tmp_path: Pat
     assert listed.gap("density").tolist() == [Gap.GIVEN, Gap.REFUSED, Gap.REFUSED]
     assert listed.number("density")[0] == pytest.approx(849.16, rel=1e-4)
     assert "water or on air" in listed.refusals["density", 1]
+
+
+def test_degrees_api_are_understood_but_hold_at_60_degf(tmp_path: Path) -> None:
+    """30 degAPI is 141.5 / 161.5 x 999.016 = 875.3 kg/m3 (API MPMS chapter 11.1), at 60 degF and not where it flows."""
+    for header, cell in (("Density [degAPI]", "30"), ("Density", "30 \u00b0API")):
+        listed = read(tmp_path, f"Line No,Phase,{header},Temp [degC]\nP-1,L,{cell},20\n")
+        assert listed.gap("density")[0] == Gap.REFUSED
+        assert "here 875.3 kg/m3" in listed.refusals["density", 0]
+        record = listed.record("density", 0)
+        assert record is not None
+        assert record.values == (pytest.approx(875.299, abs=1e-3),)
+
+
+@pytest.mark.parametrize(
+    ("header", "name", "cell", "si"),
+    [
+        ("Temperature(oc)", "temperature", "25", 298.15),
+        ("Temperature (\u25e6C)", "temperature", "25", 298.15),
+        ("Temp [\u2103]", "temperature", "25", 298.15),
+        ("Flow [kg_h]", "flow_mass", "3600", 1.0),
+        ("Flow [#/hr]", "flow_mass", "3600", 0.45359237),
+        ("Flow (Kg/ hr)", "flow_mass", "3600", 1.0),
+        ("Flow", "flow_volume", "60000 L minute^-1", 1.0),
+        ("Temp", "temperature", "25 \u00b0\u0421", 298.15),
+        ("Size (inches x 100)", "size", "0600", 6.0),
+    ],
+)
+def test_unit_in_a_spelling_met(tmp_path: Path, header: str, name: str, cell: str, si: float) -> None:
+    assert read(tmp_path, one_column(header, cell)).number(name)[0] == pytest.approx(si, rel=1e-12)
+
+
+@pytest.mark.parametrize(
+    ("header", "name", "words"),
+    [
+        ("Flow (MLB/H)", "flow_mass", "M is a thousand to some"),
+        ("Flow (MSCFD)", "flow_mass", "write MMSCFD or scf/d"),
+        ("Flow (ton/h)", "flow_mass", "907.2 kg"),
+        ("Visc (mPa/s)", "viscosity", "write mPa.s"),
+        ("Vap frac (mol%)", "vapour_fraction", "a mole fraction is not a mass fraction"),
+        ("Press (#)", "pressure", "write psig or psia"),
+    ],
+)
+def test_a_doubtful_unit_is_a_question_about_its_column(tmp_path: Path, header: str, name: str, words: str) -> None:
+    listed = read(tmp_path, one_column(header, "5"))
+    assert listed.gap(name)[0] == Gap.REFUSED
+    assert words in listed.refusals[name, 0]
+    assert [item.address.row for item in listed.unread] == [1]

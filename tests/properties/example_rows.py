@@ -11,6 +11,7 @@ from pathlib import Path
 from typing import Any
 
 import checker
+from checker.model import base_case
 
 EXAMPLE = Path(__file__).parents[2] / "example_linelists"
 LIST = EXAMPLE / "marrowquay_rev_a.csv"
@@ -53,6 +54,21 @@ def outcomes_of(done: Any) -> Outcomes:
         for index, rule in enumerate(done.judgement.rules)
         for case in range(len(labels))
     }
+
+
+_GRAVEST_LAST = ("not applicable", "meets", "approved deviation", "not checked", "does not meet")
+
+
+def by_base_case(outcomes: Outcomes) -> Outcomes:
+    """Return the gravest outcome of the ends of a range together, by the case as the list names it.
+
+    A cell that is no range any more leaves one line case where there were two.
+    """
+    gravest: Outcomes = {}
+    for (line, case, rule), word in outcomes.items():
+        key = (line, base_case(case), rule)
+        gravest[key] = max(word, gravest.get(key, word), key=_GRAVEST_LAST.index)
+    return gravest
 
 
 @cache

@@ -47,7 +47,9 @@ COMMON = {
     "piping_class": "", "case": "minimum", "size": "6", "schedule": "40", "outside_diameter": 168.3,
     "wall_thickness": 7.11, "inside_diameter": 154.08, "material": "carbon steel", "roughness": 0.05, "length": 60,
     "equivalent_length": 75, "fittings": "none", "elevation_change": 1, "pressure_basis": "inlet",
-    "pressure_drop_allowed": 0.4, "sand_rate": 0, "pressure": 8, "temperature": 40,
+    "pressure_drop_allowed": 0.4, "sand_rate": 0, "pressure": 8, "temperature": 40, "fluid": "test fluid",
+    "pressure_design": 14, "temperature_design": 220, "temperature_design_minimum": -10, "pressure_test": 22,
+    "design_code": "ASME B31.3", "test_medium": "water", "revision": "B",
 }  # fmt: skip
 LIQUID = {
     "phase": "liquid", "density": 990, "viscosity": 0.7, "vapour_pressure": 0.07, "npsh_required": 3.0,
@@ -59,13 +61,19 @@ TWO_PHASE = {
     "liquid_viscosity": 0.5, "vapour_density": 8, "vapour_viscosity": 0.012, "surface_tension": 20,
 }  # fmt: skip
 DUTIES = {
-    "CW": LIQUID | {"service": "TEST LIQUID"},
+    "CW": LIQUID | {"service": "TEST LIQUID", "fluid": "cooling water"},
     "SUCTION": LIQUID | {"service": "pump suction"},
     "GAS": GAS | {"service": "TEST GAS"},
-    "STEAM": GAS | {"service": "LP steam", "molar_mass": 18.015, "temperature": 190},
+    "STEAM": GAS | {"service": "LP steam", "fluid": "steam", "molar_mass": 18.015, "temperature": 190},
     "FLARE": GAS | {"service": "flare header", "case": "relief", "pressure": 0.5, "pressure_basis": "outlet"},
     "MIXED": TWO_PHASE | {"service": "two-phase hydrocarbon"},
 }
+# P M / (Z R T) of the duty GAS.
+DENSITY_OF_GAS = 901325 * 0.02801 / (0.99 * 8.314462618 * 313.15)
+# They need two cases of a line, a stated result, or an open item: tests/engine/test_data_rules.py.
+ELSEWHERE = {
+    "stated-values", "composite-case", "case-order", "gauge-absolute-by-velocity", "aged-hold", "standing-hold",
+}  # fmt: skip
 FLOWS = {"CW": 120e3, "SUCTION": 40e3, "GAS": 9e3, "STEAM": 5e3, "FLARE": 9e3, "MIXED": 20e3}
 OVER = {"CW": 3.0, "SUCTION": 6.0, "GAS": 4.0, "STEAM": 5.0, "FLARE": 20.0, "MIXED": 8.0}
 
@@ -98,6 +106,8 @@ def rows() -> list[dict[str, Any]]:
             row |= {"flow_mass": flow}
             if row["phase"] == "liquid":
                 row |= {"flow_volume": flow / float(row["density"])}
+            if name == "GAS":
+                row |= {"flow_volume": flow / DENSITY_OF_GAS}
             # Fittings as an equivalent length or as a cell: two ways of saying one thing, never both here.
             row |= {"fittings": ""} if name in ("CW", "GAS", "FLARE") else {"equivalent_length": ""}
             if name == "CW" and suffix == "B":
@@ -130,7 +140,7 @@ def test_the_list_has_every_rule_judged_and_lines_on_both_sides(folder: Path) ->
     words = base(folder)
     assert {rule for (_, _, rule), word in words.items() if word != "not applicable"} >= {
         rule.id for rule in load_rules(known_fields=known_fields())
-    } - {"stated-values"}
+    } - ELSEWHERE
     assert sum(word == "meets" for word in words.values()) > 25
     assert sum(word == "does not meet" for word in words.values()) > 12
 

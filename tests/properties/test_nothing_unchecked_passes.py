@@ -7,6 +7,7 @@ import random
 import pytest
 from example_rows import (
     Outcomes,
+    by_base_case,
     contradicting_lines,
     copied_rows,
     example_outcomes,
@@ -25,15 +26,17 @@ FILLINGS = ("", "HOLD", "TBC", "-", "abc", "nan", "inf", "1e999", "=1+1", "?")
 
 def newly_met(after: Outcomes, before: Outcomes) -> dict[tuple[str, str, str], str]:
     """Return the outcomes that meet now and did not before, lines that contradict themselves left out."""
+    once = by_base_case(before)
     return {
-        key: before[key]
-        for key, word in after.items()
-        if word == "meets" and before[key] != "meets" and key[0] not in contradicting_lines()
+        key: once[key]
+        for key, word in by_base_case(after).items()
+        if word == "meets" and once[key] != "meets" and key[0] not in contradicting_lines()
     }
 
 
 def test_the_example_has_few_lines_that_contradict_themselves() -> None:
-    assert len(contradicting_lines()) <= 1
+    """Two densities and two volume flows that are not those of their rows (deliberate_faults.csv)."""
+    assert len(contradicting_lines()) <= 4
 
 
 @pytest.mark.parametrize("column", CHANGEABLE, ids=lambda column: HEADER[column])

@@ -10,7 +10,7 @@ from typing import Any
 import numpy as np
 import pandas as pd
 
-from checker.model import Address, HoldItem, Source, UnreadItem
+from checker.model import Address, CellRecord, HeaderMatch, HoldItem, RangeItem, Source, UnreadItem
 from checker.review_model import (
     AssumptionItem,
     Basis,
@@ -117,6 +117,10 @@ class FakeReview:
     not_checked_groups: tuple[NotCheckedGroup, ...] = ()
     hold_items: tuple[HoldItem, ...] = ()
     unread_items: tuple[UnreadItem, ...] = ()
+    deleted_items: tuple[UnreadItem, ...] = ()
+    range_items: tuple[RangeItem, ...] = ()
+    matching: tuple[HeaderMatch, ...] = ()
+    completeness: Any = None
     assumption_items: tuple[AssumptionItem, ...] = ()
     caution_items: tuple[CautionItem, ...] = ()
     rule_summaries: tuple[RuleSummary, ...] = ()
@@ -152,6 +156,9 @@ class FakeReview:
             for case, name in enumerate(("normal", "maximum"))
             for step, outcome in enumerate(outcomes)
         )
+
+    def record(self, field: str, line_case: int) -> CellRecord | None:
+        return CellRecord("81000", (81000.0,), "kg/h", (22.5,)) if field == "flow_mass" else None
 
     def ledger_text(self, line_number: str) -> list[str]:
         return [f"balance of {line_number}", "  pressure   12.41 J/kg   0.1239 bar   1.265 m", "  closing error 2e-9"]
@@ -305,6 +312,21 @@ def make_review(
         + tuple(ServiceMatch(text, "", 1) for text in spare),
         "basis": _basis(),
         "understood": ("Comma-separated, header on row 1, units on row 2.", "Flow min, norm and max make three cases."),
+        "deleted_items": tuple(
+            UnreadItem(text, text, "Row 40: the line is struck through, so it is taken as deleted.", address)
+            for text in spare
+        ),
+        "range_items": tuple(
+            RangeItem(numbers[k % lines], "pressure", text, 4.5e5, 5.5e5, address) for k, text in enumerate(spare)
+        ),
+        "matching": (
+            HeaderMatch(1, "Line No.", "line_number", "", "", ""),
+            HeaderMatch(2, "Flow Max [kg/h]", "flow_mass", "maximum", "kg/h", ""),
+            *(
+                HeaderMatch(k, text, "", "", "", f"no field claims {text!r}; the closest is the field 'schedule'.")
+                for k, text in enumerate(spare[:3], start=3)
+            ),
+        ),
         "columns_matched": (("Flow Max [kg/h]", "flow_mass", "maximum", "kg/h"), (spare[0], "remarks", "", "")),
         "columns_unmatched": ("Heat tracing circuit", spare[1]),
     }

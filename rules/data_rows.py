@@ -1,0 +1,92 @@
+"""Data rules told once a row: open items and their age, impossible values, the basis of a size."""
+
+from __future__ import annotations
+
+import numpy as np
+from numpy.typing import NDArray
+
+from checker.model import Coded
+from checker.ruling.contract import Source, rule
+from checker.ruling.tristate import TriState, all_of
+
+FloatArray = NDArray[np.float64]
+
+
+def _temperatures(*, temperature_stated: TriState, state_told: TriState) -> TriState:
+    return all_of(temperature_stated, state_told)
+
+
+def _on_hold(*, row_on_hold: TriState) -> TriState:
+    return row_on_hold
+
+
+def _on_hold_with_revision(*, hold_with_revision: TriState) -> TriState:
+    return hold_with_revision
+
+
+def _sizes_with_diameter(*, size_told: TriState) -> TriState:
+    return size_told
+
+
+@rule(
+    id="impossible-value",
+    title="Impossible values",
+    force="shall",
+    sense="condition",
+    source=Source("common practice", clause="no line of a line list is above 1 000 degC"),
+    applies=_temperatures,
+    calculation="operating {temperature}, design {temperature_design}; at most 1 000 degC",
+)
+def impossible_value(*, impossible: FloatArray) -> FloatArray:
+    """Contradict where a temperature is above 1 000 degC.
+
+    What cannot be at all (below absolute zero, no pressure, no density, a negative flow) is refused when it is read:
+    this rule then has no value and is `not checked`, with the cell.
+    """
+    return impossible
+
+
+@rule(
+    id="standing-hold",
+    title="Open items of the row",
+    force="should",
+    sense="condition",
+    source=Source("common practice", clause="HOLD, to be confirmed, vendor to advise"),
+    applies=_on_hold,
+    calculation="on HOLD, to be confirmed or left to others: {hold_fields}",
+)
+def standing_hold(*, hold_fields: Coded) -> NDArray[np.bool_]:
+    """Tell every row that the originator has left open in some cell or by its remarks; it cannot be `meets`."""
+    return np.greater_equal(hold_fields.codes, 0)
+
+
+@rule(
+    id="aged-hold",
+    title="Age of open items",
+    force="should",
+    sense="condition",
+    source=Source("common practice", clause="revisions A, B ... before 0, 1 ..."),
+    applies=_on_hold_with_revision,
+    calculation="{hold_fields} on HOLD at revision {revision}; the newest of the list is {newest_revision}",
+)
+def aged_hold(*, hold_older: FloatArray, hold_fields: Coded) -> FloatArray:
+    """Tell every row on HOLD that was last revised before the newest revision of the list; it cannot be `meets`."""
+    return hold_older
+
+
+@rule(
+    id="nominal-size-basis",
+    title="Basis of the nominal size",
+    force="shall",
+    sense="condition",
+    source=Source("ASME B36.10M", "2004", "outside diameter by NPS and DN; within 2 %, common practice"),
+    applies=_sizes_with_diameter,
+    calculation="size {size} beside outside diameter {outside_diameter_listed}: {size_basis_said}",
+)
+def nominal_size_basis(*, size_basis_contradicts: FloatArray, size_basis_said: Coded) -> FloatArray:
+    """Contradict where the outside diameter of the row shows that NPS and DN are mistaken for each other.
+
+    Without an outside diameter a size that stands on both bases cannot be told apart here; the intake refuses columns
+    of mixed bases.
+    """
+    return size_basis_contradicts

@@ -1,0 +1,105 @@
+"""Header rows: one, two or three, groups above or beneath, symbols, units, numberings; what every header became."""
+
+from __future__ import annotations
+
+from pathlib import Path
+
+import pytest
+from lists import read
+
+from checker.errors import InputError
+from checker.intake.layout import find_layout
+
+# Layouts of printed line lists: common practice.
+LAYOUTS = [
+    (
+        [["", "", "Operating", "", "Design", ""], ["Line No", "Size", "Press", "Temp", "Press", "Temp"]],
+        ["Line No", "Size", "Operating Press", "Operating Temp", "Design Press", "Design Temp"],
+        3,
+    ),
+    (
+        [["Line No", "Size", "Operating", "", "Design", ""], ["", "", "Press", "Temp", "Press", "Temp"]],
+        ["Line No", "Size", "Operating Press", "Operating Temp", "Design Press", "Design Temp"],
+        3,
+    ),
+    (
+        # Merged cells come repeated over their columns and rows.
+        [["Line No", "Operating", "Operating", "Remarks"], ["Line No", "Press", "Temp", "Remarks"]],
+        ["Line No", "Operating Press", "Operating Temp", "Remarks"],
+        3,
+    ),
+    (
+        [["Line No", "Press.", "", "Temp.", ""], ["", "Oper", "Design", "Oper", "Design"]],
+        ["Line No", "Oper Press.", "Design Press.", "Oper Temp.", "Design Temp."],
+        3,
+    ),
+    (
+        [["", "", "Design", ""], ["Line No", "Size", "Press", "Temp"]],
+        ["Line No", "Size", "Design Press", "Design Temp"],
+        3,
+    ),
+    (
+        # A group that may change what is meant stays in the header, which then matches nothing.
+        [["Line No", "Upstream", "", "Remarks"], ["", "Press", "Temp", ""]],
+        ["Line No", "Upstream Press", "Upstream Temp", "Remarks"],
+        3,
+    ),
+    (
+        [["Line No", "Mass flow", "Operating pressure"], ["-", "W", "p"], ["-", "kg/s", "bara"], ["(1)", "(2)", "(3)"]],
+        ["Line No", "Mass flow", "Operating pressure"],
+        5,
+    ),
+    ([["Project", "X"], ["Line No", "Size (NPS)", "Flow (kg/h)"]], ["Line No", "Size (NPS)", "Flow (kg/h)"], 3),
+]
+
+
+@pytest.mark.parametrize(("rows", "headers", "first_row"), LAYOUTS)
+def test_header_rows_are_read_together(rows: list[list[str]], headers: list[str], first_row: int) -> None:
+    layout = find_layout([*rows, ["P-1", "6", "5", "20", "10", "60"]], file="list.csv", hints={})
+    assert list(layout.headers) == headers
+    assert layout.first_row == first_row
+
+
+def test_units_row_must_fit_the_headers() -> None:
+    rows = [
+        ["Line No", "Mass flow", "Operating pressure"],
+        ["", "W", "p"],
+        ["", "[kg/s]", "[bar a]"],
+        ["P-1", "1", "2"],
+    ]
+    layout = find_layout(rows, file="list.csv", hints={})
+    assert layout.units == ("", "kg/s", "bar a")
+
+
+def test_transposed_table_is_refused_with_what_to_do() -> None:
+    rows = [["Line No", "P-1", "P-2"], ["Size (NPS)", "6", "4"], ["Flow (kg/h)", "1", "2"], ["Temp (C)", "20", "30"]]
+    with pytest.raises(InputError, match=r"transposed.*Turn it"):
+        find_layout(rows, file="list.csv", hints={})
+
+
+def test_every_header_is_accounted_for(tmp_path: Path) -> None:
+    text = (
+        "Line No,Size,Flow norm,Oper Press (barg),Colour,Opr. Temprature (C),Remarks\n"
+        ",NPS,kg/h,,,,\n"
+        "P-1,6,50000,4,red,20,\n"
+    )
+    listed = read(tmp_path, text)
+    assert [(m.position, m.header, m.field, m.case, m.unit) for m in listed.matching] == [
+        (1, "Line No", "line_number", "", ""),
+        (2, "Size", "size", "", "NPS"),
+        (3, "Flow norm", "flow_mass", "normal", "kg/h"),
+        (4, "Oper Press (barg)", "pressure", "", "barg"),
+        (5, "Colour", "", "", ""),
+        (6, "Opr. Temprature (C)", "", "", ""),
+        (7, "Remarks", "remarks", "", ""),
+    ]
+    assert listed.matching[2].remark == "unit from the units row"
+    assert "closest field is temperature" in listed.matching[5].remark
+    assert [item.text for item in listed.unread] == ["Opr. Temprature (C)"]
+
+
+def test_header_of_two_quantities_is_asked(tmp_path: Path) -> None:
+    listed = read(tmp_path, "Line No,Size (NPS),Flow,Oper Temp (C)\nP-1,6,500,20\n")
+    sentence = next(item.reason for item in listed.unread if item.text == "Flow")
+    for words in ("no unit", "mass flow", "volume flow", "name its field in [columns]"):
+        assert words in sentence

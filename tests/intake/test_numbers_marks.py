@@ -1,0 +1,105 @@
+"""What a comma and a point mean: decided by the cells that leave no choice, asked where none do."""
+
+from __future__ import annotations
+
+import pytest
+from number_columns import assert_refused, assert_values, reading
+
+from checker.intake.decimal_marks import (
+    DECIMAL,
+    THOUSANDS,
+    Evidence,
+    Marks,
+    decide,
+    evidence_of,
+    marks_without_evidence,
+    together,
+)
+
+NOTHING = evidence_of([])
+COLUMNS = [
+    (["10,5", "11,5"], ",", DECIMAL, ""), (["0,83"], ",", DECIMAL, ""), (["12,3456"], ",", DECIMAL, ""),
+    ([",5"], ",", DECIMAL, ""), (["1 234,5"], ",", DECIMAL, ""), (["1.234,5"], ",", DECIMAL, THOUSANDS),
+    (["10,5 barg", "12,5-14,5 barg"], ",", DECIMAL, ""), (["1,234,567"], ",", THOUSANDS, DECIMAL),
+    (["12,345.6"], ",", THOUSANDS, DECIMAL), (["1,87,000"], ",", THOUSANDS, DECIMAL), (["1,234"], ",", "", DECIMAL),
+    (["10,5"], ",", "", DECIMAL), (["10,5"], ";", DECIMAL, ""), (["1,234", "5,678"], ";", "", ""),
+    (["1.234.567"], ";", DECIMAL, THOUSANDS), (["12,5", "12.5"], ";", "", ""), (["10,5", "1,234,567"], ";", "", ""),
+    (["1.234,5", "12.5"], ";", "", ""), (["12.5", "1,234"], ";", "", DECIMAL), (["HOLD", "5-7", "-"], ";", "", ""),
+    (["1,5 2,5"], ",", "", DECIMAL), (["5, 7"], ",", "", DECIMAL),
+]  # fmt: skip
+
+
+@pytest.mark.parametrize(("texts", "delimiter", "comma", "point"), COLUMNS)
+def test_a_column_decides_for_itself(texts: list[str], delimiter: str, comma: str, point: str) -> None:
+    mine = evidence_of(texts)
+    assert decide(mine, mine, comma=delimiter == ";", delimiter=delimiter)[:2] == (comma, point)
+    assert decide(mine, NOTHING, comma=delimiter == ";", delimiter=delimiter)[:2] == (comma, point)
+
+
+def test_the_list_decides_where_the_column_does_not() -> None:
+    decimal, thousands = evidence_of(["10,5", "0,83"]), evidence_of(["1,234,567"])
+    assert decide(NOTHING, decimal, comma=True, delimiter=";").comma == DECIMAL
+    assert decide(NOTHING, thousands, comma=False, delimiter=",").comma == THOUSANDS
+    assert decide(thousands, decimal, comma=True, delimiter=";")[:2] == (THOUSANDS, DECIMAL)
+    assert decide(NOTHING, together([decimal, thousands]), comma=True, delimiter=";")[:2] == ("", "")
+    assert decide(evidence_of(["12.5"]), decimal, comma=False, delimiter=",")[:2] == ("", DECIMAL)
+    assert decide(evidence_of(["10,5"]), evidence_of(["10,5", "3,2"]), comma=False, delimiter=",").comma == DECIMAL
+
+
+def test_the_decision_is_told_with_a_cell_that_shows_it() -> None:
+    assert decide(evidence_of(["0,83"]), NOTHING, comma=False, delimiter=",").note == (
+        "a comma is the decimal mark, as '0,83' shows."
+    )
+    assert "as '1,234,567' shows" in decide(NOTHING, evidence_of(["1,234,567"]), comma=False, delimiter=",").note
+    assert "two ways" in decide(evidence_of(["0,83", "1,234,567"]), NOTHING, comma=False, delimiter=",").note
+    assert decide(NOTHING, NOTHING, comma=False, delimiter=",").note == ""
+    assert decide(evidence_of(["0,83"]), NOTHING, comma=True, delimiter=";").note == ""
+
+
+def test_evidence_is_bounded_and_keeps_two_examples() -> None:
+    found = evidence_of([f"{number},5" for number in range(20_000)])
+    assert found.cells == {("comma", DECIMAL): ("0,5", "1,5")}
+    assert together([found, found]) == found
+    assert together([]) == Evidence({}, frozenset())
+    assert evidence_of(["," * 30_000, "9" * 30_000 + ",5"]).certain <= {("comma", DECIMAL)}
+
+
+CELLS = [
+    ("1,234", Marks(DECIMAL, ""), 1.234), ("1,234", Marks(THOUSANDS), 1234.0), ("12.345", Marks(DECIMAL, THOUSANDS), 12345.0),
+    ("12.345", Marks("", DECIMAL), 12.345), ("10,5", Marks(DECIMAL, ""), 10.5), ("1.234,5", Marks(DECIMAL, ""), 1234.5),
+    ("12,345-13,456", Marks(THOUSANDS), None), ("1.234.567", Marks(DECIMAL, ""), 1234567.0), ("1.5", Marks(DECIMAL, ""), 1.5),
+    ("0,500", Marks(DECIMAL, ""), 0.5), ("1 234,567", Marks(DECIMAL, ""), 1234.567), ("1,5E+3", Marks(DECIMAL, ""), 1500.0),
+    ("2,98x10-6", Marks(DECIMAL, ""), 2.98e-6), ("0.123", Marks(DECIMAL, ""), 0.123), ("1234.567", Marks(DECIMAL, ""), 1234.567),
+]  # fmt: skip
+
+
+@pytest.mark.parametrize(("cell", "marks", "number"), CELLS)
+def test_marks_read_a_cell(cell: str, marks: Marks, number: float | None) -> None:
+    found = reading("elevation", cell, marks=marks)
+    if number is None:
+        assert_values(found, 12345.0, 13456.0)
+    else:
+        assert_values(found, number)
+
+
+ASKED = [
+    ("1,234", Marks(), ",", "reads as 1.234 or as 1234"), ("1,234", Marks("", ""), ";", "reads as 1.234 or as 1234"),
+    ("100.000", Marks(DECIMAL, ""), ";", "reads as 100.000 or as 100000"), ("10,5", Marks(), ",", "write 10.5 if that"),
+    ("10,5", Marks(THOUSANDS), ";", "decimal comma where commas part thousands"), ("1,2,3", Marks(DECIMAL), ";", "not one"),
+    ("1.2.3", Marks(DECIMAL, ""), ";", "not one number"), ("10,5-11,5", Marks(), ",", "decimal comma"),
+    ("-1,234", Marks(), ",", "reads as"),
+]  # fmt: skip
+
+
+@pytest.mark.parametrize(("cell", "marks", "delimiter", "words"), ASKED)
+def test_doubtful_mark_is_asked_about(cell: str, marks: Marks, delimiter: str, words: str) -> None:
+    assert_refused(reading("elevation", cell, marks=marks, delimiter=delimiter), cell, words)
+
+
+def test_without_evidence_only_clear_cells_are_read() -> None:
+    assert marks_without_evidence(comma=True) == Marks("", "")
+    assert marks_without_evidence(comma=False) == Marks("", DECIMAL)
+    assert_values(reading("elevation", "10,5", delimiter=";", comma=True), 10.5)
+    assert_values(reading("elevation", "1.5", delimiter=";", comma=True), 1.5)
+    for cell in ("1,234", "1.234"):
+        assert_refused(reading("elevation", cell, delimiter=";", comma=True), cell, "reads as")
