@@ -94,6 +94,9 @@ _COMPUTED: dict[str, tuple[str, str, str]] = {
     "density_of_liquid": ("density", "kg/m3", "density of the liquid"),
     "viscosity_judged": ("viscosity", "cP", "viscosity, of two phases the one that is not usual"),
     "hold_fields": ("", "", "the fields on HOLD"),
+    "line_number_text": ("", "", "the line number"),
+    "look_alike_said": ("", "", "which number it looks like"),
+    "number_mismatch_said": ("", "", "where number and columns differ"),
     "newest_revision": ("", "", "the newest revision"),
     **dict.fromkeys(
         (

@@ -17,6 +17,7 @@ class Needs(NamedTuple):
 _FLOWS = ("flow_mass", "flow_volume", "flow_standard")
 _GAS = ("density", "pressure", "temperature", "molar_mass", "compressibility")
 DATA_NEEDS: dict[str, Needs] = {
+    "line_number_stated": Needs((), "the line has no number yet"),
     "phase_said": Needs(("phase",)),
     "water": Needs(("fluid", "service")),
     "pressure_rank_broken": Needs(("pressure_design", "pressure")),

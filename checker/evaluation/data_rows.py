@@ -10,9 +10,10 @@ from numpy.typing import NDArray
 
 from checker.evaluation.contradictions import above, asked, contradiction, said
 from checker.evaluation.provider import provider
+from checker.intake.placeholders import placeholder
 from checker.model import Coded
 from checker.pipe.sizes import look_up
-from checker.ruling.tristate import YES, all_of
+from checker.ruling.tristate import UNKNOWN, YES, all_of
 from checker.tables.reading import read_table
 
 __all__ = ["PROVIDERS", "revision_rank"]
@@ -40,6 +41,15 @@ def revision_rank(text: str) -> float:
         first = ord(word[0]) - ord("A") + 1
         return float(first if len(word) == 1 else 26 * first + ord(word[1]) - ord("A") + 1)
     return _NUMBERS_FOLLOW_LETTERS + int(word) if _NUMBER.fullmatch(word) else float("nan")
+
+
+def line_number_stated(*, line_number_text: Coded) -> CodeArray:
+    """Return 1 where a line has a number, -1 where its cell says that there is none yet."""
+    open_ones = [
+        not any(map(str.isdigit, text)) and bool(placeholder(text, "line_number")) for text in line_number_text.texts
+    ]
+    table = np.array([*(UNKNOWN if each else YES for each in open_ones), UNKNOWN], dtype=np.int8)
+    return table[line_number_text.codes]
 
 
 def row_holds(*, hold_fields: Coded, first_of_row: CodeArray) -> Named:
@@ -141,6 +151,7 @@ def size_basis(
 
 
 PROVIDERS = (
+    provider(line_number_stated),
     provider(row_holds, "row_on_hold"),
     provider(aged_hold, "hold_with_revision", "hold_older", "newest_revision"),
     provider(impossible_value, "temperature_stated", "impossible"),

@@ -201,8 +201,7 @@ def doubled_line_number(
     group = line_group.astype(np.int64) * (len(names) + 1) + mine
     _, group_of_row = np.unique(group[first], return_inverse=True)
     told_by = np.column_stack((_codes_of_text(from_listed), _codes_of_text(to_listed), _codes_of_size(size_listed)))
-    of_rows = doubled_rows(group_of_row.ravel().astype(np.int32), told_by[first])
-    doubled = of_rows[row_of.ravel()]
+    doubled[:] = doubled_rows(group_of_row.ravel().astype(np.int32), told_by[first])[row_of.ravel()]
     return doubled
 
 

@@ -9,6 +9,7 @@ import numpy as np
 from checker.evaluation.data_reasons import BY_PHASE, DATA_NEEDS
 from checker.evaluation.dependencies import direct
 from checker.evaluation.identity import LEAST_LIQUID_DENSITY
+from checker.evaluation.line_number_state import why_not_compared
 from checker.evaluation.values import Values
 from checker.fields import Field, field_named
 from checker.fluid.gas_density import GREATEST_GAS_DENSITY
@@ -291,6 +292,11 @@ def _sand(values: Values, line_case: int) -> Reason:
     return gap_sentence(values, "sand_rate", line_case)
 
 
+def _number_against_columns(values: Values, line_case: int) -> Reason:
+    sentence, field = why_not_compared(values, line_case)
+    return gap_sentence(values, field, line_case) if field else sentence
+
+
 _SPECIAL: dict[str, Special] = {
     "flow_mass": _flow,
     "density_stated": _density,
@@ -314,6 +320,8 @@ _SPECIAL: dict[str, Special] = {
     "npsh_required_at_flow": _npsh_at_flow,
     "stated_difference": _stated,
     "case_kind": _case,
+    "number_against_columns": _number_against_columns,
+    "number_pattern_known": _number_against_columns,
     "velocity_at_minimum": _at_minimum,
     "sand_free": _sand,
 }

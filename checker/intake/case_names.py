@@ -12,13 +12,17 @@ from checker.model import CaseKind
 __all__ = ["canonical_case", "case_kind", "split_case", "split_mechanical_case"]
 
 _SPELLINGS = {
-    "minimum": "min; minimum; mini; turndown; turn down",
-    "normal": "norm; normal; nor; nrm",
-    "maximum": "max; maximum; maxi; peak",
+    "minimum": "min; minimum; mini; minimal; minimale; minimo; minima; minimaux; turndown; turn down; мин; минимальный; "
+    "минимальная; минимальное; 最小; 最低",
+    "normal": "norm; normal; nor; nrm; nom normal; normale; normaux; нормальный; нормальная; нормальное; 正常",
+    "maximum": "max; maximum; maxi; maximal; maximale; maximo; maxima; massimo; massima; maximaux; peak; макс; "
+    "максимальный; максимальная; максимальное; 最大; 最高",
     "rated": "rated",
     "relief": "relief; relieving; psv",
-    "start-up": "start up; startup",
-    "shut-down": "shut down; shutdown",
+    "start-up": "start up; startup; demarrage; anfahren; arranque; partida; avviamento; oppstart",
+    "shut-down": "shut down; shutdown; arret; abfahren; parada",
+    "shut-in": "shut in; shutin; closed in",
+    "settle-out": "settle out; settling out; settleout",
     "blowdown": "blow down; blowdown",
     "depressuring": "depressuring; depressurising; depressurizing; depressurisation; depressurization",
     "steam-out": "steam out; steamout; steaming out",
@@ -28,8 +32,8 @@ _SPELLINGS = {
     "pigging": "pigging",
     "loading": "loading; ship loading",
     "recirculation": "recirculation; recirc",
-    "winter": "winter",
-    "summer": "summer",
+    "winter": "winter; hiver; invierno; inverno",
+    "summer": "summer; ete; sommer; verano; verao; estate",
     "upset": "upset",
     "alternate": "alternate; alternative; alt",
     "start of run": "start of run; sor",
@@ -41,9 +45,21 @@ _INTERMITTENT = re.compile(
     r"relie(f|ving)|\bpsv\b|start-? ?up|shut-? ?down|blow-? ?down|depress|steam(ing)?-? ?out|regen|dry-? ?out|"
     r"emergency|pigging|flush|purg(e|ing)|upset|commissioning|drain(ing)?\b|evacuation|\bintermittent"
 )
-_MECHANICAL = re.compile(r"(mechanical|mech)( design)?|design|hydro ?test|hydrostatic test|pressure test|test")
-_NO_FLOW = re.compile(r"(normally )?no ?(normal )?flow|zero flow|nnf|no flow normally")
-_MECHANICAL_WORDS = frozenset({"design", "mechanical", "mech", "mechanical design", "test", "hydrotest", "hydro test"})
+_MECHANICAL = re.compile(
+    r"(mechanical|mech)( design)?|design|hydro ?test|hydrostatic test|pressure test|test|leak ?test|pneumatic test|"
+    r"(full )?vacuum"
+)
+_NO_FLOW = re.compile(
+    r"(normally )?(no|nil) ?(normal )?flow|zero flow|n ?n ?f|(no|nil) flow normally|normally (nil|no)|no flow nnf|"
+    r"shut ?in|settle ?out|stagnant|normally closed"
+)
+_MECHANICAL_WORDS = {
+    "design": "design", "mechanical": "mechanical", "mech": "mech", "mechanical design": "mechanical design",
+    "test": "test", "hydrotest": "hydrotest", "hydro test": "hydro test", "auslegung": "design", "diseno": "design",
+    "projeto": "design", "progetto": "design", "de conception": "design", "conception": "design", "calcul": "design",
+    "de calcul": "design", "de diseno": "design", "de projeto": "design", "di progetto": "design", "расчетный": "design",
+    "设计": "design", "設計": "design",
+}  # fmt: skip
 _CASE_WORD = re.compile(r" case$|^case (?=[a-z]{2})")
 _MARKS = {"%": "percentsign", "+": "plussign", "-": "minussign"}
 _NUMBERED = re.compile(r"(design|case|alternate|alt|alternative|relief) ([0-9]{1,3}|[a-z])")
@@ -92,8 +108,7 @@ def _case_of_words(words: str) -> str:
 
 
 def _mechanical_of_words(words: str) -> str:
-    name = _CASE_WORD.sub("", words)
-    return name if name in _MECHANICAL_WORDS else ""
+    return _MECHANICAL_WORDS.get(_CASE_WORD.sub("", words), "")
 
 
 def _splits(words: str, case_of: Callable[[str], str]) -> list[tuple[str, str]]:

@@ -3,12 +3,12 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Iterator
 from dataclasses import dataclass
 from functools import cache, lru_cache
 
 from checker.fields import Field, all_fields
 from checker.intake.case_names import split_case, split_mechanical_case
+from checker.intake.header_splits import Split, splits, without_marks
 from checker.intake.planned import FLOWS
 from checker.intake.texts import fold_words, key_of
 from checker.intake.unit_words import is_unit_text, size_basis, unit_or_refusal
@@ -16,12 +16,24 @@ from checker.intake.unit_words import is_unit_text, size_basis, unit_or_refusal
 __all__ = ["HeaderReading", "read_header", "says_reid", "unit_in_header", "unit_of_name", "units_in_header"]
 
 LONGEST_HEADER = 120
-_IMPLIED = {"nps": "NPS", "dn": "DN", "sg": "SG", "spgr": "SG", "specificgravity": "SG"}
-_OPENING, _CLOSING = "[(", "])"
-_NOTE = re.compile(r"(see )?notes?\b.*|[0-9*]{0,2}|refer .*")
+MOST_LANGUAGES = 3
+_IMPLIED = {
+    "nps": "NPS", "dn": "DN", "nd": "DN", "nb": "DN", "sg": "SG", "spgr": "SG", "spgravity": "SG", "specgravity": "SG",
+    "specgrav": "SG", "specificgravity": "SG", "ду": "DN",
+}  # fmt: skip
+_SHORT_FORMS = {
+    "mop": "max operating pressure",
+    "pmo": "max operating pressure",
+    "mot": "max operating temperature",
+    "nop": "normal operating pressure",
+}
 _REID = re.compile(r"\b(?:reid|rvp|rvpe|r v p)\b")
-_LONGEST_UNIT_WORDS = 4
-_MOST_WORDS = 14
+_CAMEL = re.compile(r"(?<=[a-z])(?=[A-Z])")
+_BETWEEN_LANGUAGES = re.compile(r"\s*[/|\r\n\u2028]+\s*|\s+[-\u2013\u2014]\s+")
+_LOST_DEGREE = re.compile(r"(temp|temperature|t)[\s.]*0 ?([cf])", re.IGNORECASE)
+_HARMLESS = frozenset(
+    {"line", "calc", "calculated", "est", "estimated", "operating", "oper", "op", "flowing", "actual", "rev", "new"}
+)
 
 
 @dataclass(frozen=True, slots=True)
@@ -31,7 +43,7 @@ class HeaderReading:
     Attributes
     ----------
     fields : tuple of Field
-        Fields it may carry, more than one where only the unit can tell (a bare ``Flow``).
+        Fields it may carry, more than one where only the unit can tell (a bare ``Flow``, ``DP``).
     unit : str
         Unit as written, empty where the header names none.
     case : str
@@ -43,13 +55,6 @@ class HeaderReading:
     case: str
 
 
-@dataclass(frozen=True, slots=True)
-class _Split:
-    name: str
-    unit: str
-    bracketed: bool
-
-
 @cache
 def _spellings() -> dict[str, tuple[Field, ...]]:
     found: dict[str, tuple[Field, ...]] = {}
@@ -57,63 +62,6 @@ def _spellings() -> dict[str, tuple[Field, ...]]:
         for key in dict.fromkeys(key_of(text) for text in (field.name, *field.spellings)):
             found[key] = (*found.get(key, ()), field)
     return found
-
-
-def _brackets(header: str) -> tuple[str, list[tuple[str, str]]]:
-    """Return the text outside brackets, and each outermost bracket's sign and content."""
-    outside, contents, depth, start = "", [], 0, 0
-    for position, character in enumerate(header):
-        if character in _OPENING:
-            start = position if depth == 0 else start
-            depth += 1
-        elif character in _CLOSING and depth:
-            depth -= 1
-            if depth == 0:
-                contents.append((header[start], header[start + 1 : position]))
-                outside += " "
-        elif depth == 0:
-            outside += character
-    return outside, contents
-
-
-def _bracket_splits(header: str) -> Iterator[_Split]:
-    outside, contents = _brackets(header)
-    contents = [(sign, text.strip()) for sign, text in contents]
-    contents = [(sign, text) for sign, text in contents if not _NOTE.fullmatch(fold_words(text)) or is_unit_text(text)]
-    units = [text for sign, text in contents if is_unit_text(text)] or [text for sign, text in contents if sign == "["]
-    words = [text for sign, text in contents if text not in units]
-    unit = units[0] if units else ""
-    yield _Split(" ".join([outside, *words, *units[1:]]), unit, True)
-    yield _Split(outside, unit or next(iter(words), ""), True)
-
-
-def _signs(header: str) -> Iterator[_Split]:
-    """Yield the splits at units that are mere signs (``%``, an inch mark), which folding would drop unseen."""
-    words = header.split()
-    for position, word in enumerate(words[1:], start=1):
-        if word[0] not in _OPENING and not fold_words(word) and is_unit_text(word):
-            yield _Split(" ".join(words[:position] + words[position + 1 :]), word, False)
-
-
-def _splits(header: str) -> Iterator[_Split]:
-    """Yield every way to part a header into its name and its unit, the likeliest first."""
-    _, contents = _brackets(header)
-    yield from _signs(header)
-    if not any(sign == "[" or is_unit_text(text) for sign, text in contents):
-        yield _Split(header, "", False)
-    if contents:
-        yield from _bracket_splits(header)
-    if "," in header:
-        name, _, unit = header.rpartition(",")
-        yield _Split(name, unit.strip(), True)
-    words = header.split()
-    if len(words) > _MOST_WORDS:
-        return
-    for count in range(1, _LONGEST_UNIT_WORDS + 1):
-        for start in range(len(words) - count, 0, -1):
-            unit = " ".join(words[start : start + count]).strip(",;:")
-            if is_unit_text(unit):
-                yield _Split(" ".join(words[:start] + words[start + count :]), unit, False)
 
 
 def _has_cases(field: Field) -> bool:
@@ -125,9 +73,9 @@ def says_reid(header: str) -> bool:
     return _REID.search(fold_words(header)) is not None
 
 
-def _named(name: str) -> tuple[tuple[Field, ...], str]:
-    """Return the fields and the case that the words of a header name."""
-    words = fold_words(name)
+def _of_words(words: str) -> tuple[tuple[Field, ...], str]:
+    """Return the fields and the case that folded words name; the whole is looked up before a case is split off."""
+    words = _SHORT_FORMS.get(words.replace(" ", ""), words)
     fields = _spellings().get(words.replace(" ", ""), ())
     if fields or not words:
         return fields, ""
@@ -140,6 +88,25 @@ def _named(name: str) -> tuple[tuple[Field, ...], str]:
         if fields:
             return fields, case
     return (), ""
+
+
+def _of_languages(name: str) -> tuple[tuple[Field, ...], str]:
+    """Return what a name says that stands in two languages (``Press. / Druck``): what both of them name."""
+    parts = [part for part in _BETWEEN_LANGUAGES.split(name) if part.strip()]
+    if not 2 <= len(parts) <= MOST_LANGUAGES:
+        return (), ""
+    readings = [_of_words(fold_words(part)) for part in parts]
+    fields = tuple(field for field in readings[0][0] if all(field in others for others, _ in readings[1:]))
+    cases = {case for _, case in readings if case}
+    return (fields, next(iter(cases), "")) if len(cases) <= 1 else ((), "")
+
+
+def _named(name: str) -> tuple[tuple[Field, ...], str]:
+    """Return the fields and the case that a name means: as it stands, with CamelCase parted, or in two languages."""
+    named = _of_words(fold_words(name))
+    if not named[0] and _CAMEL.search(name):
+        named = _of_words(fold_words(_CAMEL.sub(" ", name)))
+    return named if named[0] else _of_languages(name)
 
 
 def _per_length(name: str, unit: str, field: Field) -> str:
@@ -162,15 +129,34 @@ def _fits(field: Field, unit: str) -> bool:
     return not isinstance(reading, str) or "gauge or absolute" in reading
 
 
-def _understood(split: _Split) -> HeaderReading | None:
+def _leaves_out_meaning(split: Split, fields: tuple[Field, ...]) -> bool:
+    """Return whether bracketed words that a split leaves out may change what the rest means (``(shut-off)``)."""
+    if all(field.kind == "text" for field in fields):
+        return False
+    return not all(
+        fold_words(words) in _HARMLESS or is_unit_text(words) or set(fields) & set(_named(words)[0])
+        for words in split.dropped
+    )
+
+
+def _understood(split: Split) -> HeaderReading | None:
     fields, case = _named(split.name)
+    if not fields or _leaves_out_meaning(split, fields):
+        return None
     unit = split.unit or _IMPLIED.get(key_of(split.name), "")
+    mine = {field.name: _per_length(split.name, unit, field) for field in fields}
     for field in fields:
-        mine = _per_length(split.name, unit, field)
-        if mine and _fits(field, mine):
-            return HeaderReading((field,), mine, case)
+        if mine[field.name] != unit and _fits(field, mine[field.name]):
+            return HeaderReading((field,), mine[field.name], case)
     fitting = tuple(field for field in fields if _fits(field, unit))
     return HeaderReading(fitting, unit, case) if fitting else None
+
+
+def _with_percent(reading: HeaderReading, header: str) -> HeaderReading:
+    """Return a fraction's reading with the percent sign that is glued to a word of its header."""
+    if "%" not in header or "%" in reading.unit or reading.fields[0].dimension != "fraction":
+        return reading
+    return HeaderReading(reading.fields, "%", reading.case)
 
 
 @lru_cache(maxsize=8192)
@@ -179,19 +165,24 @@ def read_header(header: str) -> HeaderReading | None:
 
     A name is matched whole before a case word is split off it, so that ``Min. Design Temp`` stays one field. A unit in
     brackets that no field of that name can have is kept as written: its column is refused, not guessed. A header that
-    says Reid is claimed by no field.
+    says Reid is claimed by no field, nor is one whose bracketed words are not understood.
     """
-    if not header.strip() or len(header) > LONGEST_HEADER or says_reid(header):
+    stripped = header.strip()
+    if not stripped or len(header) > LONGEST_HEADER or says_reid(header) or stripped in ("a", "A"):
         return None
+    header = without_marks(header)
     doubtful: HeaderReading | None = None
-    for split in _splits(header):
+    for split in splits(header):
         reading = _understood(split)
         if reading is not None:
-            return reading
+            return _with_percent(reading, header)
         fields, case = _named(split.name) if split.bracketed else ((), "")
-        if fields and doubtful is None:
+        if fields and doubtful is None and not _leaves_out_meaning(split, fields):
             texts = all(field.kind == "text" for field in fields)
             doubtful = HeaderReading(fields, "" if texts else split.unit, case)
+    lost = _LOST_DEGREE.fullmatch(header.strip())
+    if doubtful is None and lost:
+        return HeaderReading(_spellings()["temperature"], f"0{lost[2]}", "")
     return doubtful
 
 
@@ -199,9 +190,9 @@ def unit_in_header(header: str, field: Field) -> str:
     """Return the unit that a header names for a field which the criteria give it, else an empty text."""
     if len(header) > LONGEST_HEADER:
         return ""
-    units = [split.unit for split in _splits(header) if split.unit]
+    units = [split.unit for split in splits(header) if split.unit]
     fitting = [unit for unit in units if _fits(field, unit)]
-    bracketed = [split.unit for split in _splits(header) if split.unit and split.bracketed]
+    bracketed = [split.unit for split in splits(header) if split.unit and split.bracketed]
     return next(iter(fitting or bracketed), "")
 
 
@@ -214,4 +205,4 @@ def units_in_header(header: str, *, bracketed: bool = False) -> list[str]:
     """Return every text of a header that may be its unit, the likeliest first; only those in brackets if asked."""
     if len(header) > LONGEST_HEADER:
         return []
-    return [split.unit for split in _splits(header) if split.unit and (split.bracketed or not bracketed)]
+    return [split.unit for split in splits(header) if split.unit and (split.bracketed or not bracketed)]

@@ -130,7 +130,8 @@ def _with_group_above(
     joined = join_rows(rows[index - 1], headers, hints)
     keeps_line_number = any(_line_number_header(cell, hints) for cell in joined)
     as_many = count_understood(joined, hints) >= count_understood(headers, hints)
-    return joined if as_many and keeps_line_number and means_another(joined, headers, hints) else None
+    groups = means_another(joined, headers, hints) or any(_line_number_header(cell, hints) for cell in rows[index - 1])
+    return joined if as_many and keeps_line_number and groups else None
 
 
 def _no_number(row: Sequence[str], headers: Sequence[str], line_column: int) -> bool:

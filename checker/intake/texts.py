@@ -10,11 +10,14 @@ __all__ = ["fold_words", "key_of", "place", "shown", "tidy"]
 LONGEST_SHOWN = 60
 _SIGNS = str.maketrans(
     {
-        "\u0394": "d", "\u2206": "d", "\u03c1": " rho ", "\u00b5": " mu ", "\u03bc": " mu ", "\u03b5": " eps ",
-        "\u03c3": " sigma ", "\u03b3": " gamma ", "\u03ba": " kappa ", "#": " no ", "\u00d8": " dia ",
-        "\u00f8": " dia ", "\u2300": " dia ", "_": " ",
+        "\u0394": " delta ", "\u2206": " delta ", "\u03c1": " rho ", "\u00b5": " mu ", "\u03bc": " mu ",
+        "\u03b5": " eps ", "\u03c3": " sigma ", "\u03b3": " gamma ", "\u03ba": " kappa ", "\u03b7": " eta ",
+        "\u03bd": " nu ", "#": " no ", "\u2300": " dia ", "_": " ", "\u00f0": "d", "\u0131": "i", "\u0142": "l",
     }
 )  # fmt: skip
+_SLASHED_O = re.compile(r"(?<![^\W\d_])[\u00d8\u00f8](?![^\W\d_])")
+_SMALL_D = re.compile(r"\bd(?=[PZ]\b)")
+_NOT_ASCII_WORD = re.compile(r"[^a-z0-9]+")
 _TYPOGRAPHIC = str.maketrans(
     {
         "\u2212": "-", "\u2010": "-", "\u2011": "-", "\u2012": "-", "\u2013": "-", "\u2014": "-", "\u2015": "-",
@@ -49,10 +52,19 @@ def tidy(text: str) -> str:
 
 
 def fold_words(text: str) -> str:
-    """Return a header in the form in which headers are compared: lower case, no accents, no punctuation."""
-    folded = unicodedata.normalize("NFKC", text.translate(_SIGNS))
+    """Return a header in the form in which headers are compared: lower case, no accents, no punctuation.
+
+    A Greek delta, and the small d of ``dP`` and ``dZ``, become the word *delta*, which tells a difference from the
+    initials of *design pressure*. A slashed O is a letter inside a word and the sign of a diameter by itself.
+    """
+    if text.isascii():
+        plain = _SMALL_D.sub("delta ", text).replace("#", " no ") if "d" in text or "#" in text else text
+        return _NOT_ASCII_WORD.sub(" ", plain.lower()).strip()
+    folded = _SLASHED_O.sub(" dia ", _SMALL_D.sub("delta ", text)).translate(_SIGNS)
+    folded = folded.replace("\u00d8", "o").replace("\u00f8", "o").replace("\u00e6", "ae").replace("\u00c6", "ae")
+    folded = unicodedata.normalize("NFKC", folded)
     plain = "".join(c for c in unicodedata.normalize("NFKD", folded.casefold()) if not unicodedata.combining(c))
-    return " ".join(re.sub(r"[^\w]+", " ", plain).split())
+    return " ".join(re.sub(r"[\W_]+", " ", plain).split())
 
 
 def key_of(text: str) -> str:

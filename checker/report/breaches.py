@@ -9,7 +9,7 @@ from functools import cache
 from checker.fields import all_fields
 from checker.model import base_case
 from checker.report.wording import plural
-from checker.review_model import OutcomeRow
+from checker.review_model import CellValue, OutcomeRow
 
 __all__ = ["Breach", "breaches_of", "counted_both_ways"]
 
@@ -51,6 +51,10 @@ class Breach:
             next(iter(cases)) if len(cases) == 1 else f"{base} in {len(cases)} combinations of its ranges"
             for base, cases in named.items()
         )
+
+    def own_cells(self, row: OutcomeRow) -> tuple[CellValue, ...]:
+        """Return the numbers of another case that the worst case does not rest on."""
+        return tuple(cell for cell in row.cells if cell not in self.worst.cells)
 
     @property
     def alike(self) -> bool:

@@ -13,12 +13,13 @@ from checker.ruling.catalogue import load_rules
 from checker.ruling.contract import Source, rule
 
 BUNDLED = (
-    "aged-hold", "case-order", "composite-case", "erosional-velocity", "gas-density", "gas-velocity",
-    "gauge-absolute", "gauge-absolute-by-velocity", "impossible-value", "liquid-density", "liquid-velocity",
-    "mach-number", "mass-against-volume-flow", "minimum-velocity", "momentum-flux", "nominal-size-basis",
-    "npsh-margin", "phase-change", "pressure-budget", "pressure-gradient", "pressure-rank", "schedule-exists",
-    "standard-taken-for-actual", "standing-hold", "stated-values", "steam-saturation", "steam-velocity",
-    "temperature-rank", "test-pressure-rank", "two-phase-velocity", "viscosity-magnitude", "zero-flow-row",
+    "aged-hold", "case-order", "composite-case", "doubled-line-number", "erosional-velocity", "gas-density",
+    "gas-velocity", "gauge-absolute", "gauge-absolute-by-velocity", "impossible-value", "liquid-density",
+    "liquid-velocity", "look-alike-number", "mach-number", "mass-against-volume-flow", "minimum-velocity",
+    "momentum-flux", "nominal-size-basis", "npsh-margin", "number-against-columns", "phase-change", "pressure-budget",
+    "pressure-gradient", "pressure-rank", "schedule-exists", "standard-taken-for-actual", "standing-hold",
+    "stated-values", "steam-saturation", "steam-velocity", "temperature-rank", "test-pressure-rank",
+    "two-phase-velocity", "viscosity-magnitude", "zero-flow-row",
 )  # fmt: skip
 
 OWN_RULE = '''

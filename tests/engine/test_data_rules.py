@@ -502,3 +502,70 @@ def test_three_flows_in_any_order_meet_only_where_they_ascend(flows: list[float]
         assert order.found.any()
     assert order.compared.tolist() == [True, False, True]
     assert not order.unknown.any()
+
+
+NUMBERED: Row = {
+    "Line No": "", "Service": "methanol transfer", "Phase": "liquid", "Size (NPS)": 6, "Piping Class": "B1A",
+    "From": "T-1", "To": "P-1", "Flow [kg/h]": 90000,
+}  # fmt: skip
+
+
+def numbered(*changes: Row) -> list[Row]:
+    """Return rows of one pattern of numbers, size-service-sequence-class, each changed in its own way."""
+    plain = [NUMBERED | {"Line No": f"6-ME-{2000 + place}-B1A", "To": f"P-{place}"} for place in range(12)]
+    return [row | change for row, change in zip(plain, [*changes, *({} for _ in plain)], strict=False)]
+
+
+def test_one_number_on_several_rows_is_a_line_twice_unless_they_are_segments_or_cases(tmp_path: Path) -> None:
+    twin = {"Line No": "6-ME-2000-B1A", "To": "P-0"}
+    done = reviewed(tmp_path, *numbered({}, twin))
+    assert outcomes(done, "doubled-line-number")[:3] == [FAILS, FAILS, MEETS]
+    frame = done.outcomes
+    mine = frame[frame["rule"] == "doubled-line-number"].iloc[0]
+    assert mine["force"] == "shall"
+    assert "6-ME-2000-B1A stands on more than one row" in mine["reason"]
+    assert set(outcomes(reviewed(tmp_path, *numbered({}, twin | {"To": "P-7"})), "doubled-line-number")) == {MEETS}
+    assert set(outcomes(reviewed(tmp_path, *numbered({}, twin | {"Size (NPS)": 4})), "doubled-line-number")) == {MEETS}
+    cases = [{"Case": "normal"} | row for row in numbered({}, twin)]
+    cases[1] |= {"Case": "maximum"}
+    assert set(outcomes(reviewed(tmp_path, *cases), "doubled-line-number")) == {MEETS}
+
+
+def test_a_line_without_a_number_yet_is_no_twin_and_meets_nothing(tmp_path: Path) -> None:
+    done = reviewed(tmp_path, *numbered({"Line No": "TBA"}, {"Line No": "TBA"}))
+    assert outcomes(done, "doubled-line-number")[:3] == [OPEN, OPEN, MEETS]
+    assert outcomes(done, "look-alike-number")[:3] == [OPEN, OPEN, MEETS]
+
+
+def test_numbers_that_look_alike_are_told_on_both_rows(tmp_path: Path) -> None:
+    done = reviewed(tmp_path, *numbered({"Line No": "6-ME-2OO5-B1A"}))
+    words = outcomes(done, "look-alike-number")
+    assert [place for place, word in enumerate(words) if word == FAILS] == [0, 5]
+    assert words.count(MEETS) == len(words) - 2
+
+
+@pytest.mark.parametrize(
+    ("change", "expected"),
+    [
+        ({}, MEETS),
+        ({"Size (NPS)": 8}, FAILS),
+        ({"Piping Class": "F4A"}, FAILS),
+        ({"Size (NPS)": ""}, OPEN),
+        ({"Piping Class": "HOLD"}, OPEN),
+        ({"Line No": "TEMPORARY-1"}, OPEN),
+    ],
+)
+def test_a_number_says_what_the_columns_say(tmp_path: Path, change: Row, expected: str) -> None:
+    done = reviewed(tmp_path, *numbered(change))
+    words = outcomes(done, "number-against-columns")
+    assert words[0] == expected
+    assert set(words[1:]) == {MEETS}
+    if expected == OPEN:
+        frame = done.outcomes
+        reason = str(frame.loc[frame["rule"] == "number-against-columns", "reason"].iloc[0])
+        assert "size" in reason or "piping_class" in reason or "pattern" in reason
+
+
+def test_numbers_without_a_pattern_have_nothing_to_be_held_against(tmp_path: Path) -> None:
+    rows = [NUMBERED | {"Line No": name} for name in ("north", "south 2", "P/7")]
+    assert MEETS not in outcomes(reviewed(tmp_path, *rows), "number-against-columns")

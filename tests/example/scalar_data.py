@@ -224,6 +224,22 @@ def aged_hold(line: Line) -> Outcome:
     return said(True) if on_hold(line) and line.row["Rev."] != "A" else NONE
 
 
+def doubled_line_number(line: Line) -> Outcome:
+    return said(line.number in line.others)
+
+
+def look_alike_number(line: Line) -> Outcome:
+    """A capital O and a zero, and the like: not the same text, the same looks."""
+    looks = str.maketrans("OIl", "011")
+    return said(line.number.translate(looks) in {other.translate(looks) for other in line.others})
+
+
+def number_against_columns(line: Line) -> Outcome:
+    """Size and class of size-service-sequence-class; the service code repeats no column word by word."""
+    size, _, _, piping_class = line.number.rsplit("-", 3)
+    return said(size != line.row["Size (NPS)"] or piping_class != line.row["Piping Class"])
+
+
 DATA_RULES: dict[str, Callable[[Case], Outcome]] = {
     "pressure-rank": once(pressure_rank),
     "temperature-rank": once(temperature_rank),
@@ -240,4 +256,7 @@ DATA_RULES: dict[str, Callable[[Case], Outcome]] = {
     "zero-flow-row": once_a_row(zero_flow_row),
     "standing-hold": once_a_row(standing_hold),
     "aged-hold": once_a_row(aged_hold),
+    "doubled-line-number": once_a_row(doubled_line_number),
+    "look-alike-number": once_a_row(look_alike_number),
+    "number-against-columns": once_a_row(number_against_columns),
 }

@@ -58,6 +58,7 @@ class Line:
     row: dict[str, str]
     atmosphere: float
     end: str
+    others: tuple[str, ...]
     schedule: str
     wall_exists: bool
     bore: float
@@ -159,7 +160,12 @@ def ends(row: dict[str, str], criteria: dict[str, Any]) -> list[tuple[str, float
 
 
 def read_line(
-    row: dict[str, str], criteria: dict[str, Any], classes: list[dict[str, str]], end: str, ambient: float
+    row: dict[str, str],
+    criteria: dict[str, Any],
+    classes: list[dict[str, str]],
+    others: list[str],
+    end: str,
+    ambient: float,
 ) -> Line:
     atmosphere = quantity(criteria["site"]["atmospheric_pressure"])
     values = {name: number(row[header]) * factor for header, (name, factor) in COLUMNS.items()}
@@ -182,6 +188,7 @@ def read_line(
         row=row,
         atmosphere=atmosphere,
         end=end,
+        others=tuple(others),
         schedule=schedule,
         wall_exists=exists,
         bore=bore,
@@ -197,5 +204,8 @@ def read(list_path: Path, criteria_path: Path, classes_path: Path) -> tuple[list
         classes = list(csv.DictReader(stream))
     with list_path.open(encoding="utf-8", newline="") as stream:
         rows = list(csv.DictReader(stream))
-    lines = [read_line(row, criteria, classes, *end) for row in rows for end in ends(row, criteria)]
+    lines = []
+    for row in rows:
+        others = [other["Line No."] for other in rows if other is not row]
+        lines += [read_line(row, criteria, classes, others, *end) for end in ends(row, criteria)]
     return lines, float(criteria.get("defaults", {}).get("stated_values_tolerance", 0.10))

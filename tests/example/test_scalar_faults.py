@@ -44,9 +44,11 @@ def test_exactly_the_deliberate_faults_do_not_meet() -> None:
 
 @pytest.mark.parametrize("rule", RULES)
 def test_every_rule_is_met_and_failed_somewhere(rule: str) -> None:
-    """An open item is never met; all of the list is of one revision, so that none is older."""
+    """An open item is never met; all of the list is of one revision, and no number stands twice."""
     seen = {outcome for (_, _, name), (outcome, _, _) in outcomes().items() if name == rule}
-    assert {"standing-hold": {FAILS}, "aged-hold": set()}.get(rule, {MEETS, FAILS}) <= seen
+    assert {"standing-hold": {FAILS}, "aged-hold": set(), "doubled-line-number": {MEETS}}.get(
+        rule, {MEETS, FAILS}
+    ) <= seen
 
 
 def test_about_one_line_in_eight_fails_something_of_its_duty() -> None:
@@ -80,12 +82,16 @@ def test_the_list_covers_services_phases_and_open_items() -> None:
 
 
 def test_line_numbers_follow_one_pattern_and_agree_with_their_columns() -> None:
+    """All but the deliberate faults of a number."""
+    table = rows(HERE / "deliberate_faults.csv")
+    wrong = {row["line_number"] for row in table if row["rule"] in ("number-against-columns", "look-alike-number")}
     for row in rows(LIST):
         size, code, number, piping_class = row["Line No."].rsplit("-", 3)
-        assert size == row["Size (NPS)"]
+        if row["Line No."] not in wrong:
+            assert size == row["Size (NPS)"]
+            assert number.isdigit()
         assert piping_class == row["Piping Class"]
         assert code.isupper()
-        assert number.isdigit()
 
 
 @pytest.mark.parametrize("name", sorted(OWN_MODULES))

@@ -265,6 +265,7 @@ def test_no_text_keeps_a_pattern_busy(text: str, tail: str) -> None:
         assert_sound(text * 600 + tail, context)
 
 
+@pytest.mark.slow
 def test_a_hundred_thousand_random_cells() -> None:
     """Every one ends in a value, a gap or a sentence; the seed is fixed, so that each run reads the same cells."""
     chance = random.Random(20_260_103)

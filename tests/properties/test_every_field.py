@@ -70,9 +70,10 @@ DUTIES = {
 }
 # P M / (Z R T) of the duty GAS.
 DENSITY_OF_GAS = 901325 * 0.02801 / (0.99 * 8.314462618 * 313.15)
-# They need two cases of a line, a stated result, or an open item: tests/engine/test_data_rules.py.
+# They need one pattern of numbers, two cases of a line, a stated result or an open item: tests/engine.
 ELSEWHERE = {
-    "stated-values", "composite-case", "case-order", "gauge-absolute-by-velocity", "aged-hold", "standing-hold",
+    "stated-values", "number-against-columns", "composite-case", "case-order", "gauge-absolute-by-velocity",
+    "aged-hold", "standing-hold",
 }  # fmt: skip
 FLOWS = {"CW": 120e3, "SUCTION": 40e3, "GAS": 9e3, "STEAM": 5e3, "FLARE": 9e3, "MIXED": 20e3}
 OVER = {"CW": 3.0, "SUCTION": 6.0, "GAS": 4.0, "STEAM": 5.0, "FLARE": 20.0, "MIXED": 8.0}

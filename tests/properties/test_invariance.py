@@ -31,6 +31,10 @@ SCALINGS = {
 }
 
 
+# They hold a row against the other rows of the list.
+OF_THE_LIST = {"doubled-line-number", "look-alike-number", "number-against-columns", "aged-hold"}
+
+
 def _scaled(cell: str, factor: float, shift: float) -> str:
     first, stroke, vacuum = cell.partition("/FV")
     try:
@@ -83,7 +87,7 @@ def test_one_line_alone_is_the_same_as_among_all(index: int) -> None:
     for name, _, values in among.hydraulics_columns():
         mine = next(column for key, _, column in alone.hydraulics_columns() if key == name)
         assert np.array_equal(mine, values[cases], equal_nan=True), name
-    outcomes: Outcomes = outcomes_of(alone)
+    outcomes: Outcomes = {key: word for key, word in outcomes_of(alone).items() if key[2] not in OF_THE_LIST}
     assert outcomes == {key: example_outcomes()[key] for key in outcomes}
 
 
