@@ -12,9 +12,9 @@ from checker.model import CaseKind
 __all__ = ["canonical_case", "case_kind", "split_case", "split_mechanical_case"]
 
 _SPELLINGS = {
-    "minimum": "min; minimum; mini; minimal; minimale; minimo; minima; minimaux; turndown; turn down; мин; минимальный; "
-    "минимальная; минимальное; 最小; 最低",
-    "normal": "norm; normal; nor; nrm; nom normal; normale; normaux; нормальный; нормальная; нормальное; 正常",
+    "minimum": "min; minimum; mini; minimal; minimale; minimo; minima; minimaux; turndown; turn down; мин; "
+    "минимальный; минимальная; минимальное; 最小; 最低",
+    "normal": "norm; normal; nor; nrm; normale; normaux; нормальный; нормальная; нормальное; 正常",
     "maximum": "max; maximum; maxi; maximal; maximale; maximo; maxima; massimo; massima; maximaux; peak; макс; "
     "максимальный; максимальная; максимальное; 最大; 最高",
     "rated": "rated",
@@ -57,8 +57,8 @@ _MECHANICAL_WORDS = {
     "design": "design", "mechanical": "mechanical", "mech": "mech", "mechanical design": "mechanical design",
     "test": "test", "hydrotest": "hydrotest", "hydro test": "hydro test", "auslegung": "design", "diseno": "design",
     "projeto": "design", "progetto": "design", "de conception": "design", "conception": "design", "calcul": "design",
-    "de calcul": "design", "de diseno": "design", "de projeto": "design", "di progetto": "design", "расчетный": "design",
-    "设计": "design", "設計": "design",
+    "de calcul": "design", "de diseno": "design", "de projeto": "design", "di progetto": "design",
+    "расчетный": "design", "设计": "design", "設計": "design",
 }  # fmt: skip
 _CASE_WORD = re.compile(r" case$|^case (?=[a-z]{2})")
 _MARKS = {"%": "percentsign", "+": "plussign", "-": "minussign"}

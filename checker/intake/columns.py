@@ -8,16 +8,17 @@ from itertools import islice
 
 from checker.criteria.hints import ColumnHint
 from checker.errors import InputError, Problem
-from checker.fields import Field
 from checker.intake.column_cases import named_cases, one_case, with_cases
+from checker.intake.column_fields import CELLS_LOOKED_AT, Draft, one_field
 from checker.intake.column_hints import absent_headers, hinted_column
+from checker.intake.fraction_basis import with_fraction_basis
 from checker.intake.headers import read_header, says_reid
 from checker.intake.layout import Layout
 from checker.intake.matching import header_matches, near_header_reason
 from checker.intake.planned import PlannedColumn
 from checker.intake.sizes import column_basis
 from checker.intake.texts import key_of, place, shown
-from checker.intake.unit_words import settled_by, size_basis, unit_in_cell, unit_or_refusal
+from checker.intake.unit_words import settled_by, size_basis, unit_or_refusal
 from checker.intake.unread_headers import unread_reason
 from checker.model import HeaderMatch
 from checker.units import read_unit
@@ -26,7 +27,6 @@ __all__ = ["Plan", "number_columns", "plan_columns"]
 
 DESCRIPTIVE = frozenset({"area", "drawing", "remarks", "revision"})
 UNITLESS = frozenset({"dimensionless", "fraction"})
-CELLS_LOOKED_AT = 2_000
 MOST_COMPARED = 60
 _ASIDE = "the field {} is read from another column"
 
@@ -46,85 +46,25 @@ class Plan:
     matching: tuple[HeaderMatch, ...] = ()
 
 
-@dataclass(frozen=True)
-class _Draft:
-    index: int
-    header: str
-    fields: tuple[Field, ...]
-    unit: str
-    case: str
-    hinted: bool
-
-
-def _drafts(layout: Layout, hints: Mapping[str, ColumnHint], file: str) -> list[_Draft]:
+def _drafts(layout: Layout, hints: Mapping[str, ColumnHint], file: str) -> list[Draft]:
     by_key = {key_of(header): hint for header, hint in hints.items()}
     drafts = []
     for index, header in enumerate(layout.headers):
         hint = by_key.get(key_of(header)) if header else None
         reading = None if hint is not None else read_header(header)
         if reading is not None:
-            drafts.append(_Draft(index, header, reading.fields, reading.unit, reading.case, False))
+            drafts.append(Draft(index, header, reading.fields, reading.unit, reading.case, False))
         hinted = hint and hinted_column(header, hint, row_unit=layout.units[index], file=file, row=layout.header_row)
         if hinted:
-            drafts.append(_Draft(index, header, (hinted.field,), hinted.unit, hinted.case, True))
+            drafts.append(Draft(index, header, (hinted.field,), hinted.unit, hinted.case, True))
     return drafts
 
 
 def number_columns(layout: Layout, hints: Mapping[str, ColumnHint], file: str) -> frozenset[int]:
     """Return the columns whose headers promise numbers."""
-    return frozenset(draft.index for draft in _drafts(layout, hints, file) if draft.fields[0].kind == "number")
-
-
-def _knows(field: Field, unit: str) -> bool:
-    reading = unit_or_refusal(unit, field.dimension) if unit and field.kind == "number" else ""
-    return not isinstance(reading, str)
-
-
-def _by_cells(fields: Sequence[Field], cells: Sequence[str]) -> Field | None:
-    """Return the field whose dimension knows the units that the cells themselves carry."""
-    counts = dict.fromkeys(fields, 0)
-    for cell in dict.fromkeys(islice(cells, CELLS_LOOKED_AT)):
-        unit = cell.strip().lstrip("+-0123456789.,eE ")
-        for field in fields:
-            counts[field] += bool(unit) and not isinstance(unit_in_cell(unit, field.dimension), str)
-    best = max(counts, key=lambda field: counts[field])
-    return best if counts[best] else None
-
-
-def _one_field(draft: _Draft, row_unit: str, units: Mapping[str, str], cells: Sequence[str]) -> Field:
-    """Return the one field of a header that fits several: its unit's dimension decides."""
-    fields = draft.fields
-    if len(fields) == 1:
-        return fields[0]
-    if not draft.unit:
-        by_row = [field for field in fields if _knows(field, row_unit)]
-        by_criteria = [field for field in fields if field.dimension in units]
-        for found in (by_row, by_criteria):
-            if len(found) == 1:
-                return found[0]
-        return _by_cells(fields, cells) or fields[0]
-    return fields[0]
-
-
-def _which_field(draft: _Draft, row_unit: str, units: Mapping[str, str], cells: Sequence[str]) -> str:
-    """Return the question that a header asks which names several quantities and no unit that decides."""
-    fields = [field for field in draft.fields if field.kind == "number"]
-    written = draft.unit or row_unit
-    if written:
-        fields = [field for field in fields if _may_have(field, written)]
-    elif sum(field.dimension in units for field in fields) == 1 or _by_cells(fields, cells) is not None:
-        return ""
-    if len(fields) < 2:
-        return ""
-    names = " or ".join(f"the {field.meaning} ({field.name})" for field in fields)
-    said = f"{shown(draft.header)} in {shown(written)}" if written else f"no unit: {shown(draft.header)}"
-    return f"{said} could be {names}: name its field in [columns], or write its unit in the header."
-
-
-def _may_have(field: Field, unit: str) -> bool:
-    """Return whether a unit is one of a field's dimension, a pressure's without gauge or absolute among them."""
-    reading = unit_or_refusal(unit, field.dimension)
-    return not isinstance(reading, str) or "gauge or absolute" in reading
+    return frozenset(
+        draft.index for draft in _drafts(layout, hints, file) if all(field.kind == "number" for field in draft.fields)
+    )
 
 
 def _with_unit(column: PlannedColumn, row_unit: str, units: Mapping[str, str]) -> PlannedColumn:
@@ -164,7 +104,7 @@ def _measured(
 ) -> PlannedColumn:
     row_unit = layout.units[column.index]
     if column.field.kind == "number":
-        return _with_unit(column, row_unit, units)
+        return with_fraction_basis(_with_unit(column, row_unit, units), cells)
     if column.field.kind == "size":
         return _with_basis(column, row_unit, units, cells, comma)
     return replace(column, unit="")
@@ -276,21 +216,31 @@ def _unread_headers(
     return found
 
 
-def _asked(
-    columns: Sequence[PlannedColumn],
-    drafts: Sequence[_Draft],
+def _columns(
+    drafts: Sequence[Draft],
     layout: Layout,
     units: Mapping[str, str],
     cells: Sequence[Sequence[str]],
-) -> list[PlannedColumn]:
-    """Return the columns, those refused with a question whose header names several quantities."""
-    asked = {
-        draft.index: question
-        for draft in drafts
-        if len(draft.fields) > 1
-        and (question := _which_field(draft, layout.units[draft.index], units, cells[draft.index]))
-    }
-    return [replace(c, reading=None, refusal=asked[c.index]) if c.index in asked else c for c in columns]
+    comma: bool,
+) -> tuple[list[PlannedColumn], dict[int, str]]:
+    """Return a column for each header that a field claims, and by index the question of each that several claim."""
+    certain = {draft.fields[0].name for draft in drafts if len(draft.fields) == 1}
+    columns, questions = [], {}
+    for draft in drafts:
+        field, question = one_field(
+            draft,
+            row_unit=layout.units[draft.index],
+            units=units,
+            cells=cells[draft.index],
+            taken=certain,
+            comma=comma,
+        )
+        columns.append(
+            PlannedColumn(draft.index, draft.header, field, case=draft.case, unit=draft.unit, hinted=draft.hinted)
+        )
+        if question:
+            questions[draft.index] = question
+    return columns, questions
 
 
 def plan_columns(
@@ -325,17 +275,7 @@ def plan_columns(
         If two columns carry one field in one case.
     """
     drafts = _drafts(layout, hints, file)
-    columns = [
-        PlannedColumn(
-            draft.index,
-            draft.header,
-            _one_field(draft, layout.units[draft.index], units, cells[draft.index]),
-            case=draft.case,
-            unit=draft.unit,
-            hinted=draft.hinted,
-        )
-        for draft in drafts
-    ]
+    columns, questions = _columns(drafts, layout, units, cells, comma)
     left_out = [column for column in columns if column.case] if _has_case_column(columns) else []
     kept = _without_overruled([column for column in columns if column not in left_out])
     if not left_out:
@@ -345,7 +285,7 @@ def plan_columns(
     _refuse_duplicates(kept, file, layout.header_row)
     cases = named_cases(kept)
     kept = [_measured(c, layout, units, cells[c.index], comma) for c in one_case(kept, cases)]
-    kept = _asked(kept, drafts, layout, units, cells)
+    kept = [replace(c, reading=None, refusal=questions[c.index]) if c.index in questions else c for c in kept]
     read = {column.index for column in kept}
     unmatched = [index for index, header in enumerate(layout.headers) if header and index not in read]
     settled = {column.index for column in (*overruled, *repeated)}

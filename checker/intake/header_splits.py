@@ -22,7 +22,7 @@ _MOST_WORDS = 14
 
 @dataclass(frozen=True, slots=True)
 class Split:
-    """One way to part a header: its name, its unit, whether brackets or a comma part them, and bracketed words left out."""
+    """One way to part a header: name, unit, whether brackets or a comma part them, and the bracketed words left out."""
 
     name: str
     unit: str

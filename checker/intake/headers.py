@@ -31,6 +31,7 @@ _REID = re.compile(r"\b(?:reid|rvp|rvpe|r v p)\b")
 _CAMEL = re.compile(r"(?<=[a-z])(?=[A-Z])")
 _BETWEEN_LANGUAGES = re.compile(r"\s*[/|\r\n\u2028]+\s*|\s+[-\u2013\u2014]\s+")
 _LOST_DEGREE = re.compile(r"(temp|temperature|t)[\s.]*0 ?([cf])", re.IGNORECASE)
+_CASE_SIGNS = re.compile(r"(\u6700\u5927|\u6700\u5c0f|\u6700\u9ad8|\u6700\u4f4e|\u6b63\u5e38)")
 _HARMLESS = frozenset(
     {"line", "calc", "calculated", "est", "estimated", "operating", "oper", "op", "flowing", "actual", "rev", "new"}
 )
@@ -79,6 +80,7 @@ def _of_words(words: str) -> tuple[tuple[Field, ...], str]:
     fields = _spellings().get(words.replace(" ", ""), ())
     if fields or not words:
         return fields, ""
+    words = " ".join(_CASE_SIGNS.sub(r" \1 ", words).split())
     for case, rest in split_case(words):
         fields = tuple(field for field in _spellings().get(rest.replace(" ", ""), ()) if _has_cases(field))
         if fields:

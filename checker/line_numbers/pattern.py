@@ -8,16 +8,8 @@ from dataclasses import dataclass, replace
 import numpy as np
 from numpy.typing import NDArray
 
-from checker.line_numbers.roles import (
-    ListColumns,
-    Role,
-    misplaced,
-    roles_by_columns,
-    roles_by_shape,
-    roles_of_shorter,
-    sizes_of_tokens,
-    words_of,
-)
+from checker.line_numbers.roles import ListColumns, Role, misplaced, roles_by_columns, sizes_of_tokens
+from checker.line_numbers.shapes import roles_by_shape, roles_of_shorter, words_of
 from checker.line_numbers.tokens import Group, TokenTable, pieces_of, table_of_tokens
 from checker.model import Coded
 

@@ -77,7 +77,7 @@ SHAPES = {
     ),
     "area before the service": Shape(
         ('6"-P-HC-10001-A1A-I', '8"-P-HC-10002-A1A-I', '8"-P-CW-10003-B1A-N'),
-        {"size": (6, 8, 8), "service": ("HC", "HC", "CW"), "class": ("A1A", "A1A", "B1A"), 
+        {"size": (6, 8, 8), "service": ("HC", "HC", "CW"), "class": ("A1A", "A1A", "B1A"),
          "insulation": ("I", "I", "N")},
         "size - area - service - sequence - class - insulation",
         {"size": 6.0, "service": "HC", "class": "A1A", "insulation": "I", "sequence": "10001"},
