@@ -26,8 +26,12 @@ class Recommendation:
 
 
 def coverage_of(judgement: Judgement) -> float:
-    """Return checked over applicable outcomes; zero where nothing applies, for then nothing was checked."""
-    counts = np.bincount(judgement.outcome.ravel(), minlength=len(Outcome))
+    """Return checked over applicable outcomes; zero where nothing applies, for then nothing was checked.
+
+    Rules that hold the list against itself are left aside: that figures agree says nothing of a pipe's duty.
+    """
+    on_duty = [index for index, rule in enumerate(judgement.rules) if not rule.on_data]
+    counts = np.bincount(judgement.outcome[on_duty].ravel(), minlength=len(Outcome))
     checked = counts[Outcome.MEETS] + counts[Outcome.DOES_NOT_MEET] + counts[Outcome.APPROVED_DEVIATION]
     applicable = checked + counts[Outcome.NOT_CHECKED]
     return float(checked / applicable) if applicable else 0.0
@@ -79,7 +83,7 @@ def recommend(
         f"{_plural(shall, 'outcome')} not met where the requirement is a shall" if shall else "",
         f"{_plural(gross, 'outcome')} not met by more than the factor {gross_factor:g}" if gross else "",
     ]
-    share = f"{100.0 * coverage:.1f} % of the applicable outcomes could be checked"
+    share = f"{100.0 * coverage:.1f} % of the applicable outcomes on the lines' duty could be checked"
     incomplete = f"only {share}, less than {100.0 * coverage_minimum:g} %" if coverage < coverage_minimum else ""
     if not any_flow:
         incomplete = "no line of the list has a flow in any case, so that nothing of its duty was judged"

@@ -95,14 +95,15 @@ class Review:
 
     @property
     def coverage(self) -> float:
-        """Share of the applicable outcomes that was checked."""
+        """Share of the applicable outcomes on the lines' duty that was checked."""
         return self.recommended.coverage
 
     @property
     def coverage_text(self) -> str:
-        """First line of every summary."""
-        unchecked = self.tally[Outcome.NOT_CHECKED.words]
-        checked = sum(self.tally[outcome.words] for outcome in _CHECKED)
+        """First line of every summary: the outcomes on the lines' duty, the list's own figures apart."""
+        outcome = self.judgement.outcome[[not rule.on_data for rule in self.judgement.rules]]
+        unchecked = int((outcome == Outcome.NOT_CHECKED).sum())
+        checked = int(np.isin(outcome, _CHECKED).sum())
         if not checked + unchecked:
             return "checked 0.0 %, not checked 0.0 %: no rule applied"
         share = round(100.0 * self.coverage, 1)

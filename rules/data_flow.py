@@ -38,6 +38,7 @@ def _gross(*, value: FloatArray, flow_difference: FloatArray) -> BoolArray:
 @rule(
     id="mass-against-volume-flow",
     title="Mass flow against volume flow",
+    on_data=True,
     force="should",
     sense="condition",
     source=Source("common practice", clause="|m - Q rho| / m at most 2 %; above 10 % a shall"),
@@ -58,6 +59,7 @@ def mass_against_volume_flow(*, flow_difference: FloatArray) -> FloatArray:
 @rule(
     id="standard-taken-for-actual",
     title="Standard volume flow taken for the actual one",
+    on_data=True,
     force="shall",
     sense="condition",
     source=Source("common practice", clause="Q M / m of 22.4 to 24.1 m3/kmol is a standard volume"),
@@ -75,6 +77,7 @@ def standard_taken_for_actual(*, standard_taken_for_actual: FloatArray) -> Float
 @rule(
     id="zero-flow-row",
     title="Rows that flow or do not",
+    on_data=True,
     force="should",
     sense="condition",
     source=Source("common practice", clause="flare, relief and drain lines; purge at most 5 % of the greatest flow"),
@@ -89,6 +92,7 @@ def zero_flow_row(*, zero_flow_contradicts: FloatArray, zero_flow_said: Coded) -
 @rule(
     id="composite-case",
     title="Cases with another case's state",
+    on_data=True,
     force="note",
     sense="condition",
     source=Source("common practice", clause="a case has its own flow, pressure, temperature and properties"),

@@ -40,6 +40,7 @@ def _in_grams(*, value: FloatArray, liquid_density_in_grams: BoolArray) -> BoolA
 @rule(
     id="gas-density",
     title="Density of a gas against its pressure and temperature",
+    on_data=True,
     force="should",
     sense="condition",
     source=Source(
@@ -62,6 +63,7 @@ def gas_density(*, gas_density_contradicts: FloatArray, gas_density_said: Coded)
 @rule(
     id="liquid-density",
     title="Density of a liquid",
+    on_data=True,
     force="should",
     sense="condition",
     source=Source("common practice", clause="400 to 1 900 kg/m3; water below 100 degC 950 to 1 005 kg/m3"),
@@ -80,6 +82,7 @@ def liquid_density(*, liquid_density_contradicts: FloatArray, liquid_density_sai
 @rule(
     id="viscosity-magnitude",
     title="Magnitude of the viscosity",
+    on_data=True,
     force="should",
     sense="condition",
     source=Source("common practice", clause="gas 0.006 to 0.05 cP, liquid 0.05 to 5 000 cP, water by temperature"),
@@ -94,6 +97,7 @@ def viscosity_magnitude(*, viscosity_contradicts: FloatArray, viscosity_said: Co
 @rule(
     id="gauge-absolute",
     title="Gauge and absolute pressure",
+    on_data=True,
     force="shall",
     sense="condition",
     source=Source("common practice", clause="rho = P M / (Z R T) with one atmosphere more or less"),
@@ -108,6 +112,7 @@ def gauge_absolute(*, gauge_against_density: FloatArray, gauge_density_said: Cod
 @rule(
     id="gauge-absolute-by-velocity",
     title="Gauge and absolute pressure by the stated velocity",
+    on_data=True,
     force="should",
     sense="condition",
     source=Source("common practice", clause="v goes by 1 / P, with one atmosphere more or less"),

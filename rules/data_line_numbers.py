@@ -23,6 +23,7 @@ def _of_known_pattern(*, number_pattern_known: TriState, first_of_row: TriState)
 @rule(
     id="doubled-line-number",
     title="One line number on several rows",
+    on_data=True,
     force="shall",
     sense="condition",
     source=Source("common practice", clause="one number names one line; its segments and cases differ in the row"),
@@ -40,6 +41,7 @@ def doubled_line_number(*, doubled_line_number: BoolArray) -> BoolArray:
 @rule(
     id="look-alike-number",
     title="Line numbers that look alike",
+    on_data=True,
     force="should",
     sense="condition",
     source=Source("common practice", clause="O and 0, I and 1, capitals and marks are easily mistaken"),
@@ -54,6 +56,7 @@ def look_alike_number(*, look_alike_number: BoolArray) -> BoolArray:
 @rule(
     id="number-against-columns",
     title="Line number against the columns",
+    on_data=True,
     force="should",
     sense="condition",
     source=Source("common practice", clause="size, service, class and insulation of the number as in its columns"),

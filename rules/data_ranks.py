@@ -48,6 +48,7 @@ def _design_temperature_passed(
 @rule(
     id="pressure-rank",
     title="Rank of pressures",
+    on_data=True,
     force="should",
     sense="condition",
     source=Source("common practice", clause="design at least maximum, normal, minimum; below operating is a shall"),
@@ -68,6 +69,7 @@ def pressure_rank(*, pressure_rank_broken: FloatArray, pressure_rank_said: Coded
 @rule(
     id="temperature-rank",
     title="Rank of temperatures",
+    on_data=True,
     force="should",
     sense="condition",
     source=Source("common practice", clause="design at least maximum, normal, minimum; outside design is a shall"),
@@ -86,6 +88,7 @@ def temperature_rank(*, temperature_rank_broken: FloatArray, temperature_rank_sa
 @rule(
     id="test-pressure-rank",
     title="Test pressure against design pressure",
+    on_data=True,
     force="should",
     sense="at least",
     source=Source("ASME B31.3", "2022", "345.4.2; ratio of allowable stresses not counted"),
@@ -107,6 +110,7 @@ def pressure_of_test(
 @rule(
     id="case-order",
     title="Order of minimum, normal and maximum flow",
+    on_data=True,
     force="shall",
     sense="condition",
     source=Source("common practice", clause="a maximum is not below normal, a minimum not above it"),

@@ -31,6 +31,7 @@ def _sizes_with_diameter(*, size_told: TriState) -> TriState:
 @rule(
     id="impossible-value",
     title="Impossible values",
+    on_data=True,
     force="shall",
     sense="condition",
     source=Source("common practice", clause="no line of a line list is above 1 000 degC"),
@@ -49,6 +50,7 @@ def impossible_value(*, impossible: FloatArray) -> FloatArray:
 @rule(
     id="standing-hold",
     title="Open items of the row",
+    on_data=True,
     force="should",
     sense="condition",
     source=Source("common practice", clause="HOLD, to be confirmed, vendor to advise"),
@@ -63,6 +65,7 @@ def standing_hold(*, hold_fields: Coded) -> NDArray[np.bool_]:
 @rule(
     id="aged-hold",
     title="Age of open items",
+    on_data=True,
     force="should",
     sense="condition",
     source=Source("common practice", clause="revisions A, B ... before 0, 1 ..."),
@@ -77,6 +80,7 @@ def aged_hold(*, hold_older: FloatArray, hold_fields: Coded) -> FloatArray:
 @rule(
     id="nominal-size-basis",
     title="Basis of the nominal size",
+    on_data=True,
     force="shall",
     sense="condition",
     source=Source("ASME B36.10M", "2004", "outside diameter by NPS and DN; within 2 %, common practice"),

@@ -17,6 +17,7 @@ def _steam_or_water(*, saturation_asked: TriState, state_told: TriState) -> TriS
 @rule(
     id="steam-saturation",
     title="Steam and water against saturation",
+    on_data=True,
     force="should",
     sense="condition",
     source=Source("IAPWS R7-97", "2012", "equation 31; 3 K is common practice"),

@@ -7,8 +7,8 @@ from dataclasses import dataclass, replace
 from itertools import islice
 
 from checker.criteria.hints import ColumnHint
-from checker.errors import InputError, Problem
 from checker.intake.column_cases import named_cases, one_case, with_cases
+from checker.intake.column_conflicts import refuse_duplicates, without_overruled, without_repeated
 from checker.intake.column_fields import CELLS_LOOKED_AT, Draft, one_field
 from checker.intake.column_hints import absent_headers, hinted_column
 from checker.intake.fraction_basis import with_fraction_basis
@@ -17,15 +17,14 @@ from checker.intake.layout import Layout
 from checker.intake.matching import header_matches, near_header_reason
 from checker.intake.planned import PlannedColumn
 from checker.intake.sizes import column_basis
-from checker.intake.texts import key_of, place, shown
+from checker.intake.texts import key_of, shown
 from checker.intake.unit_words import settled_by, size_basis, unit_or_refusal
-from checker.intake.unread_headers import unread_reason
+from checker.intake.unread_headers import easily_mistaken, unread_reason
 from checker.model import HeaderMatch
 from checker.units import read_unit
 
 __all__ = ["Plan", "number_columns", "plan_columns"]
 
-DESCRIPTIVE = frozenset({"area", "drawing", "remarks", "revision"})
 UNITLESS = frozenset({"dimensionless", "fraction"})
 MOST_COMPARED = 60
 _ASIDE = "the field {} is read from another column"
@@ -110,42 +109,6 @@ def _measured(
     return replace(column, unit="")
 
 
-def _without_overruled(columns: list[PlannedColumn]) -> list[PlannedColumn]:
-    """Leave out a column whose field and case the criteria give to another one."""
-    taken = {(column.field.name, column.case) for column in columns if column.hinted}
-    return [column for column in columns if column.hinted or (column.field.name, column.case) not in taken]
-
-
-def _without_repeated(columns: list[PlannedColumn]) -> tuple[list[PlannedColumn], list[PlannedColumn]]:
-    """Return the columns with the first one only of each descriptive field that no check reads, and the others."""
-    seen: set[str] = set()
-    kept: list[PlannedColumn] = []
-    repeated: list[PlannedColumn] = []
-    for column in columns:
-        name = column.field.name
-        (repeated if name in seen and name in DESCRIPTIVE else kept).append(column)
-        seen.add(name)
-    return kept, repeated
-
-
-def _refuse_duplicates(columns: Sequence[PlannedColumn], file: str, row: int) -> None:
-    seen: dict[tuple[str, str], PlannedColumn] = {}
-    problems = []
-    for column in columns:
-        first = seen.setdefault((column.field.name, column.case), column)
-        if first is column:
-            continue
-        case = f" in the case '{column.case}'" if column.case else ""
-        what = (
-            f"two columns for the field {column.field.name}{case}: {shown(first.header)} (column {first.index + 1}) "
-            f"and {shown(column.header)} (column {column.index + 1})."
-        )
-        remedy = "Say in [columns] of the criteria which header carries the field, or rename one of them."
-        problems.append(Problem(what, where=place(file, row), remedy=remedy))
-    if problems:
-        raise InputError(problems)
-
-
 def _notes(
     columns: Sequence[PlannedColumn], left_out: Sequence[PlannedColumn], cases: Sequence[str], layout: Layout
 ) -> list[str]:
@@ -209,11 +172,19 @@ def _unread_headers(
             reason = ""
         else:
             reason = unread_reason(header, row_unit=layout.units[index], cells=cells[index])
-            if not reason and index in compared:
-                reason = near_header_reason(header, taken)
+            if not reason:
+                reason = _nearly(header, taken) if index in compared else ""
         if reason:
             found.append((index, reason))
     return found
+
+
+def _nearly(header: str, taken: Collection[str]) -> str:
+    """Return the sentence on a header that is nearly, or seemingly, one of a field that no other column carries."""
+    field, why = easily_mistaken(header)
+    if field:
+        return "" if field in taken else why
+    return near_header_reason(header, taken)
 
 
 def _columns(
@@ -277,20 +248,23 @@ def plan_columns(
     drafts = _drafts(layout, hints, file)
     columns, questions = _columns(drafts, layout, units, cells, comma)
     left_out = [column for column in columns if column.case] if _has_case_column(columns) else []
-    kept = _without_overruled([column for column in columns if column not in left_out])
+    kept = without_overruled([column for column in columns if column not in left_out])
     if not left_out:
-        kept = _without_overruled(with_cases(kept, file=file, row=layout.header_row))
+        kept = without_overruled(with_cases(kept, file=file, row=layout.header_row))
     overruled = [column for column in columns if column.index not in {c.index for c in (*kept, *left_out)}]
-    kept, repeated = _without_repeated(kept)
-    _refuse_duplicates(kept, file, layout.header_row)
+    kept, repeated = without_repeated(kept)
+    refuse_duplicates(kept, file, layout.header_row)
     cases = named_cases(kept)
     kept = [_measured(c, layout, units, cells[c.index], comma) for c in one_case(kept, cases)]
     kept = [replace(c, reading=None, refusal=questions[c.index]) if c.index in questions else c for c in kept]
     read = {column.index for column in kept}
     unmatched = [index for index, header in enumerate(layout.headers) if header and index not in read]
     settled = {column.index for column in (*overruled, *repeated)}
-    unread = _unread_headers(layout, cells, unmatched, left_out, settled, hints, {column.field.name for column in kept})
-    why = dict(unread) | {c.index: _ASIDE.format(c.field.name) for c in (*overruled, *repeated)}
+    taken = {column.field.name for column in kept}
+    unread = _unread_headers(layout, cells, unmatched, left_out, settled, hints, taken)
+    aside = {c.index: _ASIDE.format(c.field.name) for c in (*overruled, *repeated)}
+    mistaken = ((index, easily_mistaken(layout.headers[index])[1]) for index in unmatched[:MOST_COMPARED])
+    why = {index: reason for index, reason in mistaken if reason} | dict(unread) | aside
     return Plan(
         tuple(kept),
         tuple(layout.headers[index] for index in unmatched),

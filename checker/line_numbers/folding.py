@@ -19,10 +19,11 @@ _PARTING = "\n"
 _MOST_PASSES = 6
 _SIGNS = str.maketrans({**dict.fromkeys(HYPHENS, "-"), **dict.fromkeys(INCH_MARKS, '"'), "\u2044": "/", "\u2215": "/"})
 _CONTROLS = [chr(code) for code in (*range(9), *range(14, 28), 127)]
+_ASCII_BLANKS = " \t\r\x0b\x0c\x1c\x1d\x1e\x1f"
 _BLANKS = re.compile(r"[^\S\n]+")
 _BLANK_AT_EDGE = re.compile(r"\A |(?<=[-/_.\n]) | (?=[-/_.\n]|\Z)")
 _REVISION = re.compile(
-    r"(?:[\s_]*[\[(]\s*REV(?:ISION)?[\s.:-]*[A-Z0-9]{1,3}\s*[\])]|[-\s_]+REV[\s.:]*[A-Z0-9]{1,3})(?=\n|\Z)"
+    r"(?:[ _]*[\[(] ?REV(?:ISION)?[ .:-]*[A-Z0-9]{1,3} ?[\])]|[-_ ]+REV[ .:]*[A-Z0-9]{1,3})(?=\n|\Z)"
 )
 _KEPT_BLANK = re.compile(r" (?=\d)(?<=\d )| (?=[^\W\d_])(?<=[^\W\d_] )")
 
@@ -50,10 +51,9 @@ def _in_plain_signs(text: str) -> str:
 
 def _tidy_blanks(text: str) -> str:
     """Return a text with one blank where there are several, and none beside a delimiter or at an end."""
-    if " " not in text and "\t" not in text and text.isascii():
+    if text.isascii() and not any(sign in text for sign in _ASCII_BLANKS):
         return text
-    text = _BLANKS.sub(" ", text).replace('""', '"')
-    return _BLANK_AT_EDGE.sub("", text)
+    return _BLANK_AT_EDGE.sub("", _BLANKS.sub(" ", text))
 
 
 def _parted(text: str, count: int) -> list[str]:
@@ -66,8 +66,10 @@ def plain_numbers(texts: Sequence[str]) -> list[str]:
     Inch marks are ``"``, hyphens of every kind ``-``; blanks beside a delimiter are gone.
     """
     text = _joined(texts)
-    signs = _in_plain_signs(text).replace('""', '"').upper()
+    signs = _in_plain_signs(text).upper()
     plain = _tidy_blanks(signs if signs.isascii() else _in_plain_signs(signs))
+    while '""' in plain:
+        plain = plain.replace('""', '"')
     return _parted(_without_revision(plain), len(texts))
 
 

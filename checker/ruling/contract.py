@@ -6,6 +6,7 @@ import inspect
 from collections.abc import Callable
 from dataclasses import dataclass
 from enum import IntEnum
+from functools import cache
 from typing import Any, Literal, TypeVar
 
 from checker.errors import Problem, ToolFaultError
@@ -78,6 +79,9 @@ class Rule:
         Key of the criteria whose origin is told beside the limit; empty where the row or the rule gives the limit.
     origin : str
         The bundle it came from.
+    on_data : bool
+        True where the rule holds the list against itself, not the pipe against its duty: the coverage counts the
+        other rules only, so that a list full of consistent figures is not taken for a checked one.
     """
 
     id: str
@@ -96,6 +100,7 @@ class Rule:
     shall_where: Callable[..., Any] | None
     limit_key: str
     origin: str
+    on_data: bool = False
 
     @property
     def parameters(self) -> tuple[str, ...]:
@@ -108,6 +113,7 @@ class Rule:
         return () if self.applies is None else parameter_names(self.applies)
 
 
+@cache
 def parameter_names(function: Callable[..., Any]) -> tuple[str, ...]:
     """Return the names of a function's parameters, in order."""
     return tuple(inspect.signature(function).parameters)
@@ -142,6 +148,7 @@ def rule(
     conservative: tuple[str, ...] = (),
     shall_where: Callable[..., Any] | None = None,
     limit_key: str = "",
+    on_data: bool = False,
 ) -> Callable[[Function], Function]:
     """Mark a pure function as a rule; the function itself stays as it is and can be called in tests.
 
@@ -163,7 +170,7 @@ def rule(
         required, optional = _split(function, id)
         marked = Rule(
             id, title, force, sense, source, calculation, unit, dimension, function, required, optional,
-            applies, conservative, shall_where, limit_key, function.__module__,
+            applies, conservative, shall_where, limit_key, function.__module__, on_data,
         )  # fmt: skip
         setattr(function, _MARK, marked)
         return function
