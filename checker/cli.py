@@ -84,6 +84,16 @@ def _inputs(command: Callable[..., None]) -> Callable[..., None]:
     return click.argument("line_list", metavar="LIST", type=PATH)(command)
 
 
+def _drawing_lines(command: Callable[..., None]) -> Callable[..., None]:
+    """Add the option that holds the list against the drawings."""
+    return click.option(
+        "--drawing-lines",
+        metavar="FILE",
+        type=PATH,
+        help="Lines on the drawings, a number a row: is the list complete?",
+    )(command)
+
+
 def _spare_the_inputs(targets: list[Path], line_list: Path, options: dict[str, Any]) -> None:
     """Refuse, before anything is computed, an output that would stand where an input stands.
 
@@ -138,6 +148,7 @@ def main() -> None:
 
 @main.command()
 @_inputs
+@_drawing_lines
 @click.option("--out", type=PATH, help="Folder for the files. Without it: review/ beside the list.")
 def review(line_list: Path, out: Path | None, quiet: bool, **options: Any) -> None:
     """Read LIST, compute, check, and write the report.
@@ -165,6 +176,7 @@ def review(line_list: Path, out: Path | None, quiet: bool, **options: Any) -> No
 
 @main.command()
 @_inputs
+@_drawing_lines
 @click.option("--json", "json_file", type=PATH, help="Also write outcomes.json to this file.")
 def gate(line_list: Path, json_file: Path | None, quiet: bool, **options: Any) -> None:
     """Check LIST for CI: no report, the exit status is the answer.

@@ -11,6 +11,8 @@ from pathlib import Path
 import numpy as np
 
 from checker.cautions import twin_rows
+from checker.completeness import Completeness, compare, read_drawing_lines
+from checker.completeness.record import RENUMBERED
 from checker.criteria.classes import load_classes
 from checker.criteria.criteria import Criteria
 from checker.criteria.load import load_criteria
@@ -40,6 +42,7 @@ def review(
     deviations: PathLike | None = None,
     rules: PathLike | None = None,
     sheet: str | None = None,
+    drawing_lines: PathLike | None = None,
     today: date | None = None,
 ) -> Review:
     """Read a line list, compute its hydraulics and judge every line case by every rule.
@@ -60,6 +63,9 @@ def review(
         A folder of further rule modules.
     sheet : str, optional
         Sheet of a workbook; the one that looks like a line list where none is named.
+    drawing_lines : path, optional
+        The lines on the drawings, one line number a row, with its drawing: what the list is held against for
+        completeness.
     today : date, optional
         Day on which deviations are held against their last day; the current day where none is given.
 
@@ -86,6 +92,7 @@ def review(
         if deviations is None
         else load_deviations(Path(deviations), rules=found, atmosphere=used_criteria.atmosphere)
     )
+    drawn = None if drawing_lines is None else read_drawing_lines(Path(drawing_lines))
     listed = read_line_list(
         Path(line_list),
         units=used_criteria.units,
@@ -95,7 +102,8 @@ def review(
         sheet=sheet,
     )
     values = Values(line_list=listed, criteria=used_criteria, classes=used_classes)
-    return evaluate(values, found, approvals=approvals, today=today or date.today())
+    complete = None if drawn is None else compare(listed, drawn)
+    return evaluate(values, found, approvals=approvals, today=today or date.today(), completeness=complete)
 
 
 def _ambient(criteria: Criteria) -> tuple[float, float] | None:
@@ -104,7 +112,14 @@ def _ambient(criteria: Criteria) -> tuple[float, float] | None:
     return None if any(map(math.isnan, limits)) else limits
 
 
-def evaluate(values: Values, rules: tuple[Rule, ...], *, approvals: DeviationFile | None, today: date) -> Review:
+def evaluate(
+    values: Values,
+    rules: tuple[Rule, ...],
+    *,
+    approvals: DeviationFile | None,
+    today: date,
+    completeness: Completeness | None = None,
+) -> Review:
     """Judge the values by the rules, put approved deviations in, and recommend."""
     judgement = judge_all(rules, values)
     applied = AppliedDeviations()
@@ -127,10 +142,19 @@ def evaluate(values: Values, rules: tuple[Rule, ...], *, approvals: DeviationFil
             "line numbers on several rows for one case": len(twin_rows(values)),
             "kinds of assumption": assumed,
             "approvals not used": stale,
+            **_incomplete(completeness),
         },
         any_flow=any_flow,
     )
-    return Review(values, judgement, recommended, applied)
+    return Review(values, judgement, recommended, applied, completeness)
+
+
+def _incomplete(completeness: Completeness | None) -> dict[str, int]:
+    """Return what list and drawings do not agree on, by kind and how often; renumbered lines count as missing."""
+    if completeness is None:
+        return {}
+    counts = {f"lines '{kind}'": count for kind, count in completeness.counts.items() if kind != RENUMBERED}
+    return {**counts, "rows of the drawings' file not read": len(completeness.unread)}
 
 
 def _lines_without_flow(values: Values) -> tuple[int, bool]:

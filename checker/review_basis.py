@@ -85,11 +85,11 @@ def _roughness_rows(values: Values) -> list[tuple[str, str, str]]:
     return sorted(set(rows))
 
 
-def basis_of(values: Values, *, deviations: Source | None) -> Basis:
-    """Return what the review rests on."""
+def basis_of(values: Values, *, deviations: Source | None, drawings: Source | None = None) -> Basis:
+    """Return what the review rests on; `drawings` is the file of the lines on the drawings."""
     criteria = values.criteria
     inputs = [values.line_list.source, criteria.source]
-    inputs += [source for source in (criteria.based_on_source, deviations) if source is not None]
+    inputs += [source for source in (criteria.based_on_source, deviations, drawings) if source is not None]
     if values.classes is not None:
         inputs.insert(2, values.classes.source)
     versions = [("Python", platform.python_version()), *((package, _version(package)) for package in _PACKAGES)]

@@ -11,6 +11,7 @@ import numpy as np
 
 from checker import review_frames, review_tables
 from checker.cautions import cautions_of
+from checker.completeness import Completeness
 from checker.deviations import Deviation
 from checker.errors import InputError, Problem
 from checker.evaluation.values import Values
@@ -60,12 +61,15 @@ class Review:
         The recommendation with its reasons and the coverage.
     applied : AppliedDeviations
         The approvals and what became of each.
+    completeness : Completeness or None
+        The list held against the lines on the drawings, where they were given.
     """
 
     values: Values
     judgement: Judgement
     recommended: Recommendation
     applied: AppliedDeviations = field(default_factory=AppliedDeviations)
+    completeness: Completeness | None = None
 
     @property
     def title(self) -> str:
@@ -225,7 +229,8 @@ class Review:
     @cached_property
     def basis(self) -> Basis:
         """Inputs, versions, methods, adopted criteria."""
-        return basis_of(self.values, deviations=self.applied.source)
+        drawings = None if self.completeness is None else self.completeness.source
+        return basis_of(self.values, deviations=self.applied.source, drawings=drawings)
 
     @property
     def revisions(self) -> tuple[str, ...]:

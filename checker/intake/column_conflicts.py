@@ -8,7 +8,7 @@ from checker.errors import InputError, Problem
 from checker.intake.planned import PlannedColumn
 from checker.intake.texts import key_of, place, shown
 
-__all__ = ["refuse_duplicates", "without_overruled", "without_repeated"]
+__all__ = ["DESCRIPTIVE", "refuse_duplicates", "without_overruled", "without_repeated"]
 
 DESCRIPTIVE = frozenset(
     {

@@ -8,18 +8,18 @@ from itertools import islice
 
 from checker.criteria.hints import ColumnHint
 from checker.intake.column_cases import named_cases, one_case, with_cases
-from checker.intake.column_conflicts import refuse_duplicates, without_overruled, without_repeated
+from checker.intake.column_conflicts import DESCRIPTIVE, refuse_duplicates, without_overruled, without_repeated
 from checker.intake.column_fields import CELLS_LOOKED_AT, Draft, one_field
 from checker.intake.column_hints import absent_headers, hinted_column
 from checker.intake.fraction_basis import with_fraction_basis
 from checker.intake.headers import read_header, says_reid
 from checker.intake.layout import Layout
-from checker.intake.matching import header_matches, near_header_reason
+from checker.intake.matching import header_matches, near_header
 from checker.intake.planned import PlannedColumn
 from checker.intake.sizes import column_basis
 from checker.intake.texts import key_of, shown
 from checker.intake.unit_words import settled_by, size_basis, unit_or_refusal
-from checker.intake.unread_headers import easily_mistaken, unread_reason
+from checker.intake.unread_headers import unread_reason
 from checker.model import HeaderMatch
 from checker.units import read_unit
 
@@ -157,12 +157,11 @@ def _unread_headers(
     left_out: Sequence[PlannedColumn],
     settled: Collection[int],
     hints: Mapping[str, ColumnHint],
-    taken: Collection[str],
+    near: Mapping[int, tuple[str, str]],
 ) -> list[tuple[int, str]]:
     """Return the columns that are open items: those that name a case beside a case column, and those in doubt."""
     aside = {column.index: column.case for column in left_out}
     keys = {key_of(header) for header in hints}
-    compared = frozenset(unmatched[:MOST_COMPARED])
     found = []
     for index in unmatched:
         header = layout.headers[index]
@@ -172,19 +171,10 @@ def _unread_headers(
             reason = ""
         else:
             reason = unread_reason(header, row_unit=layout.units[index], cells=cells[index])
-            if not reason:
-                reason = _nearly(header, taken) if index in compared else ""
+            reason = reason or near.get(index, ("", ""))[1]
         if reason:
             found.append((index, reason))
     return found
-
-
-def _nearly(header: str, taken: Collection[str]) -> str:
-    """Return the sentence on a header that is nearly, or seemingly, one of a field that no other column carries."""
-    field, why = easily_mistaken(header)
-    if field:
-        return "" if field in taken else why
-    return near_header_reason(header, taken)
 
 
 def _columns(
@@ -260,11 +250,12 @@ def plan_columns(
     read = {column.index for column in kept}
     unmatched = [index for index, header in enumerate(layout.headers) if header and index not in read]
     settled = {column.index for column in (*overruled, *repeated)}
-    taken = {column.field.name for column in kept}
-    unread = _unread_headers(layout, cells, unmatched, left_out, settled, hints, taken)
-    aside = {c.index: _ASIDE.format(c.field.name) for c in (*overruled, *repeated)}
-    mistaken = ((index, easily_mistaken(layout.headers[index])[1]) for index in unmatched[:MOST_COMPARED])
-    why = {index: reason for index, reason in mistaken if reason} | dict(unread) | aside
+    near = {index: near_header(layout.headers[index]) for index in unmatched[:MOST_COMPARED] if index not in settled}
+    needless = {column.field.name for column in kept} | DESCRIPTIVE
+    needed = {index: found for index, found in near.items() if found[0] not in needless}
+    unread = _unread_headers(layout, cells, unmatched, left_out, settled, hints, needed)
+    remarks = {index: sentence for index, (_, sentence) in near.items() if sentence}
+    why = remarks | dict(unread) | {c.index: _ASIDE.format(c.field.name) for c in (*overruled, *repeated)}
     return Plan(
         tuple(kept),
         tuple(layout.headers[index] for index in unmatched),

@@ -26,6 +26,7 @@ ROWS_SEARCHED = 40
 LINE_NUMBER_WEIGHT = 1000
 ENOUGH = LINE_NUMBER_WEIGHT + 4
 MOST_HEADER_ROWS = 5
+COLUMNS_SEARCHED = 3
 _LETTER = re.compile(r"[^\W\d_]")
 
 
@@ -75,7 +76,13 @@ def _best(rows: Sequence[Sequence[str]], hints: Mapping[str, str]) -> tuple[int,
     return best, best_score
 
 
-def _refuse(file: str, row: int, cells: Sequence[str], score: int) -> InputError:
+def _refuse(file: str, rows: Sequence[Sequence[str]], index: int, score: int, hints: Mapping[str, str]) -> InputError:
+    """Return the refusal of a file without a line-number column, or without headers at all."""
+    for position in range(COLUMNS_SEARCHED):
+        column = [cells[position] for cells in rows[:ROWS_SEARCHED] if position < len(cells)]
+        beneath = count_understood([cell.strip() for cell in column], hints)
+        if beneath >= 3 and beneath > score:
+            return _transposed(f"{beneath} headers stand in column {position + 1}", file, None)
     if score < 3:
         return InputError(
             Problem(
@@ -84,13 +91,23 @@ def _refuse(file: str, row: int, cells: Sequence[str], score: int) -> InputError
                 remedy="Give a header row with a line-number column; `linelist fields` shows the spellings understood.",
             )
         )
+    cells = rows[index]
     named = ", ".join(shown(cell) for cell in cells if cell.strip())
+    blank = [str(position + 1) for position, cell in enumerate(cells) if not cell.strip()][:3]
+    which = f" (column {' or '.join(blank)}, without a header, if it holds the numbers)" if blank else ""
     return InputError(
         Problem(
             f"no line-number column among the headers {named[:600]}.",
-            where=place(file, row),
-            remedy="Head it 'Line No', or name its header in [columns] of the criteria.",
+            where=place(file, index + 1),
+            remedy=f"Head it 'Line No'{which}, or name its header in [columns] of the criteria.",
         )
+    )
+
+
+def _transposed(what: str, file: str, row: int | None) -> InputError:
+    remedy = "Turn it (copy, paste special, transpose), so that each line is a row and the headers are the first row."
+    return InputError(
+        Problem(f"the table is transposed: {what}, one line a column.", where=place(file, row), remedy=remedy)
     )
 
 
@@ -114,11 +131,7 @@ def _refuse_transposed(rows: Sequence[Sequence[str]], index: int, hints: Mapping
     column = [cells[line_column] for cells in rows[index + 1 : ROWS_SEARCHED] if line_column < len(cells)]
     beneath = count_understood(column, hints)
     if beneath >= 3 and beneath > beside:
-        what = f"the table is transposed: {beneath} headers stand beneath {shown(row[line_column])}, one line a column."
-        remedy = (
-            "Turn it (copy, paste special, transpose), so that each line is a row and the headers are the first row."
-        )
-        raise InputError(Problem(what, where=place(file, index + 1), remedy=remedy))
+        raise _transposed(f"{beneath} headers stand beneath {shown(row[line_column])}", file, index + 1)
 
 
 def _with_group_above(
@@ -151,13 +164,52 @@ class _Beneath:
     notes: list[str]
 
 
+def _deeper(
+    rows: Sequence[Sequence[str]], number: int, headers: tuple[str, ...], hints: Mapping[str, str]
+) -> tuple[str, ...] | None:
+    """Return the headers read with two more rows beneath them, None where that makes no more of them understood.
+
+    A row of group names (normal, maximum) says nothing by itself; read over the row beneath it, it does.
+    """
+    line_column = line_number_columns(headers, hints)[0]
+    beneath = rows[number + 1] if number + 1 < len(rows) else ()
+    if not any(cell.strip() for cell in beneath) or not _no_number(beneath, headers, line_column):
+        return None
+    joined = join_rows(headers, join_rows(rows[number], beneath, hints), hints)
+    return joined if count_understood(joined, hints) > count_understood(headers, hints) + 1 else None
+
+
+def _join_beneath(
+    found: _Beneath, rows: Sequence[Sequence[str]], number: int, line_column: int, hints: Mapping[str, str]
+) -> bool:
+    """Read a row as headers, with the next one if need be, or as symbols; return whether it is one of these."""
+    row = rows[number]
+    joined = join_rows(found.headers, row, hints)
+    better = count_understood(joined, hints) > count_understood(found.headers, hints)
+    if not found.units and (better or names_quantities(row, found.headers, hints)):
+        found.headers, found.follows = joined, number + 1
+        found.joined.append(number)
+        return True
+    deeper = None if found.units else _deeper(rows, number, found.headers, hints)
+    if deeper is not None:
+        found.headers, found.follows = deeper, number + 2
+        found.joined += [number, number + 1]
+        return True
+    if is_symbols_row(row, line_column):
+        found.notes.append(f"Row {number + 1} holds symbols: left out.")
+        found.follows = number + 1
+        return True
+    return False
+
+
 def _read_beneath(
     rows: Sequence[Sequence[str]], index: int, headers: tuple[str, ...], hints: Mapping[str, str]
 ) -> _Beneath:
     """Read the rows beneath a header row: further header rows, symbols, units and a numbering of the columns."""
     found = _Beneath(headers, (), index + 1, [], [])
     line_column = line_number_columns(headers, hints)[0]
-    for number in range(index + 1, min(index + 1 + MOST_HEADER_ROWS, len(rows))):
+    while found.follows < min(index + 1 + MOST_HEADER_ROWS, len(rows)):
+        number = found.follows
         row = rows[number]
         if is_numbering(row):
             found.notes.append(f"Row {number + 1} numbers the columns: left out.")
@@ -165,15 +217,9 @@ def _read_beneath(
             found.units = tuple(bare(cell) for cell in row)
             found.notes.append(f"Units in row {number + 1}.")
         elif any(cell.strip() for cell in row) and _no_number(row, found.headers, line_column):
-            joined = join_rows(found.headers, row, hints)
-            better = count_understood(joined, hints) > count_understood(found.headers, hints)
-            if not found.units and (better or names_quantities(row, found.headers, hints)):
-                found.headers = joined
-                found.joined.append(number)
-            elif is_symbols_row(row, line_column):
-                found.notes.append(f"Row {number + 1} holds symbols: left out.")
-            else:
-                break
+            if _join_beneath(found, rows, number, line_column, hints):
+                continue
+            break
         else:
             break
         found.follows = number + 1
@@ -199,7 +245,7 @@ def find_layout(rows: Sequence[Sequence[str]], *, file: str, hints: Mapping[str,
     """
     index, score = _best(rows, hints)
     if score < LINE_NUMBER_WEIGHT:
-        raise _refuse(file, index + 1, rows[index] if rows else (), score)
+        raise _refuse(file, rows, index, score, hints)
     _refuse_transposed(rows, index, hints, file)
     headers = tuple(cell.strip() for cell in rows[index])
     above = _with_group_above(rows, index, headers, hints)

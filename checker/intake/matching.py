@@ -3,16 +3,17 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Collection, Mapping, Sequence
+from collections.abc import Mapping, Sequence
 from functools import cache
 
 from checker.fields import Field, all_fields
 from checker.intake.case_names import split_case
 from checker.intake.planned import PlannedColumn
 from checker.intake.texts import fold_words, shown
+from checker.intake.unread_headers import easily_mistaken
 from checker.model import HeaderMatch
 
-__all__ = ["closest_field", "header_matches", "near_header_reason"]
+__all__ = ["closest_field", "header_matches", "near_header"]
 
 LIKENESS = 0.85
 SHORTEST_COMPARED = 5
@@ -52,12 +53,15 @@ def closest_field(header: str) -> Field | None:
     return found
 
 
-def near_header_reason(header: str, taken: Collection[str]) -> str:
-    """Return the sentence on a header that is nearly one of a field which no column carries yet, else an empty text."""
+def near_header(header: str) -> tuple[str, str]:
+    """Return the field that a header is nearly or seemingly one of, and the sentence that says so; else two blanks."""
+    name, why = easily_mistaken(header)
+    if name:
+        return name, why
     field = closest_field(header)
-    if field is None or field.name in taken:
-        return ""
-    return (
+    if field is None:
+        return "", ""
+    return field.name, (
         f"{shown(header)} is not matched, so it is not read; the closest field is {field.name} ({field.meaning}): "
         "if it is meant, name it in [columns] of the criteria or correct the header."
     )

@@ -30,7 +30,7 @@ REID = (
 _MISTAKEN = (
     (
         re.compile(
-            r"(?:max|maximum|maxi|largest|biggest|min|minimum|smallest) (?:(?:line|pipe|nominal|nom) )?(?:size|dia|dn|nps)|"
+            r"(?:max|maximum|maxi|largest|min|minimum|smallest) (?:(?:line|pipe|nominal|nom) )?(?:size|dia|dn|nps)|"
             r"(?:(?:line|pipe) )?size (?:max|maximum|min|minimum)"
         ),
         "size",

@@ -13,8 +13,8 @@ from checker.line_numbers.look_alikes import HYPHENS, IN_LATIN, INCH_MARKS, INVI
 
 __all__ = ["LONGEST_NUMBER", "folded_key", "folded_keys", "looser_key", "looser_keys", "plain_numbers"]
 
-#: What stands beyond is not looked at: no line number is that long.
-LONGEST_NUMBER = 400
+#: What stands beyond is not parsed: no line number is that long. Keys hold the whole of it.
+LONGEST_NUMBER = 200
 _PARTING = "\n"
 _MOST_PASSES = 6
 _SIGNS = str.maketrans({**dict.fromkeys(HYPHENS, "-"), **dict.fromkeys(INCH_MARKS, '"'), "\u2044": "/", "\u2215": "/"})
@@ -23,16 +23,16 @@ _ASCII_BLANKS = " \t\r\x0b\x0c\x1c\x1d\x1e\x1f"
 _BLANKS = re.compile(r"[^\S\n]+")
 _BLANK_AT_EDGE = re.compile(r"\A |(?<=[-/_.\n]) | (?=[-/_.\n]|\Z)")
 _REVISION = re.compile(
-    r"(?:[ _]*[\[(] ?REV(?:ISION)?[ .:-]*[A-Z0-9]{1,3} ?[\])]|[-_ ]+REV[ .:]*[A-Z0-9]{1,3})(?=\n|\Z)"
+    r"(?:[ _]{0,3}[\[(] ?REV(?:ISION)?[ .:-]{0,3}[A-Z0-9]{1,3} ?[\])]|[-_ ]{1,3}REV[ .:]{0,3}[A-Z0-9]{1,3})(?=\n|\Z)"
 )
 _KEPT_BLANK = re.compile(r" (?=\d)(?<=\d )| (?=[^\W\d_])(?<=[^\W\d_] )")
 
 
 def _joined(texts: Sequence[str]) -> str:
     joined = _PARTING.join(texts)
-    if joined.count(_PARTING) == len(texts) - 1 and max(map(len, texts)) <= LONGEST_NUMBER:
+    if joined.count(_PARTING) == max(0, len(texts) - 1):
         return joined
-    return _PARTING.join(" ".join(text[:LONGEST_NUMBER].split()) for text in texts)
+    return _PARTING.join(" ".join(text.split()) for text in texts)
 
 
 def _in_plain_signs(text: str) -> str:
@@ -65,7 +65,8 @@ def plain_numbers(texts: Sequence[str]) -> list[str]:
 
     Inch marks are ``"``, hyphens of every kind ``-``; blanks beside a delimiter are gone.
     """
-    text = _joined(texts)
+    longest = max(map(len, texts), default=0)
+    text = _joined(texts if longest <= LONGEST_NUMBER else [text[:LONGEST_NUMBER] for text in texts])
     signs = _in_plain_signs(text).upper()
     plain = _tidy_blanks(signs if signs.isascii() else _in_plain_signs(signs))
     while '""' in plain:

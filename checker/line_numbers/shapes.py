@@ -30,7 +30,7 @@ _SHAPES = {
     "suffix": r"\d{1,2}[A-Z]?|[A-Z]",
     "area": r"\d{1,4}[A-Z]?|[A-Z]\d?",
 }
-_SEQUENCE = r".*\d{3,}[A-Z]{0,2}|X{3,}|\d+"
+_SEQUENCE = r"[^\n]{0,12}\d{3,12}[A-Z]{0,2}|X{3,}|\d+"
 _MAY_BE_LEFT_OFF = ("insulation", "tracing", "suffix")
 _BEYOND_SEQUENCE = {"class": True, "insulation": True, "suffix": True, "area": False}
 

@@ -54,6 +54,23 @@ def _head(review: ReviewLike) -> dict[str, Any]:
         },
         "tally": {word: int(number) for word, number in review.tally.items()},
         "reading": _reading(review),
+        "completeness": _completeness(review),
+    }
+
+
+def _completeness(review: ReviewLike) -> dict[str, Any] | None:
+    """Return what list and drawings do not agree on; null where no drawings were given."""
+    found = review.completeness
+    if found is None:
+        return None
+    return {
+        "source": {"name": found.source.name, "sha256": found.source.sha256, "form": found.source.form},
+        "listed": found.listed,
+        "drawn": found.drawn,
+        "both": found.both,
+        "counts": dict(found.counts),
+        "items": [asdict(item) for item in found.items],
+        "rows_not_read": len(found.unread),
     }
 
 

@@ -82,15 +82,18 @@ def _questions(questions: Sequence[UnreadItem]) -> Iterator[str]:
 
 
 def _unmatched(reading: Reading) -> Iterator[str]:
+    """Yield the columns that are not read, those of which the same is said together."""
     asked = {item.text for item in reading.questions}
-    rest = [match for match in reading.unmatched if match.header not in asked]
-    for match in rest:
-        if match.remark:
-            said = f"{shortened(match.header, LONGEST_NAME)}: not read. {match.remark}"
-            yield from wrapped(said, first="  ? ", indent="    ")
-    plain = [match.header for match in rest if not match.remark]
-    if plain:
-        yield from wrapped(f"Columns of no field, not read: {_names(plain)}", first="  ", indent="    ")
+    said: dict[str, list[str]] = {}
+    for match in reading.unmatched:
+        if match.header not in asked:
+            said.setdefault(match.remark, []).append(match.header)
+    for remark, headers in said.items():
+        if remark.startswith(f"'{headers[0][:20]}"):
+            yield from wrapped(remark, first="  ? ", indent="    ")
+        else:
+            start = f"Columns not read, {remark}" if remark else "Columns not read"
+            yield from wrapped(f"{start}: {_names(headers)}", first="  ", indent="    ")
 
 
 def _names(names: Sequence[str]) -> str:

@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING, Any, Protocol
 import numpy as np
 from numpy.typing import NDArray
 
+from checker.completeness import Completeness
 from checker.model import CellRecord, HeaderMatch, HoldItem, RangeItem, UnreadItem
 from checker.review_model import (
     AssumptionItem,
@@ -132,6 +133,8 @@ class ReviewLike(Protocol):
     def hold_items(self) -> tuple[HoldItem, ...]: ...
     @property
     def unread_items(self) -> tuple[UnreadItem, ...]: ...
+    @property
+    def completeness(self) -> Completeness | None: ...
     @property
     def deleted_items(self) -> tuple[UnreadItem, ...]: ...
     @property

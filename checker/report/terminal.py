@@ -19,6 +19,7 @@ __all__ = ["summary"]
 
 WORST = 5
 LONGEST_REASON = 160
+MOST_NAMED = 3
 
 
 def summary(review: ReviewLike, files: WrittenFiles | None) -> str:
@@ -41,11 +42,28 @@ def _head(review: ReviewLike) -> Iterator[str]:
     yield from wrapped(review.coverage_text)
     yield ""
     yield from reading_summary(review)
+    yield from _completeness(review)
     yield from wrapped(review.recommendation_text, first="Recommendation: ", indent="  ")
     for reason in review.reasons:
         yield from wrapped(reason, first="  - ", indent="    ")
     for fault in review.faults:
         yield from wrapped(f"A rule failed; what it judges is not checked: {fault}", first="  - ", indent="    ")
+    yield ""
+
+
+def _completeness(review: ReviewLike) -> Iterator[str]:
+    """Yield what list and drawings do not agree on, the first of each kind by name."""
+    found = review.completeness
+    if found is None:
+        return
+    yield "Completeness against the drawings"
+    yield from wrapped(found.sentence, first="  ", indent="    ")
+    for kind, number in found.counts.items():
+        items = found.of_kind(kind)[:MOST_NAMED]
+        for item in items:
+            yield from wrapped(item.sentence, first="  - ", indent="    ")
+        if number > MOST_NAMED:
+            yield f"    and {count(number - MOST_NAMED)} more {kind}"
     yield ""
 
 

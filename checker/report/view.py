@@ -174,6 +174,7 @@ def _sections(review: ReviewLike) -> tuple[Section, ...]:
         ("recommendation", "Recommendation and coverage", "recommendation"),
         ("pictures", "The list at a glance", "pictures"),
         ("reading", "How the list was read", "reading"),
+        ("completeness", "Completeness against the drawings", "completeness"),
         ("exceptions", "Exceptions by line: what must be done", "exceptions"),
         ("approved", "Approved deviations", "approved"),
         ("not-checked", "What was not checked, and why", "not_checked"),
@@ -185,7 +186,9 @@ def _sections(review: ReviewLike) -> tuple[Section, ...]:
         ("rules", "Rules and how often each gave which outcome", "rules"),
         ("results", "Results of every line", "results"),
     ]
-    shown = [entry for entry in entries if entry[0] != "approved" or review.approved or len(review.deviations)]
+    needless = set() if review.approved or len(review.deviations) else {"approved"}
+    needless |= {"completeness"} if review.completeness is None else set()
+    shown = [entry for entry in entries if entry[0] not in needless]
     return tuple(
         Section(number, anchor, title, f"section_{template}.html.j2")
         for number, (anchor, title, template) in enumerate(shown, start=1)

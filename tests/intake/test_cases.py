@@ -113,6 +113,10 @@ def test_a_contradictory_or_open_flow_is_not_no_flow(tmp_path: Path) -> None:
         ("intermittent max", "intermittent max", CaseKind.INTERMITTENT),
         ("50 % of normal", "50 % of normal", CaseKind.CONTINUOUS), ("50% of Normal", "50 % of normal", CaseKind.CONTINUOUS),
         ("Normal +10 %", "normal + 10 %", CaseKind.CONTINUOUS), ("Normal \u221210 %", "normal - 10 %", CaseKind.CONTINUOUS),
+        ("Shut-in", "shut-in", CaseKind.NO_FLOW), ("N.N.F.", "n n f", CaseKind.NO_FLOW),
+        ("Settle out", "settle-out", CaseKind.NO_FLOW), ("Normally nil", "normally nil", CaseKind.NO_FLOW),
+        ("maxi", "maximum", CaseKind.CONTINUOUS), ("Mín.", "minimum", CaseKind.CONTINUOUS),
+        ("Démarrage", "start-up", CaseKind.INTERMITTENT), ("Full vacuum", "full vacuum", CaseKind.MECHANICAL_ONLY),
         ("min", "minimum", CaseKind.CONTINUOUS), ("Design flow", "design", CaseKind.MECHANICAL_ONLY),
     ],
 )  # fmt: skip

@@ -85,8 +85,6 @@ def test_header_is_understood(header: str, field: str, unit: str, case: str) -> 
     "header",
     [
         "Max. Size (inch)",
-        "TEMP0C",
-        "管线号",
         "Peak Load [kW]",
         "Design density [kg/m3]",
         "RVP",

@@ -30,7 +30,7 @@ LAYOUTS = [
     ),
     (
         [["Line No", "Press.", "", "Temp.", ""], ["", "Oper", "Design", "Oper", "Design"]],
-        ["Line No", "Oper Press.", "Design Press.", "Oper Temp.", "Design Temp."],
+        ["Line No", "Press. Oper", "Press. Design", "Temp. Oper", "Temp. Design"],
         3,
     ),
     (
@@ -49,6 +49,31 @@ LAYOUTS = [
         ["Line No", "Mass flow", "Operating pressure"],
         5,
     ),
+    (
+        # Three rows, none of which repeats a merged name.
+        [
+            ["Line No", "Size", "Process conditions", "", "", "", "Mechanical", ""],
+            ["", "", "Normal", "", "Maximum", "", "Design", ""],
+            ["", "", "Press", "Temp", "Press", "Temp", "Press", "Temp"],
+        ],
+        [
+            "Line No",
+            "Size",
+            "Normal Press",
+            "Normal Temp",
+            "Maximum Press",
+            "Maximum Temp",
+            "Mechanical Design Press",
+            "Mechanical Design Temp",
+        ],
+        4,
+    ),
+    (
+        [["Line No", "Size", "Minimum", "Normal"], ["", "", "Temp", "Temp"], ["A", "B", "C", "D"]],
+        ["Line No", "Size", "Minimum Temp", "Normal Temp"],
+        4,
+    ),
+    ([["", "", ""], ["", "Line No", "Size"]], ["", "Line No", "Size"], 3),
     ([["Project", "X"], ["Line No", "Size (NPS)", "Flow (kg/h)"]], ["Line No", "Size (NPS)", "Flow (kg/h)"], 3),
 ]
 
@@ -75,6 +100,24 @@ def test_transposed_table_is_refused_with_what_to_do() -> None:
     rows = [["Line No", "P-1", "P-2"], ["Size (NPS)", "6", "4"], ["Flow (kg/h)", "1", "2"], ["Temp (C)", "20", "30"]]
     with pytest.raises(InputError, match=r"transposed.*Turn it"):
         find_layout(rows, file="list.csv", hints={})
+
+
+def test_transposed_table_without_a_line_number_is_refused_as_transposed() -> None:
+    rows = [["Stream", "S1", "S2"], ["Size (NPS)", "6", "8"], ["Flow (kg/h)", "1", "2"], ["Temp (C)", "1", "2"]]
+    with pytest.raises(InputError, match=r"transposed: 4 headers stand in column 1.*Turn it"):
+        find_layout(rows, file="list.csv", hints={})
+
+
+def test_line_number_column_without_a_header_is_named() -> None:
+    with pytest.raises(InputError, match=r"no line-number column.*column 1, without a header, if it holds the numbers"):
+        find_layout([["", "Size", "Press (barg)", "Temp (C)"], ["P-1", "6", "5", "20"]], file="list.csv", hints={})
+
+
+def test_headers_are_looked_for_in_the_first_forty_rows() -> None:
+    header = ["Line No", "Size", "Press (barg)"]
+    assert find_layout([["x"]] * 39 + [header], file="list.csv", hints={}).header_row == 40
+    with pytest.raises(InputError, match="none of the first 40 rows"):
+        find_layout([["x"]] * 40 + [header], file="list.csv", hints={})
 
 
 def test_every_header_is_accounted_for(tmp_path: Path) -> None:

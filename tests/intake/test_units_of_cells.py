@@ -102,18 +102,18 @@ def test_unknown_unit_refuses_the_column_not_the_list(tmp_path: Path) -> None:
 
 
 @pytest.mark.parametrize(
-    ("header", "cell", "si"), [("Z", "0.92", 0.92), ("Cp/Cv", "1.4", 1.4), ("Vapour fraction", "0.2", 0.2)]
+    ("header", "cell", "si"), [("Z", "0.92", 0.92), ("Cp/Cv", "1.4", 1.4), ("Vapour mass fraction", "0.2", 0.2)]
 )
 def test_dimensionless_needs_no_unit(tmp_path: Path, header: str, cell: str, si: float) -> None:
     listed = read(tmp_path, one_column(header, cell))
-    name = {"Z": "compressibility", "Cp/Cv": "heat_capacity_ratio", "Vapour fraction": "vapour_fraction"}[header]
+    name = {"Z": "compressibility", "Cp/Cv": "heat_capacity_ratio", "Vapour mass fraction": "vapour_fraction"}[header]
     assert listed.number(name)[0] == si
 
 
 def test_percent(tmp_path: Path) -> None:
-    assert read(tmp_path, one_column("Vapour fraction [%]", "20")).number("vapour_fraction")[0] == pytest.approx(0.2)
+    assert read(tmp_path, one_column("Vapour mass fraction [%]", "20")).number("vapour_fraction")[0] == pytest.approx(0.2)
     assert read(tmp_path, one_column("Vapour fraction", "20 wt%")).number("vapour_fraction")[0] == pytest.approx(0.2)
-    refused = read(tmp_path, one_column("Vapour fraction", "20"))
+    refused = read(tmp_path, one_column("Vapour mass fraction", "20"))
     assert refused.gap("vapour_fraction")[0] == Gap.REFUSED
 
 

@@ -7,7 +7,7 @@ from pathlib import Path
 
 import openpyxl
 import pytest
-from hypothesis import HealthCheck, given, settings
+from hypothesis import given
 from hypothesis import strategies as st
 
 from checker.completeness import Completeness, compare, read_drawing_lines
@@ -193,7 +193,6 @@ def test_near_numbers_are_found_among_thousands_and_each_is_paired_once() -> Non
 
 
 @given(st.lists(st.text(alphabet='0123456"-PAO \u2011\u0410/()', min_size=1, max_size=14), max_size=8), st.randoms())
-@settings(suppress_health_check=[HealthCheck.function_scoped_fixture])
 def test_any_numbers_are_paired_at_most_once_and_in_any_order(numbers: list[str], shuffler: random.Random) -> None:
     first, second = numbers[::2], numbers[1::2]
     pairs = {(first[pair.first], second[pair.second]) for pair in near_pairs(first, second)}

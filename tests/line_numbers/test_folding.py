@@ -88,9 +88,11 @@ def test_a_number_has_the_same_key_whatever_stands_beside_it(texts: list[str]) -
     assert plain_numbers(texts) == [plain_numbers((text,))[0] for text in texts]
 
 
-def test_a_long_text_is_cut_and_folded_all_the_same() -> None:
-    assert len(folded_key("9" * 100_000)) < 1_000
-    assert folded_keys([]) == []
+def test_long_numbers_keep_their_own_keys_and_are_parsed_in_part() -> None:
+    one, other = "9" * 10_000 + "1", "9" * 10_000 + "2"
+    assert folded_key(one) != folded_key(other)
+    assert len(plain_numbers([one])[0]) < 1_000
+    assert folded_keys([]) == looser_keys([]) == plain_numbers([]) == []
 
 
 @pytest.mark.parametrize(
