@@ -11,7 +11,7 @@ from checker.intake.case_names import split_case, split_mechanical_case
 from checker.intake.header_splits import Split, splits, without_marks
 from checker.intake.planned import FLOWS
 from checker.intake.texts import fold_words, key_of
-from checker.intake.unit_words import is_unit_text, size_basis, unit_or_refusal
+from checker.intake.unit_words import is_unit_text, size_basis, unit_in_cell, unit_or_refusal
 
 __all__ = ["HeaderReading", "read_header", "says_reid", "unit_in_header", "unit_of_name", "units_in_header"]
 
@@ -120,14 +120,15 @@ def _per_length(name: str, unit: str, field: Field) -> str:
     return unit if whole else f"{unit}/{match[1].replace(' ', '')}"
 
 
-def _fits(field: Field, unit: str) -> bool:
+def _fits(field: Field, unit: str, *, in_table: bool = False) -> bool:
+    """Return whether a field may have a unit; with `in_table` only spellings of the table count, without a search."""
     if not unit:
         return True
     if field.kind == "size":
         return bool(size_basis(unit))
     if field.kind == "text":
         return False
-    reading = unit_or_refusal(unit, field.dimension)
+    reading = (unit_in_cell if in_table else unit_or_refusal)(unit, field.dimension)
     return not isinstance(reading, str) or "gauge or absolute" in reading
 
 
@@ -150,7 +151,8 @@ def _understood(split: Split) -> HeaderReading | None:
     for field in fields:
         if mine[field.name] != unit and _fits(field, mine[field.name]):
             return HeaderReading((field,), mine[field.name], case)
-    fitting = tuple(field for field in fields if _fits(field, unit))
+    fitting = tuple(field for field in fields if _fits(field, unit, in_table=True))
+    fitting = fitting or tuple(field for field in fields if _fits(field, unit))
     return HeaderReading(fitting, unit, case) if fitting else None
 
 

@@ -228,7 +228,7 @@ def test_a_relief_load_below_the_normal_flow_is_none(tmp_path: Path) -> None:
 
 MIXTURE = (
     "Line No,Service,Phase,Size (NPS),Sch,Material,Flow [kg/h],Press [bara],Vap. Fraction (mass),"
-    "Outlet vapour fraction,"
+    "Outlet vapour fraction (mass),"
     "Liq. Density [kg/m3],Liq. Viscosity [cP],Vap. Density [kg/m3],Vap. Viscosity [cP],Surf. Tension [mN/m],"
     "Length [m],Eq. Length [m],Elev. Change [m]"
 )
@@ -255,7 +255,7 @@ def test_two_phases_must_both_be_there(
 def test_vapour_at_the_outlet_contradicts_a_liquid_and_liquid_there_a_gas(tmp_path: Path) -> None:
     row = "A,pump discharge,{},6,40,100,{},0.9,carbon steel,{}"
     for phase, density, outlet in (("liquid", 997, 0.9), ("gas", 5, 0.2)):
-        done = reviewed(tmp_path, f"{LIQUID},Outlet vapour fraction", row.format(phase, density, outlet))
+        done = reviewed(tmp_path, f"{LIQUID},Outlet vapour fraction (mass)", row.format(phase, density, outlet))
         assert "meets" not in set(done.outcomes.query("rule not in @WHATEVER_THE_PHASE")["outcome"])
 
 
