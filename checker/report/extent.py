@@ -25,7 +25,16 @@ def pages_worth(review: ReviewLike) -> int:
     breaches = len(breaches_of(review.exceptions))
     cards = min(breaches, ON_PAPER.details)
     compact = min(breaches - cards, ON_PAPER.compact)
-    others = (review.not_checked_groups, review.hold_items, review.unread_items, review.approved)
+    others = (
+        review.not_checked_groups,
+        review.hold_items,
+        review.unread_items,
+        review.approved,
+        review.range_items,
+        review.deleted_items,
+        review.matching,
+        () if review.completeness is None else review.completeness.items,
+    )
     rows = sum(min(len(table), ON_PAPER.rows) for table in others)
     results = min(review.lines_count, ON_PAPER.results)
     lists = cards / CARDS_A_PAGE + compact / COMPACT_A_PAGE + rows / ROWS_A_PAGE + results / RESULTS_A_PAGE

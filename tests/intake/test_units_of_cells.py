@@ -111,7 +111,9 @@ def test_dimensionless_needs_no_unit(tmp_path: Path, header: str, cell: str, si:
 
 
 def test_percent(tmp_path: Path) -> None:
-    assert read(tmp_path, one_column("Vapour mass fraction [%]", "20")).number("vapour_fraction")[0] == pytest.approx(0.2)
+    assert read(tmp_path, one_column("Vapour mass fraction [%]", "20")).number("vapour_fraction")[0] == pytest.approx(
+        0.2
+    )
     assert read(tmp_path, one_column("Vapour fraction", "20 wt%")).number("vapour_fraction")[0] == pytest.approx(0.2)
     refused = read(tmp_path, one_column("Vapour mass fraction", "20"))
     assert refused.gap("vapour_fraction")[0] == Gap.REFUSED
