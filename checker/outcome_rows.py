@@ -233,7 +233,7 @@ def _limit_shown(rule: Rule, limit: float) -> str:
 def exceeded(rule: Rule, judged: Judged, values: Values, line_case: int) -> str:
     """Return in a sentence by how much a limit is passed."""
     if rule.sense == "condition":
-        return f"no: {calculation_text(rule, values, line_case)}"
+        return calculation_text(rule, values, line_case)
     number, bound = float(judged.value[line_case]), float(judged.limit[line_case])
     words = "short of" if rule.sense == "at least" else "over"
     share = abs(number - bound) / abs(bound) if bound else math.inf
