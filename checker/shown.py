@@ -83,7 +83,6 @@ _COMPUTED: dict[str, tuple[str, str, str]] = {
     "temperature_second": ("temperature", "degC", "the temperature it is held against"),
     "saturation_temperature": ("temperature", "degC", "saturation temperature"),
     "saturation_temperature_design": ("temperature", "degC", "saturation temperature at the design pressure"),
-    "flow_ratio": ("dimensionless", "-", "ratio of the flows of two cases"),
     "flow_difference": ("dimensionless", "-", "relative difference of the row's flows"),
     "flow_least": ("mass flow", "kg/h", "least of the row's flows as mass"),
     "flow_most": ("mass flow", "kg/h", "greatest of the row's flows as mass"),
@@ -94,6 +93,7 @@ _COMPUTED: dict[str, tuple[str, str, str]] = {
     "density_of_liquid": ("density", "kg/m3", "density of the liquid"),
     "viscosity_judged": ("viscosity", "cP", "viscosity, of two phases the one that is not usual"),
     "hold_fields": ("", "", "the fields on HOLD"),
+    "outside_diameter_of_size": ("diameter", "mm", "outside diameter of the nominal size"),
     "line_number_text": ("", "", "the line number"),
     "look_alike_said": ("", "", "which number it looks like"),
     "number_mismatch_said": ("", "", "where number and columns differ"),
@@ -102,6 +102,7 @@ _COMPUTED: dict[str, tuple[str, str, str]] = {
         (
             "pressure_rank_said", "temperature_rank_said", "gas_density_said", "liquid_density_said", "viscosity_said",
             "gauge_density_said", "gauge_velocity_said", "zero_flow_said", "saturation_said", "size_basis_said",
+            "case_order_said",
         ),
         ("", "", "what agrees or contradicts"),
     ),

@@ -31,6 +31,13 @@ _INVERSE = re.compile(rf"(?<=[\w)])(?:\s*[·.*]\s*|\s+)({_LETTER}+)\^?-([123])(?
 _PRODUCT_DOT = re.compile(rf"(?<=[^\W_)])[·.*](?={_LETTER}|\()|(?<=\))[·.*](?={_LETTER}|\()")
 _REFERENCE_APART = re.compile(r"\s*[_,]\s*(?=\(?(?:g|a|gauge|gage|abs|absolute)\)?$)", re.IGNORECASE)
 _STROKE = re.compile(r"(?<=[^\W_])_(?=[^\W\d_])")
+_GAUGE_WORDS = r"rel(?:ati[fv][aeo]?s?)?|eff(?:ecti(?:f|ve))?|man(?:om(?:[eé]tri(?:que|c[ao]))?)?|ü(?:berdruck)?|ue"
+_OF_PRESSURE = re.compile(
+    rf"(?P<unit>m?bar|[kmh]?pa|psi|(?:kgf?|kp)\s*/\s*cm\s*2)(?:[\s.,(\[_-]+(?:(?:{_GAUGE_WORDS})|(?P<absolute>absolu(?:e|t[aeo]?)?s?"
+    r"))|(?<=2)[\s(\[]*(?-i:M))[\s.)\]]*",
+    re.IGNORECASE,
+)
+"""A pressure with a French, Spanish or German word for gauge or absolute, parted from it: ``barrel`` is no pressure."""
 _WORDS = {
     "h": "hour hours hr hrs", "min": "minute minutes mins", "s": "second seconds sec secs", "d": "day days",
     "L": "litre litres liter liters ltr ltrs lit", "kg": "kilogram kilograms kilogramme kgs kilo kilos",
@@ -68,6 +75,8 @@ def _folded(text: str) -> str:
     folded = folded.replace("deg_", "deg").replace("°", "deg").replace("**", "").replace("degdeg", "deg")
     folded = _INVERSE.sub(lambda match: f"/{match[1]}{match[2] if match[2] != '1' else ''}", folded)
     folded = _PER.sub("/", folded).replace("^", "")
+    pressure = _OF_PRESSURE.fullmatch(folded)
+    folded = f"{pressure['unit']}{'a' if pressure['absolute'] else 'g'}" if pressure else folded
     folded = _STROKE.sub("/", _REFERENCE_APART.sub("", folded))
     folded = _PRODUCT_DOT.sub("", folded)
     return in_latin(re.sub(r"[\[\]{}().\s]", "", folded))

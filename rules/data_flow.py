@@ -45,7 +45,7 @@ def _gross(*, value: FloatArray, flow_difference: FloatArray) -> BoolArray:
     applies=_stated_twice,
     calculation=(
         "m, Q rho and standard volume x M of the row are {flow_least} and {flow_most}, {flow_difference} of the mass"
-        " flow apart; at most 0.02"
+        " flow apart (of the other where it is zero); at most 0.02"
     ),
     shall_where=_gross,
 )

@@ -34,9 +34,9 @@ def _lasting(case_kind: NDArray[np.int8]) -> BoolArray:
 
 
 def _design_pressure_passed(
-    *, value: FloatArray, pressure_design_below: BoolArray, case_kind: NDArray[np.int8]
+    *, value: FloatArray, pressure_design_passed: BoolArray, case_kind: NDArray[np.int8]
 ) -> BoolArray:
-    return pressure_design_below & _lasting(case_kind)
+    return pressure_design_passed & _lasting(case_kind)
 
 
 def _design_temperature_passed(
@@ -57,7 +57,7 @@ def _design_temperature_passed(
     shall_where=_design_pressure_passed,
 )
 def pressure_rank(*, pressure_rank_broken: FloatArray, pressure_rank_said: Coded) -> FloatArray:
-    """Contradict where the design pressure is below an operating one, or the columns of a quantity are out of order.
+    """Contradict where an operating pressure is outside the design pressures, or columns of a quantity out of order.
 
     A lasting case above the design pressure is a `shall`; a relief, start-up or other occasional one is a `should`, for
     codes allow a variation with the owner's approval (ASME B31.3, 302.2.4). Minimum, normal and maximum are held
@@ -115,11 +115,8 @@ def pressure_of_test(
     sense="condition",
     source=Source("common practice", clause="a maximum is not below normal, a minimum not above it"),
     applies=_flows_ordered,
-    calculation=(
-        "maximum at least normal, normal at least minimum: this case's flow {flow_mass} is {flow_ratio} times that of"
-        " the case beside it"
-    ),
+    calculation="maximum at least normal, normal at least minimum: {case_order_said}",
 )
-def case_order(*, case_order_broken: FloatArray) -> FloatArray:
+def case_order(*, case_order_broken: FloatArray, case_order_said: Coded) -> FloatArray:
     """Contradict where a maximum flow is below the line's normal or minimum flow, or a minimum above them."""
     return case_order_broken

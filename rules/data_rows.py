@@ -10,6 +10,7 @@ from checker.ruling.contract import Source, rule
 from checker.ruling.tristate import TriState, all_of
 
 FloatArray = NDArray[np.float64]
+BoolArray = NDArray[np.bool_]
 
 
 def _temperatures(*, temperature_stated: TriState, state_told: TriState) -> TriState:
@@ -26,6 +27,10 @@ def _on_hold_with_revision(*, hold_with_revision: TriState) -> TriState:
 
 def _sizes_with_diameter(*, size_told: TriState) -> TriState:
     return size_told
+
+
+def _of_another_size(*, value: FloatArray, size_is_another: BoolArray) -> BoolArray:
+    return size_is_another
 
 
 @rule(
@@ -81,16 +86,23 @@ def aged_hold(*, hold_older: FloatArray, hold_fields: Coded) -> FloatArray:
     id="nominal-size-basis",
     title="Basis of the nominal size",
     on_data=True,
-    force="shall",
+    force="should",
     sense="condition",
-    source=Source("ASME B36.10M", "2004", "outside diameter by NPS and DN; within 2 %, common practice"),
+    source=Source(
+        "ASME B36.10M", "2004", "outside diameter by NPS and DN; within 1 % or 0.5 mm, ISO 4200 too, common practice"
+    ),
     applies=_sizes_with_diameter,
-    calculation="size {size} beside outside diameter {outside_diameter_listed}: {size_basis_said}",
+    calculation=(
+        "size {size} ({outside_diameter_of_size} outside) beside outside diameter {outside_diameter_listed}:"
+        " {size_basis_said}"
+    ),
+    shall_where=_of_another_size,
 )
 def nominal_size_basis(*, size_basis_contradicts: FloatArray, size_basis_said: Coded) -> FloatArray:
-    """Contradict where the outside diameter of the row shows that NPS and DN are mistaken for each other.
+    """Contradict where the outside diameter of the row is not that of its nominal size, or that of the other basis.
 
-    Without an outside diameter a size that stands on both bases cannot be told apart here; the intake refuses columns
-    of mixed bases.
+    A mistaken basis, or a diameter more than 3 % from that of the size, is a `shall`; what is nearer may be pipe of
+    another standard. Without an outside diameter a size that stands on both bases cannot be told apart here; the
+    intake refuses columns of mixed bases.
     """
     return size_basis_contradicts

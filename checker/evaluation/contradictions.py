@@ -43,10 +43,13 @@ def said(otherwise: str, *choices: tuple[BoolArray, str]) -> Coded:
 
 
 def asked(*gaps: CodeArray) -> BoolArray:
-    """Return True where the list has every one of these columns and the cell does not say not applicable."""
+    """Return True where the list has every one of these columns.
+
+    A cell that says not applicable is a gap like a blank one: it takes no value out of a comparison.
+    """
     held = np.ones(gaps[0].shape, dtype=np.bool_)
     for gap in gaps:
-        held &= ~np.isin(gap, (Gap.NO_COLUMN, Gap.NOT_APPLICABLE))
+        held &= gap != Gap.NO_COLUMN
     return held
 
 

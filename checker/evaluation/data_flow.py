@@ -56,8 +56,8 @@ def flows_of_a_row(
 ) -> Named:
     """Return by how much the flows of one row differ: mass, volume x density, standard volume x molar mass.
 
-    The difference is taken of the mass flow, where the row states none of the larger of the others; flows that are
-    all zero do not differ.
+    The difference is taken of the mass flow, where the row states none, or zero, of the larger of the others; flows
+    that are all zero do not differ.
     """
     flows = np.stack([flow_mass_listed, flow_volume_listed * density_stated, flow_standard_listed * molar_mass])
     gaps = np.stack([flow_mass_gap, flow_volume_gap, flow_standard_gap])
@@ -68,7 +68,7 @@ def flows_of_a_row(
     with np.errstate(all="ignore"):
         of = np.where(given[0], flow_mass_listed, most)
         from_mass = np.maximum(np.abs(most - of), np.abs(of - least))
-        share = np.where(most == least, 0.0, from_mass / of)
+        share = np.where(most == least, 0.0, from_mass / np.where(of == 0.0, most, of))
     return {
         "flows_stated_twice": _two_given(flow_mass_gap, flow_volume_gap, flow_standard_gap),
         "flow_difference": np.where(lost, np.nan, share),
@@ -97,7 +97,7 @@ def standard_volume(
         apart = np.abs(flow_volume_listed * density_stated / flow_mass_listed - 1.0) > FLOWS_DIFFER_GROSSLY
         pattern = (volume >= STANDARD_MOLAR_VOLUME[0]) & (volume <= STANDARD_MOLAR_VOLUME[1])
         nothing = (flow_mass_listed == 0.0) & (flow_volume_listed == 0.0)
-    unknown = np.isnan(volume) | (pattern & np.isnan(density_stated))
+    unknown = ~np.isfinite(volume) | (pattern & np.isnan(density_stated))
     both = all_of(_two_given(flow_mass_gap, flow_volume_gap), asked(molar_mass_gap), ~nothing)
     return {
         "standard_may_be_taken": all_of(is_code(phase, Phase.GAS), both),

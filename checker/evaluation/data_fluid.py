@@ -12,13 +12,12 @@ from numpy.typing import NDArray
 
 from checker.criteria.criteria import Criteria
 from checker.evaluation.contradictions import above, asked, below, contradiction, said
-from checker.evaluation.gaps import given_state
 from checker.evaluation.identity import LEAST_LIQUID_DENSITY
 from checker.evaluation.provider import provider
 from checker.fluid.gas_density import GAS_CONSTANT, GREATEST_GAS_DENSITY, gas_density
 from checker.fluid.water_viscosity import liquid_water_viscosity
 from checker.model import Gap, Phase
-from checker.ruling.tristate import NO, UNKNOWN, YES, all_of, is_code
+from checker.ruling.tristate import UNKNOWN, YES, all_of, is_code
 
 __all__ = ["PROVIDERS"]
 
@@ -269,7 +268,7 @@ def gauge_by_velocity(
     Where the list has no density column a velocity goes by 1 / P. Up to 5 bar absolute: another bore or temperature may
     look like one atmosphere above that.
     """
-    stated = (density_gap == Gap.NO_COLUMN) & (given_state(velocity_stated_gap) != NO)
+    stated = (density_gap == Gap.NO_COLUMN) & asked(velocity_stated_gap)
     with np.errstate(all="ignore"):
         stated &= ~(pressure > VELOCITY_TELLS_UP_TO)
         velocities = [

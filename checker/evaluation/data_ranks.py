@@ -19,7 +19,7 @@ from checker.evaluation.contradictions import (
     order_of_cases,
     said,
 )
-from checker.evaluation.gaps import given_state, is_open
+from checker.evaluation.gaps import is_open
 from checker.evaluation.provider import provider
 from checker.model import CaseKind, Coded, Gap
 from checker.ruling.tristate import NO, UNKNOWN, YES
@@ -33,6 +33,8 @@ IntArray = NDArray[np.int32]
 Named = dict[str, Any]
 
 TEST_FACTOR = 1.5
+#: Unit in which a flow is named, and what turns its SI value into it: mass, volume, standard volume (0 degC).
+_FLOW_UNITS = (("kg/h", 3600.0), ("m3/h", 3600.0), ("Nm3/h", 3600.0 * 0.0224139696))
 _LIQUID_TESTS = frozenset({"h", "hydro", "hydrostatic", "hydrotest", "hydraulic", "water", "wet", "hydro test"})
 _OTHER_TESTS = frozenset(
     {"p", "pneumatic", "air", "nitrogen", "s", "service", "o", "none", "in service", "initial service", "vacuum"}
@@ -55,32 +57,52 @@ def _order_by_columns(
 
 def pressure_rank(
     *,
+    criteria: Criteria,
     pressure: FloatArray,
     pressure_gap: CodeArray,
     pressure_design: FloatArray,
     pressure_design_gap: CodeArray,
+    pressure_design_minimum: FloatArray,
+    pressure_design_minimum_gap: CodeArray,
     case: Coded,
     case_kind: CodeArray,
     case_columns: frozenset[tuple[str, str]],
     line: IntArray,
 ) -> Named:
-    """Return whether the design pressure is below an operating one, or minimum, normal and maximum are out of order.
+    """Return whether an operating pressure is outside the design pressures, or minimum, normal, maximum out of order.
 
-    Every case of a line is held against its design pressure but those of a test or of the design itself.
+    Every case of a line is held against its design pressures but those of a test or of the design itself. A lowest
+    design pressure is owed only below atmospheric pressure: blank there it leaves the rank open, elsewhere it does not.
     """
-    held = asked(pressure_gap, pressure_design_gap) & (case_kind != CaseKind.MECHANICAL_ONLY)
+    judged = case_kind != CaseKind.MECHANICAL_ONLY
+    held = asked(pressure_gap, pressure_design_gap) & judged
+    stated = (pressure_design_minimum_gap == Gap.GIVEN) | is_open(pressure_design_minimum_gap)
+    owed = stated | below(pressure, np.full(pressure.shape, criteria.atmosphere))
+    low = asked(pressure_gap, pressure_design_minimum_gap) & judged & owed
     order = _order_by_columns("pressure", pressure, case, case_columns, line)
     under = held & below(pressure_design, pressure)
-    unknown = (held & (np.isnan(pressure) | np.isnan(pressure_design))) | order.unknown
+    vacuum = low & below(pressure, pressure_design_minimum)
+    crossed = judged & below(pressure_design, pressure_design_minimum)
+    outside = under | vacuum | crossed
+    unknown = (held & np.isnan(pressure + pressure_design)) | order.unknown
+    unknown |= low & np.isnan(pressure + pressure_design_minimum)
     return {
-        "pressure_ranked": (held | order.compared).astype(np.int8),
-        "pressure_rank_broken": contradiction(under | order.found, unknown),
-        "pressure_design_below": under,
-        "pressure_first": np.where(under | ~order.found, pressure_design, pressure),
-        "pressure_second": np.where(under | ~order.found, pressure, order.reference),
+        "pressure_ranked": (held | low | crossed | order.compared).astype(np.int8),
+        "pressure_rank_broken": contradiction(outside | order.found, unknown),
+        "pressure_design_passed": outside,
+        "pressure_first": np.select(
+            [under, vacuum | crossed, order.found],
+            [pressure_design, pressure_design_minimum, pressure],
+            pressure_design,
+        ),
+        "pressure_second": np.select(
+            [under | vacuum, crossed, order.found], [pressure, pressure_design, order.reference], pressure
+        ),
         "pressure_rank_said": said(
             "in order",
             (under, "the design pressure is below the operating pressure"),
+            (vacuum, "the lowest design pressure is above the operating pressure"),
+            (crossed, "the lowest design pressure is above the design pressure"),
             (order.found, "minimum, normal and maximum are out of order, this case and the one beside it"),
         ),
     }
@@ -155,21 +177,42 @@ def case_order(
     )
     shape = case.codes.shape
     compared, found, told, held = (np.zeros(shape, dtype=np.bool_) for _ in range(4))
-    ratio = np.full(shape, np.nan)
-    for flows, gap in ways:
+    sentences = Coded(np.full(shape, -1, dtype=np.int32), ())
+    for (flows, gap), (unit, factor) in zip(ways, _FLOW_UNITS, strict=True):
         order = order_of_cases(flows, case, case_group)
         mine = order.compared & _in_group(gap != Gap.NO_COLUMN, np.isfinite(flows) | is_open(gap), case_group)
         compared |= mine
         found |= mine & order.found
         told |= mine & ~order.unknown
         held |= mine & is_open(gap)
-        with np.errstate(all="ignore"):
-            ratio = np.where(mine & (order.found | np.isnan(ratio)), flows / order.reference, ratio)
+        sentences = _flows_in_words(sentences, mine & order.found, flows * factor, order.reference * factor, unit)
     return {
         "flows_ordered": compared.astype(np.int8),
         "case_order_broken": contradiction(found, ~told | held),
-        "flow_ratio": ratio,
+        "case_order_said": Coded(
+            np.where(sentences.codes < 0, len(sentences.texts), sentences.codes).astype(np.int32),
+            (*sentences.texts, "in order"),
+        ),
     }
+
+
+def _pair_of_flows(mine: float, other: float, unit: str) -> str:
+    """Return two flows in words with as many figures as tell them apart."""
+    figures = next((each for each in (4, 6, 9) if f"{mine:.{each}g}" != f"{other:.{each}g}"), 15)
+    first, second = (f"{float(f'{flow:.{figures}g}'):.{figures}g}" for flow in (mine, other))
+    word = "below" if mine < other else "above"
+    return f"this case's flow of {first} {unit} is {word} the {second} {unit} of the case beside it"
+
+
+def _flows_in_words(before: Coded, found: BoolArray, flows: FloatArray, others: FloatArray, unit: str) -> Coded:
+    """Add a sentence for every pair of flows that is out of order and has none yet."""
+    codes = before.codes.copy()
+    places = np.flatnonzero(found & (codes < 0))
+    if not places.size:
+        return before
+    pairs, kind = np.unique(np.column_stack((flows[places], others[places])), axis=0, return_inverse=True)
+    codes[places] = kind.ravel() + len(before.texts)
+    return Coded(codes, before.texts + tuple(_pair_of_flows(mine, other, unit) for mine, other in pairs.tolist()))
 
 
 def _in_group(column: BoolArray, stated: BoolArray, group: IntArray) -> BoolArray:
@@ -207,12 +250,12 @@ def pressure_of_test(
     """Return the gauge test pressure and 1.5 times the gauge design pressure of a line tested with liquid by B31.3.
 
     Code and medium decide what is asked: a list that has no column for them has nothing to be held against. A test
-    medium in other words is not known. A line designed for vacuum alone is no matter of this factor.
+    medium in other words is not known, and a test pressure that is not applicable is a gap where the line is tested
+    with liquid. A line designed for vacuum alone is no matter of this factor.
     """
-    columns = (design_code_gap != Gap.NO_COLUMN) & (test_medium_gap != Gap.NO_COLUMN)
-    states = np.stack(
-        [given_state(pressure_test_gap), _by_text(design_code, _process_piping), _by_text(test_medium, _test_medium)]
-    )
+    columns = asked(pressure_test_gap, design_code_gap, test_medium_gap)
+    test = np.where(pressure_test_gap == Gap.GIVEN, YES, UNKNOWN)
+    states = np.stack([test, _by_text(design_code, _process_piping), _by_text(test_medium, _test_medium)])
     no = (states == NO).any(axis=0) | ~columns | (pressure_design <= criteria.atmosphere)
     known = (states == YES).all(axis=0)
     return {
@@ -227,7 +270,7 @@ PROVIDERS = (
         pressure_rank,
         "pressure_ranked",
         "pressure_rank_broken",
-        "pressure_design_below",
+        "pressure_design_passed",
         "pressure_first",
         "pressure_second",
         "pressure_rank_said",
@@ -241,6 +284,6 @@ PROVIDERS = (
         "temperature_second",
         "temperature_rank_said",
     ),
-    provider(case_order, "flows_ordered", "case_order_broken", "flow_ratio"),
+    provider(case_order, "flows_ordered", "case_order_broken", "case_order_said"),
     provider(pressure_of_test, "liquid_test_by_code", "pressure_test_gauge", "pressure_test_least"),
 )

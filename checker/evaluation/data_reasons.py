@@ -20,7 +20,7 @@ DATA_NEEDS: dict[str, Needs] = {
     "line_number_stated": Needs((), "the line has no number yet"),
     "phase_said": Needs(("phase",)),
     "water": Needs(("fluid", "service")),
-    "pressure_rank_broken": Needs(("pressure_design", "pressure")),
+    "pressure_rank_broken": Needs(("pressure_design", "pressure", "pressure_design_minimum")),
     "temperature_rank_broken": Needs(("temperature_design", "temperature_design_minimum", "temperature")),
     "case_order_broken": Needs(_FLOWS, "the flow of another case of the line is not given in the same way"),
     "liquid_test_by_code": Needs(
@@ -50,7 +50,7 @@ DATA_NEEDS: dict[str, Needs] = {
     "impossible": Needs(("temperature", "temperature_design")),
     "hold_with_revision": Needs(("revision",)),
     "hold_older": Needs(("revision",), "a revision of the list is neither letters nor a number, so none is the newest"),
-    "size_basis_contradicts": Needs(("size", "outside_diameter")),
+    "size_basis_contradicts": Needs(("size", "outside_diameter"), "the nominal size is none of ASME B36.10M"),
 }
 #: They hold a row against the phase it states, so that nothing meets where the row contradicts its phase.
 BY_PHASE = frozenset(

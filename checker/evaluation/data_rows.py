@@ -25,6 +25,9 @@ Named = dict[str, Any]
 
 HOTTEST = 1273.15
 SAME_DIAMETER = 0.02
+OF_SIZE_WITHIN, OF_SMALL_WITHIN, OTHER_STANDARD_WITHIN = 0.01, 0.0005, 0.03
+#: NPS and outside diameter where ISO 4200 series 1 is more than 1 % from ASME B36.10M.
+ISO_OUTSIDE = {2.5: 0.0761, 5.0: 0.1397}
 _LETTERS = re.compile(r"[A-Z]{1,2}")
 _NUMBER = re.compile(r"\d{1,3}")
 _PREFIX = re.compile(r"^(?:REV(?:ISION)?)[\s.:]*")
@@ -120,6 +123,21 @@ def _near(first: FloatArray, second: FloatArray, share: float) -> BoolArray:
         return np.asarray(np.abs(first / second - 1.0) <= share, dtype=np.bool_)
 
 
+def _is_of_size(diameter: FloatArray, size: FloatArray) -> BoolArray:
+    """Return True where a diameter is that of the nominal size: within 1 %, of small pipe within 0.5 mm.
+
+    ASME B36.10M, or where ISO 4200 (EN 10220, series 1) has another: DN 65 is 76.1 mm and DN 125 is 139.7 mm.
+    """
+    fits = np.zeros(size.shape, dtype=np.bool_)
+    other = np.full(size.shape, np.nan)
+    for nps, outside in ISO_OUTSIDE.items():
+        other[size == nps] = outside
+    for each in (_outside(size), other):
+        with np.errstate(invalid="ignore"):
+            fits |= np.abs(diameter - each) <= np.maximum(OF_SIZE_WITHIN * each, OF_SMALL_WITHIN)
+    return fits
+
+
 def size_basis(
     *,
     size: FloatArray,
@@ -128,24 +146,26 @@ def size_basis(
     outside_diameter_gap: CodeArray,
     first_of_row: CodeArray,
 ) -> Named:
-    """Return whether a size goes with the row's outside diameter on the other basis only; told once a row.
+    """Return whether a size goes with the row's outside diameter, and if not whether on the other basis; once a row.
 
-    NPS 40 beside 48.3 mm is DN 40; DN 6 beside 168.3 mm is NPS 6. Only numbers that are a size on both bases can be
-    mistaken: without an outside diameter nothing in the row says so.
+    NPS 40 beside 48.3 mm is DN 40; DN 6 beside 168.3 mm is NPS 6. Up to 3 % off it may be pipe of another standard
+    (EN 10255, JIS G 3452), so that it is no `shall`. Without an outside diameter nothing in the row says so.
     """
     mine = _outside(size)
-    fits = [
-        _near(outside_diameter_listed, _outside(other), SAME_DIAMETER)
-        & ~_near(outside_diameter_listed, mine, SAME_DIAMETER)
-        for other in _other_basis(size)
-    ]
+    off = ~_is_of_size(outside_diameter_listed, size) & np.isfinite(outside_diameter_listed + mine)
+    fits = [off & _near(outside_diameter_listed, _outside(other), SAME_DIAMETER) for other in _other_basis(size)]
     return {
         "size_told": all_of(first_of_row, asked(size_gap, outside_diameter_gap)),
-        "size_basis_contradicts": contradiction(fits[0] | fits[1], np.isnan(size + outside_diameter_listed)),
+        "size_basis_contradicts": contradiction(
+            off | fits[0] | fits[1], np.isnan(size + outside_diameter_listed) | np.isnan(mine)
+        ),
+        "size_is_another": fits[0] | fits[1] | (off & ~_near(outside_diameter_listed, mine, OTHER_STANDARD_WITHIN)),
+        "outside_diameter_of_size": mine,
         "size_basis_said": said(
             "they go together",
             (fits[0], "they go together when the number is a DN"),
             (fits[1], "they go together when the number is an NPS"),
+            (off, "that is not the outside diameter of this size"),
         ),
     }
 
@@ -155,5 +175,12 @@ PROVIDERS = (
     provider(row_holds, "row_on_hold"),
     provider(aged_hold, "hold_with_revision", "hold_older", "newest_revision"),
     provider(impossible_value, "temperature_stated", "impossible"),
-    provider(size_basis, "size_told", "size_basis_contradicts", "size_basis_said"),
+    provider(
+        size_basis,
+        "size_told",
+        "size_basis_contradicts",
+        "size_is_another",
+        "outside_diameter_of_size",
+        "size_basis_said",
+    ),
 )

@@ -47,8 +47,8 @@ def steam_and_water(
     """Return whether steam or water contradicts the saturation line.
 
     Steam colder than it boils is wet; saturated steam, or water and steam together, stand on the line within 3 K; water
-    hotter than it boils at the design pressure is steam; a saturated service needs a design temperature that is not
-    below saturation at its design pressure.
+    more than 3 K hotter than it boils at its operating pressure, or hotter than it boils at the design pressure, is
+    steam; a saturated service needs a design temperature that is not below saturation at its design pressure.
     """
     boils, boils_at_design = saturation_temperature(pressure), saturation_temperature(pressure_design)
     state = asked(pressure_gap, temperature_gap)
@@ -60,14 +60,15 @@ def steam_and_water(
     with np.errstate(invalid="ignore"):
         off = on_line & (np.abs(temperature - boils) > SATURATION_WITHIN)
         wet = gas & state & (temperature < boils - SATURATION_WITHIN)
+        flashing = liquid & state & (temperature > boils + SATURATION_WITHIN)
         as_degf = np.abs(_read_as_fahrenheit(temperature) - boils) <= SATURATION_WITHIN
     boiling = by_design & below(boils_at_design, temperature)
     weak = designed & below(temperature_design, boils_at_design)
-    unknown = ((gas & state) | on_line) & np.isnan(temperature + boils)
+    unknown = (((gas | liquid) & state) | on_line) & np.isnan(temperature + boils)
     unknown |= by_design & np.isnan(temperature + boils_at_design)
     unknown |= designed & np.isnan(temperature_design + boils_at_design)
-    judged = (gas & state) | on_line | by_design | designed
-    found = off | wet | boiling | weak
+    judged = ((gas | liquid) & state) | on_line | by_design | designed
+    found = off | wet | flashing | boiling | weak
     return {
         "saturation_asked": all_of(
             _perhaps_water(water, found), is_code(phase_said, *Phase), judged | (phase_said < 0)
@@ -80,6 +81,7 @@ def steam_and_water(
             (off & as_degf, "the temperature agrees with saturation when its number is read in degF"),
             (wet, "steam colder than it boils is wet"),
             (off, "saturated steam stands within 3 K of it"),
+            (flashing, "water more than 3 K hotter than it boils at its pressure is steam"),
             (boiling, "water is hotter than it boils at the design pressure"),
             (weak, "the design temperature of a saturated service is below saturation at its design pressure"),
         ),

@@ -210,7 +210,7 @@ def stated_difference(
     """Return the largest relative difference between the contractor's stated results and ours.
 
     NaN where one of the columns that the list has is blank, on HOLD or cannot be compared: one unread value may not
-    hide behind another that agrees.
+    hide behind another that agrees. A cell that says not applicable states nothing: what else the row states is judged.
     """
     pairs = (
         (velocity_stated, velocity_at_stated_pressure, given_state(velocity_stated_gap)),

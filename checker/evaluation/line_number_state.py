@@ -14,6 +14,7 @@ from checker.line_numbers.alike import why_alike
 from checker.line_numbers.folding import folded_keys
 from checker.line_numbers.pattern import NumberPattern, ParsedNumbers, parse_numbers
 from checker.line_numbers.roles import ListColumns, same_text
+from checker.line_numbers.service_tokens import ServiceTokens, service_tokens
 from checker.line_numbers.twins import doubled_rows, look_alikes
 from checker.model import Coded, Gap, base_case
 from checker.ruling.tristate import NO, UNKNOWN, YES
@@ -30,6 +31,7 @@ CodeArray = NDArray[np.int8]
 Named = dict[str, Any]
 
 MOST_EXPLAINED = 2_000
+CODED_SERVICE = "coded service"
 
 
 def number_columns(
@@ -97,13 +99,32 @@ def _compared(parsed: ParsedNumbers, role: str, columns: ListColumns) -> tuple[B
     return part.codes >= 0, column.codes >= 0, np.equal(tokens[part.codes], cells[column.codes])
 
 
-def number_against_columns(*, number_parsed: ParsedNumbers, number_columns: ListColumns) -> Named:
+def number_service_tokens(*, number_parsed: ParsedNumbers, number_columns: ListColumns) -> ServiceTokens:
+    """Return over the line cases whether a number's service token is the usual one of the service in its column.
+
+    For numbers that code the service (CW for cooling water); a token that repeats its column is held against that.
+    """
+    line, column = number_columns.line, number_columns.texts["service"].get("service")
+    nothing = Coded(np.full(line.shape, -1, dtype=np.int32), ())
+    if column is None or "service" in number_parsed.pattern.compared:
+        return service_tokens(nothing, nothing)
+    _, first = np.unique(line, return_index=True)
+    token = number_parsed.parts["service"]
+    fitting = Coded(np.where(number_parsed.fits, token.codes, -1).astype(np.int32), token.texts)
+    told, slip, usual = service_tokens(fitting, column.take(first.astype(np.int32)))
+    return ServiceTokens(told[line], slip[line], usual.take(line))
+
+
+def number_against_columns(
+    *, number_parsed: ParsedNumbers, number_columns: ListColumns, number_service_tokens: ServiceTokens
+) -> Named:
     """Return whether a part of the line number disagrees with its column; told of a line only where all can be told.
 
     ``number_against_columns`` is 1 where a part disagrees, 0 where every part that the number states agrees, -1 where
     the number does not fit the list's pattern, a cell is missing, or what is the class in the numbers is in doubt.
     ``number_pattern_known`` is 1 where parts of the list's numbers can be held against columns, 0 where there are no
-    such parts, -1 where it is in doubt. ``number_parts_differing`` has one bit a part, in the pattern's order.
+    such parts, -1 where it is in doubt. ``number_parts_differing`` has one bit a part, in the pattern's order, and
+    beyond them one for a service that the other numbers code in another way.
     """
     pattern = number_parsed.pattern
     cases = number_columns.line.shape
@@ -114,23 +135,31 @@ def number_against_columns(*, number_parsed: ParsedNumbers, number_columns: List
         told |= in_number & in_column
         missing |= in_number & ~in_column
         differing |= np.where(in_number & in_column & ~same, 1 << place, 0).astype(np.int32)
+    told |= number_service_tokens.told
+    differing |= np.where(number_service_tokens.slip, 1 << len(pattern.compared), 0).astype(np.int32)
     fits = number_parsed.fits[number_columns.line]
     differing[~fits] = 0
     unknown = ~fits | missing | ~told | bool(pattern.doubtful)
     known = YES if pattern.compared else UNKNOWN if pattern.doubtful else NO
     return {
         "number_against_columns": np.select([differing > 0, unknown], [YES, UNKNOWN], NO).astype(np.int8),
-        "number_pattern_known": np.full(cases, known, dtype=np.int8),
+        "number_pattern_known": np.where(number_service_tokens.told, YES, known).astype(np.int8),
         "number_parts_differing": differing,
     }
 
 
 def _said(role: str, value: str) -> str:
+    if role == CODED_SERVICE:
+        return f"service {value}"
     return f"NPS {value}" if role == "size" else f"{role} {shown(value)}"
 
 
 def number_mismatch_said(
-    *, number_parsed: ParsedNumbers, number_columns: ListColumns, number_parts_differing: IntArray
+    *,
+    number_parsed: ParsedNumbers,
+    number_columns: ListColumns,
+    number_service_tokens: ServiceTokens,
+    number_parts_differing: IntArray,
 ) -> Coded:
     """Return in words where a line number and the columns disagree; missing where they do not."""
     roles = list(number_parsed.pattern.compared)
@@ -139,6 +168,9 @@ def number_mismatch_said(
     if not cases.size:
         return Coded(codes, ())
     sides = [side for role in roles for side in _sides(number_parsed, role, number_columns)]
+    if number_service_tokens.slip.any():
+        roles.append(CODED_SERVICE)
+        sides += _sides_of_service(number_parsed, number_columns, number_service_tokens)
     bits = number_parts_differing[cases]
     keys = [np.where(bits >> (place // 2) & 1, side.codes[cases], -1) for place, side in enumerate(sides)]
     _, first, kind = np.unique(np.column_stack((bits, *keys)), axis=0, return_index=True, return_inverse=True)
@@ -160,6 +192,20 @@ def _sides(parsed: ParsedNumbers, role: str, columns: ListColumns) -> tuple[Code
         return _size_words(parsed.size[columns.line]), _size_words(column_size)
     mine = parsed.parts[role].take(columns.line)
     return mine, _column_of(parsed.pattern, role, columns) or Coded(np.full(columns.line.shape, -1, dtype=np.int32), ())
+
+
+def _sides_of_service(parsed: ParsedNumbers, columns: ListColumns, tokens: ServiceTokens) -> tuple[Coded, Coded]:
+    """Return the service as the number codes it, and as the column says it with the other numbers' code."""
+    column, usual, mine = columns.texts["service"]["service"], tokens.usual, parsed.parts["service"]
+    codes = np.full(columns.line.shape, -1, dtype=np.int32)
+    cases = np.flatnonzero(tokens.slip)
+    pairs, kind = np.unique(np.column_stack((column.codes[cases], usual.codes[cases])), axis=0, return_inverse=True)
+    codes[cases] = kind.ravel()
+    texts = tuple(
+        f"{shown(column.texts[said])}, which the other numbers call {shown(usual.texts[code])}"
+        for said, code in pairs.tolist()
+    )
+    return Coded(mine.codes[columns.line], tuple(map(shown, mine.texts))), Coded(codes, texts)
 
 
 def _size_words(size: FloatArray) -> Coded:
@@ -269,6 +315,7 @@ PROVIDERS = (
         "number_insulation",
         "number_sequence",
     ),
+    provider(number_service_tokens),
     provider(number_against_columns, "number_against_columns", "number_pattern_known", "number_parts_differing"),
     provider(number_mismatch_said),
     provider(doubled_line_number),

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import re
+
 import numpy as np
 from numpy.typing import NDArray
 
@@ -9,9 +11,13 @@ from checker.evaluation.contradictions import NORMAL, case_is
 from checker.intake.placeholders import holds
 from checker.model import RANGE_WORDS, CaseKind, Coded, Gap, LineList
 
-__all__ = ["STATE_FIELDS", "case_columns", "case_group", "first_of_row", "hold_fields", "state_told"]
+__all__ = ["STATE_FIELDS", "case_columns", "case_group", "first_of_row", "hold_fields", "marks_hold", "state_told"]
 
 _REMARKS = "remarks"
+_MARK = "hold"
+#: In the originator's own column of open items these say that there is none; every other mark says that there is one.
+_NO_MARK = frozenset({"n", "no", "0", "none", "nil", "na", "not applicable", "false", "f", "no hold", "not on hold"})
+_SIGNS_ALONE = re.compile(r"[\s.,;:_/\-\u2010-\u2015\u2212]+")
 MOST_NAMED = 62
 STATE_FIELDS = (
     "pressure", "temperature", "density", "viscosity", "vapour_fraction", "molar_mass", "compressibility",
@@ -71,6 +77,12 @@ def state_told(line_list: LineList) -> NDArray[np.int8]:
     return told.astype(np.int8)
 
 
+def marks_hold(text: str) -> bool:
+    """Return whether a cell of the column of open items marks one: any mark (Y, 3, H1, X, a tick) but a plain no."""
+    word = _SIGNS_ALONE.sub(" ", text.casefold()).strip()
+    return bool(word) and word.replace("n a", "na") not in _NO_MARK
+
+
 def _held(line_list: LineList, name: str) -> NDArray[np.bool_]:
     """Return which rows have a field on HOLD, in any case."""
     held = np.zeros(len(line_list.line_number), dtype=np.bool_)
@@ -78,13 +90,17 @@ def _held(line_list: LineList, name: str) -> NDArray[np.bool_]:
     if name == _REMARKS:
         text = line_list.text(name)
         held[line_list.line[text.where([holds(each) for each in text.texts])]] = True
+    if name == _MARK:
+        text = line_list.text(name)
+        held[line_list.line[text.where([marks_hold(each) for each in text.texts])]] = True
     return held
 
 
 def hold_fields(line_list: LineList) -> Coded:
     """Return the names of a row's fields on HOLD (or to be confirmed, or the vendor's to say), missing where none is.
 
-    Remarks count where they speak of a HOLD. Beyond 62 fields the further ones are not named.
+    Remarks count where they speak of a HOLD, a column of open items where it holds any mark but a no. Beyond 62 fields
+    the further ones are not named.
     """
     keys = np.zeros(len(line_list.line_number), dtype=np.int64)
     names: list[str] = []

@@ -332,7 +332,7 @@ def _data_rule(values: Values, name: str, line_case: int) -> Reason:
     needs = DATA_NEEDS[name]
     if name in BY_PHASE and values["phase_contradictory"][line_case]:
         return _phase(values, line_case)
-    for wanted in (Gap.HOLD, Gap.REFUSED, Gap.BLANK):
+    for wanted in (Gap.HOLD, Gap.REFUSED, Gap.BLANK, Gap.NOT_APPLICABLE):
         for field in needs.fields:
             if values.line_list.gap(field)[line_case] == wanted and values.line_list.address(field, line_case):
                 return gap_sentence(values, field, line_case)

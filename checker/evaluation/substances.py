@@ -18,6 +18,7 @@ __all__ = ["PROVIDERS", "is_water_text", "says_saturated"]
 CodeArray = NDArray[np.int8]
 PHASES_SAID = {"liquid": Phase.LIQUID, "gas": Phase.GAS, "two-phase": Phase.TWO_PHASE}
 _WORD = re.compile(r"[a-z]+")
+_FORMULA = re.compile(r"(?<![a-z0-9])h(?:2|\u2082)o(?![a-z0-9])")
 _SUBSTANCE = frozenset({"water", "steam", "bfw", "feedwater"})
 #: Words that may stand beside them and leave water what it is; anything else may be another substance.
 _BESIDE = frozenset(
@@ -34,11 +35,14 @@ _SUPERHEATED = frozenset({"superheated", "unsaturated", "desuperheated"})
 
 
 def _words(text: str) -> frozenset[str]:
-    return frozenset(_WORD.findall(text.casefold()))
+    return frozenset(_WORD.findall(_FORMULA.sub("water", text.casefold())))
 
 
 def is_water_text(text: str) -> bool:
-    """Return whether a fluid's name means water or steam and nothing else; a bare ``condensate`` may be another."""
+    """Return whether a fluid's name means water or steam and nothing else.
+
+    A bare ``condensate`` may be another, and sea water is denser and boils hotter than the bounds for water allow.
+    """
     words = _words(text)
     return bool(words & _SUBSTANCE) and words <= _SUBSTANCE | _BESIDE
 
@@ -64,11 +68,11 @@ def water(*, fluid: Coded, fluid_gap: CodeArray, service_listed: Coded) -> CodeA
     """Return 1 where the fluid is water or steam, 0 where it is not, -1 where the list leaves it open.
 
     The fluid column says; where the list has none, the service does. A service of water or steam says enough where the
-    fluid's cell is blank; another service leaves that open.
+    fluid's cell is blank or not applicable; another service leaves that open.
     """
     by_fluid = _by_text(fluid, is_water_text, UNKNOWN)
     by_service = _by_text(service_listed, is_water_text, UNKNOWN)
-    blank = (fluid_gap == Gap.BLANK) & (by_service == YES)
+    blank = np.isin(fluid_gap, (Gap.BLANK, Gap.NOT_APPLICABLE)) & (by_service == YES)
     return np.where((fluid_gap == Gap.NO_COLUMN) | blank, by_service, by_fluid).astype(np.int8)
 
 

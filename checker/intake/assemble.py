@@ -71,9 +71,8 @@ def _refusal_texts(column: PlannedColumn, converted: Converted, grid: _Grid, cas
         sentence = f"{place(grid.file, grid.header_row, column.header)}: {whole}"
         mine = np.flatnonzero(converted.gaps == Gap.REFUSED) * step + case
         into.refusals.update(dict.fromkeys(((name, index) for index in mine.tolist()), sentence))
-    file, header, rows = place(grid.file), shown(column.header), grid.rows.tolist() if converted.reasons else []
-    for line, reason in converted.reasons.items():
-        into.refusals[name, line * step + case] = f"{file}, row {rows[line]}, column {header}: {reason}"
+    for line, sentence in converted.placed(place(grid.file), shown(column.header), grid.rows).items():
+        into.refusals[name, line * step + case] = sentence
 
 
 def _spread_numbers(

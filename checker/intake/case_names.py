@@ -62,7 +62,9 @@ _MECHANICAL_WORDS = {
 }  # fmt: skip
 _CASE_WORD = re.compile(r" case$|^case (?=[a-z]{2})")
 _MARKS = {"%": "percentsign", "+": "plussign", "-": "minussign"}
-_NUMBERED = re.compile(r"(design|case|alternate|alt|alternative|relief) ([0-9]{1,3}|[a-z])")
+_NUMBERED = re.compile(
+    r"(design|case|alternate|alt|alternative|relief) ([0-9]{1,3}|[a-oq-su-z])"
+)  # P and T are quantities
 
 
 @lru_cache(maxsize=1)

@@ -274,13 +274,13 @@ def read_parts(text: str, *, dimension: str, unit: Unit | None, marks: Marks, de
     if _POWER_OR_NOTE.search(plain):
         raise NumberRefusedError("reads as a power of ten or as 10 with a footnote mark: write which.")
     plain, mark = _without_marks(plain)
-    refusal: NumberRefusedError | None = None
+    refusal = ""  # the sentence alone: an error kept here would keep its frames, this one among them, for ever
     for reading, kind in _readings(_FROM.sub("", plain, count=1)):
         try:
             parts = _numbers(reading, column)._replace(kind=kind, mark=mark)
         except NumberRefusedError as error:
-            refusal = error
+            refusal = str(error)
             continue
         _check_bare_note(parts, mark)
         return parts
-    raise refusal or NumberRefusedError(no_number(text))
+    raise NumberRefusedError(refusal or no_number(text))

@@ -205,10 +205,16 @@ def _together(parts: list[NDArray[Scalar]], dtype: type[Scalar]) -> NDArray[Scal
     return whole
 
 
-def collect_numbers(collectors: Sequence[NumberCollector], columns: Sequence[Sequence[str]]) -> None:
-    """Append a block of cells to the number columns, and read the plain numbers of all of them in one step."""
+def collect_numbers(collectors: Sequence[NumberCollector], columns: Sequence[Sequence[str]]) -> list[tuple[int, int]]:
+    """Append a block of cells to the number columns, and read the plain numbers of all of them in one step.
+
+    Returns
+    -------
+    list of (int, int)
+        Column and row of the whole numbers that begin with a nought (``000``, ``050``).
+    """
     if not columns or not columns[0]:
-        return
+        return []
     rows = len(columns[0])
     joined = [_joined(cells) for cells in columns]
     plain = read_plain(PARTING.join(joined) + PARTING)
@@ -224,12 +230,17 @@ def collect_numbers(collectors: Sequence[NumberCollector], columns: Sequence[Seq
                 values[column, row], marks[column, row] = number, mark
                 continue
         codes[column, row] = texts[text]
+    noughts = [divmod(index, rows) for index in np.flatnonzero(plain.noughts).tolist()]
+    for column, row in noughts:
+        if not columns[column][row].strip("0"):
+            values[column, row], codes[column, row] = NAN, collectors[column].texts[columns[column][row]]
     for position, collector in enumerate(collectors):
         collector.written.append(joined[position])
         collector.starts.append(collector.starts[-1] + rows)
         collector.numbers.append(values[position])
         collector.marks.append(marks[position])
         collector.codes.append(codes[position])
+    return noughts
 
 
 def _read_long(
@@ -256,7 +267,7 @@ def _padded_number(text: str) -> tuple[float, Mark]:
     """Read a number with outer blanks; NaN where a text is none."""
     match = _PADDED_NUMBER.fullmatch(text) if len(text) <= LONGEST_NUMBER else None
     number = float(text.replace(",", ".")) if match else NAN
-    if match is None or not math.isfinite(number):
+    if match is None or not math.isfinite(number) or (len(text.strip()) > 1 and not text.strip(" 0")):
         return NAN, Mark.NONE
     mark = Mark.COMMA if "," in text else Mark.POINT if "." in text else Mark.NONE
     if mark and _THOUSANDS.fullmatch(text.strip()):

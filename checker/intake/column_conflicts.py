@@ -7,6 +7,7 @@ from collections.abc import Sequence
 from checker.errors import InputError, Problem
 from checker.intake.planned import PlannedColumn
 from checker.intake.texts import key_of, place, shown
+from checker.intake.unit_words import unit_or_refusal
 
 __all__ = ["DESCRIPTIVE", "refuse_duplicates", "without_overruled", "without_repeated"]
 
@@ -62,6 +63,16 @@ def _remedy(first: str, second: str) -> str:
     return "Say in [columns] of the criteria which header carries the field, or rename one of them."
 
 
+def _unit_trouble(column: PlannedColumn) -> str:
+    """Return the sentence on a column whose unit is none of its field, else an empty text."""
+    if column.field.kind != "number" or not column.unit:
+        return ""
+    reading = unit_or_refusal(column.unit, column.field.dimension)
+    if not isinstance(reading, str) or "gauge or absolute" in reading:
+        return ""
+    return f" The unit of {shown(column.header)} is not read: {reading}"
+
+
 def refuse_duplicates(columns: Sequence[PlannedColumn], file: str, row: int) -> None:
     """Refuse a list in which two columns carry one field in one case.
 
@@ -82,6 +93,7 @@ def refuse_duplicates(columns: Sequence[PlannedColumn], file: str, row: int) -> 
             f"two columns for the field {column.field.name}{case}: {shown(first.header)} (column {first.index + 1}) "
             f"and {shown(column.header)} (column {column.index + 1})."
         )
+        what += "".join(_unit_trouble(one) for one in (first, column))
         remedy = _remedy(first.header, column.header)
         problems.append(Problem(what, where=place(file, row), remedy=remedy))
     if problems:

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Collection, Mapping, Sequence
+from collections.abc import Collection, Sequence
 from dataclasses import dataclass, replace
 from itertools import islice
 
@@ -11,7 +11,7 @@ from checker.fields import Field
 from checker.intake.placeholders import placeholder
 from checker.intake.planned import FLOWS
 from checker.intake.sizes import column_basis
-from checker.intake.texts import shown
+from checker.intake.texts import fold_words, shown
 from checker.intake.unit_words import size_basis, unit_in_cell, unit_or_refusal
 from checker.model import Gap
 
@@ -19,6 +19,7 @@ __all__ = ["CELLS_LOOKED_AT", "UNSETTLED", "Draft", "one_field"]
 
 CELLS_LOOKED_AT = 2_000
 UNSETTLED = "an unsettled quantity"
+_LARGEST = re.compile(r"\b(?:max|maximum|maxima)\b")
 _NUMBER_FIRST = re.compile(r"[-+<>~]?\s*[\d.,]")
 
 
@@ -66,8 +67,11 @@ def _known_in_cell(unit: str, dimension: str) -> bool:
     return not isinstance(reading, str) or "gauge or absolute" in reading
 
 
-def _without_unit(fields: Sequence[Field], units: Mapping[str, str], cells: Sequence[str], comma: bool) -> Field | None:
-    """Return the field of a header without a unit, None where neither its cells nor the criteria tell."""
+def _without_unit(fields: Sequence[Field], cells: Sequence[str], comma: bool) -> Field | None:
+    """Return the field of a header without a unit, None where its cells do not tell.
+
+    A unit that [units] of the criteria gives a whole dimension says nothing of what one header means.
+    """
     texts = [field for field in fields if field.kind == "text"]
     sizes = [field for field in fields if field.kind == "size"]
     numbers = [field for field in fields if field.kind == "number"]
@@ -80,15 +84,13 @@ def _without_unit(fields: Sequence[Field], units: Mapping[str, str], cells: Sequ
         return by_cells
     if texts:
         return texts[0] if any(not _NUMBER_FIRST.match(cell) for cell in found) else None
-    by_criteria = [field for field in fields if field.dimension in units or (field in sizes and "size" in units)]
-    return by_criteria[0] if len(by_criteria) == 1 else None
+    return None
 
 
 def one_field(
     draft: Draft,
     *,
     row_unit: str,
-    units: Mapping[str, str],
     cells: Sequence[str],
     taken: Collection[str],
     comma: bool,
@@ -101,8 +103,6 @@ def one_field(
         The header.
     row_unit : str
         Unit beneath it, empty where there is none.
-    units : mapping of str to str
-        Unit by dimension that the criteria state.
     cells : sequence of str
         Cells of the column.
     taken : collection of str
@@ -118,7 +118,7 @@ def one_field(
         fields = tuple(field for field in fields if _may_have(field, written)) or fields
         settled = fields[0] if len(fields) == 1 or not _may_have(fields[0], written) else None
     else:
-        settled = _without_unit(fields, units, cells, comma)
+        settled = _without_unit(fields, cells, comma)
     if settled is not None:
         return settled, ""
     numbers = [field for field in fields if field.kind == "number"]
@@ -128,6 +128,13 @@ def one_field(
 
 
 def _question(header: str, written: str, fields: Sequence[Field]) -> str:
-    names = " or ".join(f"the {field.meaning} ({field.name})" for field in fields)
+    names = " or ".join(_meaning(header, field) for field in fields)
     said = f"{shown(header)} in {shown(written)}" if written else f"no unit: {shown(header)}"
-    return f"{said} could be {names}: name its field in [columns], or write its unit in the header."
+    alike = len({field.dimension for field in fields}) == 1
+    remedy = "name its field in [columns]" if alike else "name its field in [columns], or write its unit in the header"
+    return f"{said} could be {names}: {remedy}."
+
+
+def _meaning(header: str, field: Field) -> str:
+    largest = " in the maximum case" if field.one_case and _LARGEST.search(fold_words(header)) else ""
+    return f"the {field.meaning}{largest} ({field.name})"

@@ -14,7 +14,7 @@ from checker.intake.headers import unit_in_header, unit_of_name, units_in_header
 from checker.intake.texts import key_of, place, shown
 from checker.intake.unit_words import is_unit_text, settled_by, size_basis, unit_or_refusal
 
-__all__ = ["Hinted", "absent_headers", "hint_fields", "hinted_column"]
+__all__ = ["Hinted", "absent_headers", "hint_fields", "hinted_column", "same_unit"]
 
 LONGEST_COMPARED = 120
 LIKENESS = 0.4
@@ -33,7 +33,7 @@ def hint_fields(hints: Mapping[str, ColumnHint]) -> dict[str, str]:
     return {key_of(header): hint.field for header, hint in hints.items()}
 
 
-def _same_unit(stated: str, hinted: str, field: Field) -> bool:
+def same_unit(stated: str, hinted: str, field: Field) -> bool:
     """Return whether two units of a field are one, or the hint only settles what the list leaves open."""
     if field.kind == "size":
         return size_basis(stated) == size_basis(hinted) or not size_basis(stated)
@@ -70,7 +70,7 @@ def hinted_column(header: str, hint: ColumnHint, *, row_unit: str, file: str, ro
         raise InputError(Problem(what, where=where, remedy="`linelist fields` lists them."))
     field = field_named(hint.field)
     stated = "" if field.kind == "text" else _stated_unit(header, row_unit, field)
-    if hint.unit and stated and not _same_unit(stated, hint.unit, field):
+    if hint.unit and stated and not same_unit(stated, hint.unit, field):
         what = f"[columns] gives the unit {shown(hint.unit)}, the list itself states {shown(stated)}: which one holds?"
         raise InputError(Problem(what, where=where, remedy="Correct the unit in [columns], or the header of the list."))
     unit = hint.unit or ("" if field.kind == "text" else unit_in_header(header, field))

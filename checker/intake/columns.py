@@ -2,15 +2,17 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Collection, Mapping, Sequence
 from dataclasses import dataclass, replace
 from itertools import islice
 
 from checker.criteria.hints import ColumnHint
+from checker.fields import Field
 from checker.intake.column_cases import named_cases, one_case, with_cases
 from checker.intake.column_conflicts import DESCRIPTIVE, refuse_duplicates, without_overruled, without_repeated
-from checker.intake.column_fields import CELLS_LOOKED_AT, Draft, one_field
-from checker.intake.column_hints import absent_headers, hinted_column
+from checker.intake.column_fields import CELLS_LOOKED_AT, UNSETTLED, Draft, one_field
+from checker.intake.column_hints import absent_headers, hinted_column, same_unit
 from checker.intake.fraction_basis import with_fraction_basis
 from checker.intake.headers import read_header, says_reid
 from checker.intake.layout import Layout
@@ -27,6 +29,9 @@ __all__ = ["Plan", "number_columns", "plan_columns"]
 
 UNITLESS = frozenset({"dimensionless", "fraction"})
 MOST_COMPARED = 60
+LEAST_NUMBERS = 0.5
+_NO_UNIT = ("", "-", "\u2013", "[-]", "--")
+_NUMBER = re.compile(r"[-+]?\d[\d.,]*(?:[eE][-+]?\d+)?")
 _ASIDE = "the field {} is read from another column"
 
 
@@ -50,9 +55,10 @@ def _drafts(layout: Layout, hints: Mapping[str, ColumnHint], file: str) -> list[
     drafts = []
     for index, header in enumerate(layout.headers):
         hint = by_key.get(key_of(header)) if header else None
-        reading = None if hint is not None else read_header(header)
+        named, case = layout.cases.get(index, (header, ""))
+        reading = None if hint is not None else read_header(named)
         if reading is not None:
-            drafts.append(Draft(index, header, reading.fields, reading.unit, reading.case, False))
+            drafts.append(Draft(index, header, reading.fields, reading.unit, case or reading.case, False))
         hinted = hint and hinted_column(header, hint, row_unit=layout.units[index], file=file, row=layout.header_row)
         if hinted:
             drafts.append(Draft(index, header, (hinted.field,), hinted.unit, hinted.case, True))
@@ -63,6 +69,16 @@ def number_columns(layout: Layout, hints: Mapping[str, ColumnHint], file: str) -
     """Return the columns whose headers promise numbers."""
     return frozenset(
         draft.index for draft in _drafts(layout, hints, file) if all(field.kind == "number" for field in draft.fields)
+    )
+
+
+def _two_units(column: PlannedColumn, row_unit: str) -> str:
+    """Return the question where a header states one unit and the units row beneath it another, else an empty text."""
+    if column.hinted or not column.unit or row_unit in _NO_UNIT or same_unit(column.unit, row_unit, column.field):
+        return ""
+    return (
+        f"the header states {shown(column.unit)}, the units row {shown(row_unit)}: which one holds? Correct one of "
+        "them, or name the column with its unit in [columns] of the criteria."
     )
 
 
@@ -102,6 +118,9 @@ def _measured(
     column: PlannedColumn, layout: Layout, units: Mapping[str, str], cells: Sequence[str], comma: bool
 ) -> PlannedColumn:
     row_unit = layout.units[column.index]
+    two = _two_units(column, row_unit) if column.field.kind != "text" else ""
+    if two:
+        return replace(column, field=_not_to_be_read(column.field), refusal=two)
     if column.field.kind == "number":
         return with_fraction_basis(_with_unit(column, row_unit, units), cells)
     if column.field.kind == "size":
@@ -146,6 +165,20 @@ def _notes_aside(
     ]
 
 
+def _headerless(layout: Layout, cells: Sequence[Sequence[str]], read: Collection[int]) -> list[tuple[str, str]]:
+    """Return the columns without a header that hold numbers between columns that are read: open items."""
+    found = []
+    for index, header in enumerate(layout.headers):
+        if header or not any(one < index for one in read) or not any(one > index for one in read):
+            continue
+        texts = [text for cell in islice(cells[index], CELLS_LOOKED_AT) if (text := cell.strip())]
+        numbers = sum(_NUMBER.fullmatch(text) is not None for text in texts)
+        if numbers and numbers >= LEAST_NUMBERS * len(texts):
+            reason = f"column {index + 1} has no header and holds numbers, so it is not read: give it a header."
+            found.append((f"column {index + 1}", reason))
+    return found
+
+
 def _has_case_column(columns: Sequence[PlannedColumn]) -> bool:
     return any(column.field.name == "case" for column in columns)
 
@@ -165,7 +198,9 @@ def _unread_headers(
     found = []
     for index in unmatched:
         header = layout.headers[index]
-        if index in aside:
+        if index in layout.doubts and key_of(header) not in keys:
+            reason = layout.doubts[index]
+        elif index in aside:
             reason = f"{shown(header)} names the case '{aside[index]}' in a list with a case column, so it is not read."
         elif index in settled or key_of(header) in keys:
             reason = ""
@@ -177,21 +212,36 @@ def _unread_headers(
     return found
 
 
+def _not_to_be_read(field: Field) -> Field:
+    """Return a field as a number of no dimension, so that no cell of its column is read by a unit of its own."""
+    return replace(field, kind="number", dimension=UNSETTLED)
+
+
+def _doubted(draft: Draft, layout: Layout) -> bool:
+    """Return whether the layout leaves open what a column is, and the criteria do not say it."""
+    return draft.index in layout.doubts and not draft.hinted
+
+
 def _columns(
     drafts: Sequence[Draft],
     layout: Layout,
-    units: Mapping[str, str],
     cells: Sequence[Sequence[str]],
     comma: bool,
 ) -> tuple[list[PlannedColumn], dict[int, str]]:
     """Return a column for each header that a field claims, and by index the question of each that several claim."""
-    certain = {draft.fields[0].name for draft in drafts if len(draft.fields) == 1}
+    certain = {draft.fields[0].name for draft in drafts if len(draft.fields) == 1 and not _doubted(draft, layout)}
     columns, questions = [], {}
     for draft in drafts:
+        if _doubted(draft, layout):
+            field = _not_to_be_read(next((one for one in draft.fields if one.kind != "text"), draft.fields[0]))
+            if field.name not in certain:
+                certain.add(field.name)
+                columns.append(PlannedColumn(draft.index, draft.header, field, case=draft.case, unit=draft.unit))
+                questions[draft.index] = layout.doubts[draft.index]
+            continue
         field, question = one_field(
             draft,
             row_unit=layout.units[draft.index],
-            units=units,
             cells=cells[draft.index],
             taken=certain,
             comma=comma,
@@ -236,7 +286,7 @@ def plan_columns(
         If two columns carry one field in one case.
     """
     drafts = _drafts(layout, hints, file)
-    columns, questions = _columns(drafts, layout, units, cells, comma)
+    columns, questions = _columns(drafts, layout, cells, comma)
     left_out = [column for column in columns if column.case] if _has_case_column(columns) else []
     kept = without_overruled([column for column in columns if column not in left_out])
     if not left_out:
@@ -263,6 +313,7 @@ def plan_columns(
         (*_notes(kept, left_out, cases, layout), *_notes_aside(kept, overruled, repeated)),
         (
             *((layout.headers[index], reason) for index, reason in unread),
+            *_headerless(layout, cells, read),
             *absent_headers(hints, layout.headers),
         ),
         header_matches(

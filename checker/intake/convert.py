@@ -9,29 +9,25 @@ import numpy as np
 from checker.fields import Field
 from checker.intake.cells import CodedCells
 from checker.intake.converted import ConvertedNumbers, ConvertedTexts, spread_sparse
+from checker.intake.phase_words import PHASES, phase_word
 from checker.intake.placeholders import DITTO_REASON, OPEN_WORDS, ditto, holds, placeholder
 from checker.intake.planned import PlannedColumn
-from checker.intake.sizes import read_size
+from checker.intake.size_columns import read_sizes
 from checker.intake.texts import shown, tidy
 from checker.model import BoolArray, Coded, Gap
 
 __all__ = ["convert_line_numbers", "convert_sizes", "convert_texts"]
 
-_PHASES = {
-    "liquid": "l liq liquid liquidphase liqphase",
-    "gas": "v g vap vapour vapor gas vapourphase vaporphase gasphase steam",
-    "two-phase": "m mixed mix 2ph 2phase twophase vl lv lg gl tp multiphase mp mixedphase 2p lplusg vplusl",
-}
 _ENDS = {"inlet": "inlet in upstream start from beginning source", "outlet": "outlet out downstream end to"}
 _VOCABULARY = {
-    "phase": {word: name for name, words in _PHASES.items() for word in words.split()},
+    "phase": PHASES,
     "pressure_basis": {word: name for name, words in _ENDS.items() for word in words.split()},
 }
 
 
 def convert_sizes(cells: CodedCells, column: PlannedColumn, *, comma: bool) -> ConvertedNumbers:
     """Convert a column of nominal sizes to NPS inches."""
-    readings = [read_size(text, column.basis, comma) for text in cells.texts]
+    readings = read_sizes(cells, column.basis, comma=comma)
     values = np.array([reading.nps for reading in readings], dtype=np.float64)
     gaps = np.array([reading.gap for reading in readings], dtype=np.int8)
     reasons = {index: reading.reason for index, reading in enumerate(readings) if reading.gap is Gap.REFUSED}
@@ -52,8 +48,7 @@ def _vocabulary(text: str, field_: Field) -> tuple[str, Gap, str]:
     if gap is not Gap.GIVEN:
         return "", gap, reason
     words = _VOCABULARY[field_.name]
-    plain = tidy(text).casefold().replace("+", "" if len(text.strip()) <= 3 else "plus")
-    word = "".join(character for character in plain if character.isalnum())
+    word = phase_word(tidy(text))
     if word in words:
         return words[word], Gap.GIVEN, ""
     names = ", ".join(dict.fromkeys(words.values()))

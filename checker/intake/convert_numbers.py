@@ -23,6 +23,9 @@ __all__ = ["column_evidence", "convert_numbers"]
 
 NAN = float("nan")
 _WITNESSES = 200
+NOUGHTS_REASON = (
+    "may be the end of a number whose thousands are parted (1,000) as well as zero: write 0, or the whole number."
+)
 
 
 def column_evidence(cells: CodedCells | NumberCells) -> Evidence:
@@ -112,7 +115,7 @@ def _put_odd(
     context: NumberContext,
 ) -> None:
     """Read the cells at some indices, each distinct text once; `codes` are theirs into the texts."""
-    readings = [_possible_ends(text, read_number_cell(text, context), context) for text in texts]
+    readings = [_reading(text, context) for text in texts]
     converted.values[indices] = np.array([reading.value for reading in readings], dtype=np.float64)[codes]
     converted.gaps[indices] = np.array([reading.gap for reading in readings], dtype=np.int8)[codes]
     converted.rests_on[indices] = np.array([reading.rests_on for reading in readings], dtype=np.int8)[codes]
@@ -120,6 +123,14 @@ def _put_odd(
     mine = np.flatnonzero(np.array(remarkable, dtype=np.bool_)[codes])
     for index, code in zip(indices[mine].tolist(), codes[mine].tolist(), strict=True):
         _put_remarkable(index, readings[code], converted, context)
+
+
+def _reading(text: str, context: NumberContext) -> CellReading:
+    """Read one cell; noughts only (``000``) are no zero but may be what is left of a number."""
+    stripped = text.strip()
+    if len(stripped) > 1 and not stripped.strip("0"):
+        return CellReading(NAN, Gap.REFUSED, f"{shown(text)} {NOUGHTS_REASON}")
+    return _possible_ends(text, read_number_cell(text, context), context)
 
 
 def _remarkable(reading: CellReading, context: NumberContext) -> bool:

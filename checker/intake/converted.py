@@ -16,8 +16,25 @@ NAN = float("nan")
 Kept = TypeVar("Kept")
 
 
+class _Placed:
+    """Sentences with their place, made once for all cases that a column holds for."""
+
+    reasons: dict[int, str]
+    _placed: tuple[int, dict[int, str]] | None = None
+
+    def placed(self, file: str, column: str, rows: IntArray) -> dict[int, str]:
+        """Return the sentence of each refused line with file, row and column before it, all of them as shown."""
+        if self._placed is None or self._placed[0] != len(self.reasons):
+            row_of = rows.tolist() if self.reasons else []
+            texts = {
+                line: f"{file}, row {row_of[line]}, column {column}: {reason}" for line, reason in self.reasons.items()
+            }
+            self._placed = (len(self.reasons), texts)
+        return self._placed[1]
+
+
 @dataclass
-class ConvertedNumbers:
+class ConvertedNumbers(_Placed):
     """A column of numbers in SI, one a line: NaN and a gap where there is none.
 
     Attributes
@@ -48,6 +65,16 @@ class ConvertedNumbers:
     lowest: dict[int, float] = field(default_factory=dict)
     notes: dict[int, str] = field(default_factory=dict)
 
+    def column_is_refused(self) -> bool:
+        """Return whether the refusal of the whole column meets a cell: a bare number, or every cell that holds one.
+
+        Where each cell carries its own unit and is read, nothing is left for it to be said of.
+        """
+        if not self.column_refusal:
+            return False
+        bare = int((self.gaps == Gap.REFUSED).sum()) > len(self.reasons)
+        return bare or (bool(self.reasons) and not bool((self.gaps == Gap.GIVEN).any()))
+
     def refuse(self, reasons: Mapping[int, str]) -> None:
         """Refuse the values of some lines, whatever their cells say."""
         indices = list(reasons)
@@ -76,7 +103,7 @@ class ConvertedNumbers:
 
 
 @dataclass
-class ConvertedTexts:
+class ConvertedTexts(_Placed):
     """A column of texts as codes, one a line, with gaps, refusals and open items."""
 
     coded: Coded

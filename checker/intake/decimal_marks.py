@@ -2,7 +2,7 @@
 
 ``10,5`` can only be a decimal comma, ``1,234,567`` only thousands; ``1,234`` and ``12.345`` are either. The cells of
 the same column decide, then those of the whole list; without evidence, or against contradictory evidence, such a cell
-is refused with both readings.
+is refused with both readings. Plain numbers such as ``4.5`` are evidence too.
 """
 
 from __future__ import annotations
@@ -126,7 +126,7 @@ def decide(column: Evidence, file: Evidence, *, comma: bool, delimiter: str) -> 
     comma : bool
         Whether the list is known to be written with decimal commas (its form says so).
     delimiter : str
-        Delimiter of the file.
+        Delimiter of the file, empty for a workbook: its stored numbers have a point, whatever the list is written with.
     """
     of_comma, comma_clash = _meaning("comma", column, delimiter)
     of_point, point_clash = _meaning("point", column, delimiter)
@@ -139,7 +139,7 @@ def decide(column: Evidence, file: Evidence, *, comma: bool, delimiter: str) -> 
         return Marks(DECIMAL, THOUSANDS, _note("point", THOUSANDS, column, file))
     if of_comma == DECIMAL:
         return Marks(DECIMAL, of_point, "" if comma else _note("comma", DECIMAL, column, file))
-    return Marks("", of_point or ("" if comma else DECIMAL))
+    return Marks("", of_point or ("" if comma or delimiter else DECIMAL))
 
 
 def _completed(of_comma: str, of_point: str, file: Evidence, delimiter: str) -> tuple[str, str]:

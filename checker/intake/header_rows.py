@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import re
 from collections.abc import Mapping, Sequence
+from itertools import pairwise
 
 from checker.intake.headers import HeaderReading, read_header
 from checker.intake.texts import fold_words, key_of
@@ -11,13 +12,17 @@ from checker.intake.unit_words import is_unit_text, size_basis, unit_or_refusal
 
 __all__ = [
     "bare",
+    "count_numbers",
     "count_understood",
+    "exact_extents",
+    "is_neutral",
     "is_numbering",
     "is_symbols_row",
     "is_units_row",
     "join_rows",
-    "means_another",
+    "joined_name",
     "names_quantities",
+    "understood",
 ]
 
 LONGEST_SYMBOL = 6
@@ -37,6 +42,22 @@ _NEUTRAL = frozenset(
         "properties",
         "fluid properties",
         "hydraulic",
+        "hydraulics",
+        "physical properties",
+        "fluid property",
+        "stream",
+        "pipeline",
+        "identification",
+        "line identification",
+        "location",
+        "route",
+        "routing",
+        "connection",
+        "connections",
+        "connected",
+        "from to",
+        "termination",
+        "terminations",
     }
 )
 
@@ -47,8 +68,14 @@ def bare(cell: str) -> str:
     return text[1:-1].strip() if text[:1] in "[(" and text[-1:] in "])" and len(text) > 2 else text
 
 
-def is_units_row(row: Sequence[str], headers: Sequence[str], line_column: int) -> bool:
-    """Return whether a row beneath the headers holds units: half of its cells at least are known ones."""
+def is_units_row(
+    row: Sequence[str], headers: Sequence[str], line_column: int, hints: Mapping[str, str] | None = None
+) -> bool:
+    """Return whether a row beneath the headers holds units: half of its cells at least are known ones.
+
+    Letters that are units as well (P, T) are headers where they fit none of the headers above and mean something
+    beneath their groups.
+    """
     first = row[line_column].strip().casefold() if line_column < len(row) else ""
     if first not in _WITHOUT_NUMBER:
         return False
@@ -57,7 +84,11 @@ def is_units_row(row: Sequence[str], headers: Sequence[str], line_column: int) -
     ]
     known = sum(is_unit_text(cell) for _, cell in cells)
     fits = [fit for index, cell in cells if (fit := _fits_header(headers[index], cell)) is not None]
-    return known > 0 and 2 * known >= len(cells) and 2 * sum(fits) >= len(fits)
+    if not known or 2 * known < len(cells) or 2 * sum(fits) < len(fits):
+        return False
+    known_hints = hints or {}
+    joined = () if any(fits) else join_rows(headers, row, known_hints)
+    return count_understood(joined, known_hints) <= count_understood(headers, known_hints)
 
 
 def _fits_header(header: str, unit: str) -> bool | None:
@@ -89,7 +120,8 @@ def is_symbols_row(row: Sequence[str], line_column: int) -> bool:
     return all(len(cell) <= LONGEST_SYMBOL and not re.fullmatch(r"[-+\d.,\s/]+", cell) for cell in cells)
 
 
-def _understood(header: str, hints: Mapping[str, str]) -> HeaderReading | str | None:
+def understood(header: str, hints: Mapping[str, str]) -> HeaderReading | str | None:
+    """Return what a header says, or the field that the criteria give it; None where nothing claims it."""
     if not header or len(header) > LONGEST_HEADER:
         return None
     return hints.get(key_of(header)) or read_header(header)
@@ -99,7 +131,7 @@ def count_understood(headers: Sequence[str], hints: Mapping[str, str]) -> int:
     """Return how many different fields and cases the headers name."""
     named = set()
     for header in headers:
-        reading = _understood(header, hints)
+        reading = understood(header, hints)
         if isinstance(reading, HeaderReading):
             named.add((reading.fields[0].name, reading.case))
         elif reading:
@@ -107,12 +139,12 @@ def count_understood(headers: Sequence[str], hints: Mapping[str, str]) -> int:
     return len(named)
 
 
-def means_another(joined: Sequence[str], headers: Sequence[str], hints: Mapping[str, str]) -> bool:
-    """Return whether a header that is understood means another field or case once its group is read with it."""
-    return any(
-        (after := _understood(one, hints)) is not None and after != _understood(other, hints)
-        for one, other in zip(joined, headers, strict=False)
-        if one != other
+def count_numbers(headers: Sequence[str], hints: Mapping[str, str]) -> int:
+    """Return how many different headers promise a number or a size; a header that the criteria explain counts."""
+    readings = {header: understood(header.strip(), hints) for header in headers if header.strip()}
+    return sum(
+        isinstance(reading, str) or (reading is not None and any(field.kind != "text" for field in reading.fields))
+        for reading in readings.values()
     )
 
 
@@ -126,7 +158,7 @@ def names_quantities(row: Sequence[str], headers: Sequence[str], hints: Mapping[
         return False
     named = 0
     for index, cell in cells:
-        reading, above = _understood(cell, hints), _understood(headers[index], hints)
+        reading, above = understood(cell, hints), understood(headers[index], hints)
         quantity = isinstance(reading, str) or (reading is not None and reading.fields[0].kind != "text")
         named += quantity and _fields_of(reading).isdisjoint(_fields_of(above))
     return named >= 2
@@ -138,20 +170,31 @@ def _fields_of(reading: HeaderReading | str | None) -> frozenset[str]:
     return frozenset({reading} if reading else ())
 
 
-def _joined_name(group: str, under: str, own: bool, hints: Mapping[str, str]) -> str:
+def exact_extents(row: Sequence[str]) -> bool:
+    """Return whether a row repeats a group name over neighbouring cells, as merged ones are: then no group spreads."""
+    cells = [cell.strip() for cell in row]
+    return any(one and one == other for one, other in pairwise(cells))
+
+
+def is_neutral(group: str) -> bool:
+    """Return whether a group name changes nothing of what stands beneath it (``Process data``)."""
+    return " ".join(_FILLING.sub(" ", fold_words(group)).split()) in _NEUTRAL
+
+
+def joined_name(group: str, under: str, own: bool, hints: Mapping[str, str]) -> str:
     """Return a group name and the header beneath it as one header.
 
     A group that changes nothing (``Process data``) is left out. One that only spreads from the left (`own` is False)
     is left out over a header of texts, such as remarks; over a number it stays, for it may change what is meant.
     """
-    filling = " ".join(_FILLING.sub(" ", fold_words(group)).split())
-    if filling in _NEUTRAL:
-        return under
+    if is_neutral(group):
+        whole = f"{group} {under}"
+        return whole if understood(under, hints) is None and understood(whole, hints) is not None else under
     short = _FILLING.sub(" ", group.casefold()) if _FILLING.search(group.casefold()) else group
     for name in dict.fromkeys((f"{group} {under}", f"{short} {under}", f"{under} {group}")):
-        if _understood(" ".join(name.split()), hints) is not None:
+        if understood(" ".join(name.split()), hints) is not None:
             return " ".join(name.split())
-    alone = _understood(under, hints)
+    alone = understood(under, hints)
     if not own and isinstance(alone, HeaderReading) and all(field.kind == "text" for field in alone.fields):
         return under
     return f"{group} {under}"
@@ -169,13 +212,14 @@ def join_rows(upper: Sequence[str], lower: Sequence[str], hints: Mapping[str, st
     """
     width = max(len(upper), len(lower))
     upper, lower = [*upper, *[""] * (width - len(upper))], [*lower, *[""] * (width - len(lower))]
+    exact = exact_extents(upper)
     group, joined = "", []
     for over, under in zip(map(str.strip, upper), map(str.strip, lower), strict=True):
-        group = over or (group if under else "")
+        group = over or (group if under and not exact else "")
         if not under or under in ("-", "\u2013") or group.casefold() == under.casefold():
             joined.append(over if over else "")
         elif not group:
             joined.append(under)
         else:
-            joined.append(_joined_name(group, under, bool(over), hints))
+            joined.append(joined_name(group, under, bool(over), hints))
     return tuple(joined)

@@ -9,7 +9,7 @@ from dataclasses import dataclass
 from checker.intake.texts import fold_words
 from checker.intake.unit_words import is_unit_text
 
-__all__ = ["Split", "brackets", "splits", "without_marks"]
+__all__ = ["Split", "brackets", "holds_several", "splits", "without_marks"]
 
 _OPENING, _CLOSING = "[(", "])"
 _NOTE = re.compile(r"(see )?notes?\b.*|[0-9*]{0,2}|refer .*")
@@ -18,6 +18,14 @@ _MARK = re.compile(r"[*\u2020\u2021\u00b9\u00b2\u00b3\u2074-\u2079]|[(\[]\s*(?:s
 _REFERENCE = {"g": "g", "gauge": "g", "a": "a", "abs": "a", "absolute": "a"}
 _LONGEST_UNIT_WORDS = 4
 _MOST_WORDS = 14
+_PRESSURE_WORDS = frozenset({"p", "press", "pressure", "pres"})
+_TEMPERATURE_WORDS = frozenset({"t", "temp", "temperature"})
+_KINDS = {
+    "oper": "operating", "op": "operating", "opr": "operating", "operating": "operating", "design": "design",
+    "des": "design", "test": "test", "hydrotest": "test", "mech": "mechanical", "mechanical": "mechanical",
+}  # fmt: skip
+_BESIDE_QUANTITIES = frozenset({"and", "max", "min", "norm", "normal", "condition", "conditions", "line"})
+_PARTING = re.compile(r"[/&+,;\r\n]|\band\b", re.IGNORECASE)
 
 
 @dataclass(frozen=True, slots=True)
@@ -45,6 +53,19 @@ def brackets(header: str) -> tuple[str, list[tuple[str, str]]]:
         elif depth == 0:
             outside += character
     return outside, contents
+
+
+def holds_several(header: str) -> bool:
+    """Return whether a header names several values in one column: ``Design P & T``, ``Oper/Des/Test pressure``."""
+    name = brackets(header)[0]
+    if not _PARTING.search(name):
+        return False
+    words = [word for word in fold_words(name).split() if not is_unit_text(word) or word in ("p", "t")]
+    known = _PRESSURE_WORDS | _TEMPERATURE_WORDS | _BESIDE_QUANTITIES | frozenset(_KINDS)
+    if not known.issuperset(words):
+        return False
+    both = not _PRESSURE_WORDS.isdisjoint(words) and not _TEMPERATURE_WORDS.isdisjoint(words)
+    return both or len({_KINDS[word] for word in words if word in _KINDS}) > 1
 
 
 def _with_reference(contents: list[tuple[str, str]]) -> list[tuple[str, str]]:

@@ -6,9 +6,9 @@ import re
 from dataclasses import dataclass
 from functools import cache, lru_cache
 
-from checker.fields import Field, all_fields
+from checker.fields import Field, all_fields, field_named
 from checker.intake.case_names import split_case, split_mechanical_case
-from checker.intake.header_splits import Split, splits, without_marks
+from checker.intake.header_splits import Split, holds_several, splits, without_marks
 from checker.intake.planned import FLOWS
 from checker.intake.texts import fold_words, key_of
 from checker.intake.unit_words import is_unit_text, size_basis, unit_in_cell, unit_or_refusal
@@ -19,7 +19,8 @@ LONGEST_HEADER = 120
 MOST_LANGUAGES = 3
 _IMPLIED = {
     "nps": "NPS", "dn": "DN", "nd": "DN", "nb": "DN", "sg": "SG", "spgr": "SG", "spgravity": "SG", "specgravity": "SG",
-    "specgrav": "SG", "specificgravity": "SG", "ду": "DN",
+    "specgrav": "SG", "specificgravity": "SG", "ду": "DN", "api": "degAPI", "degapi": "degAPI",
+    "apigravity": "degAPI", "gravityapi": "degAPI",
 }  # fmt: skip
 _SHORT_FORMS = {
     "mop": "max operating pressure",
@@ -27,9 +28,17 @@ _SHORT_FORMS = {
     "mot": "max operating temperature",
     "nop": "normal operating pressure",
 }
+_GLUED = {
+    "pmax": ("pressure", "pressure_design"),
+    "pmin": ("pressure", "pressure_design_minimum"),
+    "tmax": ("temperature", "temperature_design"),
+    "tmin": ("temperature", "temperature_design_minimum"),
+}
 _REID = re.compile(r"\b(?:reid|rvp|rvpe|r v p)\b")
 _CAMEL = re.compile(r"(?<=[a-z])(?=[A-Z])")
 _BETWEEN_LANGUAGES = re.compile(r"\s*[/|\r\n\u2028]+\s*|\s+[-\u2013\u2014]\s+")
+_EAST_ASIAN = "\u3040-\u30ff\u3400-\u9fff\uac00-\ud7af"
+_BETWEEN_SCRIPTS = re.compile(rf"(?<=[{_EAST_ASIAN}])\s*(?=[A-Za-z])|(?<=[A-Za-z.])\s*(?=[{_EAST_ASIAN}])")
 _LOST_DEGREE = re.compile(r"(temp|temperature|t)[\s.]*0 ?([cf])", re.IGNORECASE)
 _CASE_SIGNS = re.compile(r"(\u6700\u5927|\u6700\u5c0f|\u6700\u9ad8|\u6700\u4f4e|\u6b63\u5e38)")
 _HARMLESS = frozenset(
@@ -76,6 +85,8 @@ def says_reid(header: str) -> bool:
 
 def _of_words(words: str) -> tuple[tuple[Field, ...], str]:
     """Return the fields and the case that folded words name; the whole is looked up before a case is split off."""
+    if words in _GLUED:
+        return tuple(field_named(name) for name in _GLUED[words]), ""
     words = _SHORT_FORMS.get(words.replace(" ", ""), words)
     fields = _spellings().get(words.replace(" ", ""), ())
     if fields or not words:
@@ -95,6 +106,7 @@ def _of_words(words: str) -> tuple[tuple[Field, ...], str]:
 def _of_languages(name: str) -> tuple[tuple[Field, ...], str]:
     """Return what a name says that stands in two languages (``Press. / Druck``): what both of them name."""
     parts = [part for part in _BETWEEN_LANGUAGES.split(name) if part.strip()]
+    parts = parts if len(parts) > 1 else [part for part in _BETWEEN_SCRIPTS.split(name) if part.strip()]
     if not 2 <= len(parts) <= MOST_LANGUAGES:
         return (), ""
     readings = [_of_words(fold_words(part)) for part in parts]
@@ -172,7 +184,13 @@ def read_header(header: str) -> HeaderReading | None:
     says Reid is claimed by no field, nor is one whose bracketed words are not understood.
     """
     stripped = header.strip()
-    if not stripped or len(header) > LONGEST_HEADER or says_reid(header) or stripped in ("a", "A"):
+    if (
+        not stripped
+        or len(header) > LONGEST_HEADER
+        or says_reid(header)
+        or stripped in ("a", "A")
+        or holds_several(header)
+    ):
         return None
     header = without_marks(header)
     doubtful: HeaderReading | None = None

@@ -4,17 +4,19 @@ from __future__ import annotations
 
 import re
 from collections.abc import Mapping, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 
 from checker.errors import InputError, Problem
+from checker.intake.header_beneath import cases_beneath, with_units_beneath_groups, words_beneath
+from checker.intake.header_groups import with_groups
 from checker.intake.header_rows import (
     bare,
+    count_numbers,
     count_understood,
     is_numbering,
     is_symbols_row,
     is_units_row,
     join_rows,
-    means_another,
     names_quantities,
 )
 from checker.intake.headers import HeaderReading, read_header
@@ -26,19 +28,27 @@ ROWS_SEARCHED = 40
 LINE_NUMBER_WEIGHT = 1000
 ENOUGH = LINE_NUMBER_WEIGHT + 4
 MOST_HEADER_ROWS = 5
+LONGEST_LINE_HEADER = 40
+FEW_NUMBERS = 2
 COLUMNS_SEARCHED = 3
 _LETTER = re.compile(r"[^\W\d_]")
 
 
 @dataclass(frozen=True, slots=True)
 class Layout:
-    """Headers (of two rows where two carry them), units beneath them, the first row of lines, and what to say of it."""
+    """Headers (of two rows where two carry them), units beneath them, the first row of lines, and what to say of it.
+
+    `doubts` says by column why it must not be read plainly; `cases` gives a column's own header and the case
+    beneath it, where a text names the case that is no usual case name.
+    """
 
     headers: tuple[str, ...]
     units: tuple[str, ...]
     header_row: int
     first_row: int
     notes: tuple[str, ...]
+    doubts: Mapping[int, str] = field(default_factory=dict)
+    cases: Mapping[int, tuple[str, str]] = field(default_factory=dict)
 
 
 def _line_number_header(cell: str, hints: Mapping[str, str]) -> bool:
@@ -74,6 +84,31 @@ def _best(rows: Sequence[Sequence[str]], hints: Mapping[str, str]) -> tuple[int,
         if score >= ENOUGH:
             break
     return best, best_score
+
+
+def _has_line_number(row: Sequence[str], hints: Mapping[str, str]) -> bool:
+    """Return whether a row holds a line-number header; a cell with digits is none, which spares reading the lines."""
+    return any(
+        len(cell) <= LONGEST_LINE_HEADER and not any(map(str.isdigit, cell)) and _line_number_header(cell, hints)
+        for cell in row
+        if cell.strip()
+    )
+
+
+def _legend_passed(rows: Sequence[Sequence[str]], index: int, hints: Mapping[str, str]) -> int:
+    """Return the row of the headers where the first row with a line-number header is one of a legend or title block.
+
+    It is one where a later row has more headers of numbers, and the first has next to none or nothing beneath it.
+    """
+    best, most = index, count_numbers(rows[index], hints)
+    for later in range(index + 2, min(len(rows), ROWS_SEARCHED)):
+        if not _has_line_number(rows[later], hints):
+            continue
+        numbers = count_numbers(rows[later], hints)
+        nothing_between = not any(cell.strip() for row in rows[best + 1 : later] for cell in row)
+        if numbers > most and (nothing_between or most < FEW_NUMBERS <= numbers - most):
+            best, most = later, numbers
+    return best
 
 
 def _refuse(file: str, rows: Sequence[Sequence[str]], index: int, score: int, hints: Mapping[str, str]) -> InputError:
@@ -134,23 +169,49 @@ def _refuse_transposed(rows: Sequence[Sequence[str]], index: int, hints: Mapping
         raise _transposed(f"{beneath} headers stand beneath {shown(row[line_column])}", file, index + 1)
 
 
-def _with_group_above(
-    rows: Sequence[Sequence[str]], index: int, headers: tuple[str, ...], hints: Mapping[str, str]
+@dataclass(frozen=True, slots=True)
+class _Above:
+    """Headers with the rows above them, how many rows were used, and the columns in doubt."""
+
+    headers: tuple[str, ...]
+    used: int
+    doubts: Mapping[int, str]
+
+
+def _split_line_number(
+    above: Sequence[str], headers: tuple[str, ...], hints: Mapping[str, str]
 ) -> tuple[str, ...] | None:
-    """Return the headers with the group names of the row above them, None where that row names no groups."""
-    if index == 0 or not any(cell.strip() for cell in rows[index - 1]):
-        return None
-    joined = join_rows(rows[index - 1], headers, hints)
+    """Return the headers joined with a row above that has a line-number header too; None where that says nothing."""
+    joined = join_rows(above, headers, hints)
     keeps_line_number = any(_line_number_header(cell, hints) for cell in joined)
     as_many = count_understood(joined, hints) >= count_understood(headers, hints)
-    groups = means_another(joined, headers, hints) or any(_line_number_header(cell, hints) for cell in rows[index - 1])
-    return joined if as_many and keeps_line_number and groups else None
+    return joined if as_many and keeps_line_number else None
+
+
+def _with_rows_above(
+    rows: Sequence[Sequence[str]], index: int, headers: tuple[str, ...], hints: Mapping[str, str]
+) -> _Above:
+    """Return the headers with the group names of the row above them, of two rows where both name groups."""
+    plain = _Above(headers, 0, {})
+    above = rows[index - 1] if index else ()
+    if not any(cell.strip() for cell in above):
+        return plain
+    if any(_line_number_header(cell, hints) for cell in above):
+        joined = _split_line_number(above, headers, hints)
+        return _Above(joined, 1, {}) if joined else plain
+    lines = line_number_columns(headers, hints)[:1]
+    found = with_groups(above, headers, lines, hints)
+    if tuple(found.headers) == headers and not found.doubts:
+        return plain
+    return _Above(tuple(found.headers), 1, found.doubts)
 
 
 def _no_number(row: Sequence[str], headers: Sequence[str], line_column: int) -> bool:
-    """Return whether a row beneath the headers has no line number: a blank, a dash, or the header's own text again."""
+    """Return whether a row beneath the headers has no line number: a blank, a dash, or words of the header's own."""
     cell = row[line_column].strip() if line_column < len(row) else ""
-    return cell in ("", "-", "\u2013") or cell.casefold() == headers[line_column].casefold()
+    if cell in ("", "-", "\u2013") or cell.casefold() == headers[line_column].casefold():
+        return True
+    return len(cell) > 1 and cell.isalpha() and _line_number_header(f"{headers[line_column]} {cell}", {})
 
 
 @dataclass
@@ -162,6 +223,8 @@ class _Beneath:
     follows: int
     joined: list[int]
     notes: list[str]
+    doubts: dict[int, str] = field(default_factory=dict)
+    cases: dict[int, tuple[str, str]] = field(default_factory=dict)
 
 
 def _deeper(
@@ -184,9 +247,17 @@ def _join_beneath(
 ) -> bool:
     """Read a row as headers, with the next one if need be, or as symbols; return whether it is one of these."""
     row = rows[number]
+    cases = None if found.units or found.cases else cases_beneath(row, found.headers, hints)
+    if cases is not None:
+        found.headers, found.follows = tuple(cases.headers), number + 1
+        found.cases |= cases.cases
+        found.doubts |= cases.doubts
+        found.joined.append(number)
+        return True
     joined = join_rows(found.headers, row, hints)
     better = count_understood(joined, hints) > count_understood(found.headers, hints)
-    if not found.units and (better or names_quantities(row, found.headers, hints)):
+    words = names_quantities(row, found.headers, hints) or words_beneath(row, joined, hints)
+    if not found.units and (better or words):
         found.headers, found.follows = joined, number + 1
         found.joined.append(number)
         return True
@@ -213,8 +284,10 @@ def _read_beneath(
         row = rows[number]
         if is_numbering(row):
             found.notes.append(f"Row {number + 1} numbers the columns: left out.")
-        elif not found.units and is_units_row(row, found.headers, line_column):
+        elif not found.units and is_units_row(row, found.headers, line_column, hints):
             found.units = tuple(bare(cell) for cell in row)
+            found.headers, doubts = with_units_beneath_groups(found.headers, found.units, hints)
+            found.doubts |= doubts
             found.notes.append(f"Units in row {number + 1}.")
         elif any(cell.strip() for cell in row) and _no_number(row, found.headers, line_column):
             if _join_beneath(found, rows, number, line_column, hints):
@@ -246,14 +319,21 @@ def find_layout(rows: Sequence[Sequence[str]], *, file: str, hints: Mapping[str,
     index, score = _best(rows, hints)
     if score < LINE_NUMBER_WEIGHT:
         raise _refuse(file, rows, index, score, hints)
+    first = index
+    index = _legend_passed(rows, first, hints)
     _refuse_transposed(rows, index, hints, file)
     headers = tuple(cell.strip() for cell in rows[index])
-    above = _with_group_above(rows, index, headers, hints)
-    found = _read_beneath(rows, index, above or headers, hints)
-    numbers = [*([index] if above else []), index + 1, *(number + 1 for number in found.joined)]
+    above = _with_rows_above(rows, index, headers, hints)
+    found = _read_beneath(rows, index, above.headers, hints)
+    numbers = [*([index] if above.used else []), index + 1, *(number + 1 for number in found.joined)]
     if len(numbers) > 1:
         notes = [f"Headers in rows {', '.join(map(str, numbers[:-1]))} and {numbers[-1]}, read together."]
     else:
         notes = [f"Headers in row {index + 1}."]
+    if index != first:
+        notes.append(
+            f"Row {first + 1} names a line number too, but few numbers: the rows above row {index + 1} are not read."
+        )
     units = (*found.units, *[""] * len(found.headers))[: len(found.headers)]
-    return Layout(found.headers, units, index + 1, found.follows + 1, (*notes, *found.notes))
+    doubts = {**above.doubts, **found.doubts}
+    return Layout(found.headers, units, index + 1, found.follows + 1, (*notes, *found.notes), doubts, found.cases)

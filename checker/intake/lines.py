@@ -9,13 +9,14 @@ from itertools import compress
 import numpy as np
 
 from checker.errors import InputError, Problem
+from checker.intake.later_headers import LaterHeaders
 from checker.intake.layout import Layout
 from checker.intake.records import Block, Form
 from checker.intake.row_kinds import RepeatedRows, two_tags
 from checker.intake.row_sorting import Sorting
 from checker.intake.table_rows import Cells, Table, read_table
 from checker.intake.texts import place, shown
-from checker.model import IntArray, UnreadItem
+from checker.model import Address, IntArray, UnreadItem
 
 __all__ = ["Lines", "find_lines", "named_rows"]
 
@@ -70,6 +71,7 @@ def find_lines(
     line_column: int,
     number_columns: Collection[int],
     said_columns: Collection[int] = (),
+    status_columns: Collection[int] = (),
     struck: Collection[int] = frozenset(),
 ) -> Lines:
     """Read the rows beneath the header and return the lines, and the rows that are none.
@@ -88,6 +90,8 @@ def find_lines(
         Columns whose plain numbers are read on the way.
     said_columns : collection of int
         Columns of remarks and status, which may say that a line is deleted.
+    status_columns : collection of int
+        Those of the status among them, where one letter may say so.
     struck : collection of int
         Rows (counted from 0) that are struck through: lines deleted by their originator.
 
@@ -99,9 +103,11 @@ def find_lines(
     table = read_table(blocks, form, layout, number_columns, file)
     sorting = Sorting(table, table.columns(), line_column, file, layout.headers[line_column])
     sorting.struck(struck)
+    sorting.other_tables(LaterHeaders(form.head, layout, line_column, number_columns))
     sorting.by_number(RepeatedRows(form.head, layout, line_column))
-    sorting.by_words(said_columns, layout.headers)
+    sorting.by_words(said_columns, status_columns, layout.headers)
     sorting.headings()
+    sorting.without_number()
     if not sorting.keep.any():
         raise InputError(
             Problem(
@@ -110,7 +116,7 @@ def find_lines(
                 remedy="Give a list with at least one line; an empty list is never checked as if it were in order.",
             )
         )
-    return _kept(table, sorting, line_column)
+    return _kept(table, sorting, line_column, _trimmed(table, layout, file))
 
 
 def _notes(table: Table, sorting: Sorting, joined: Sequence[int], lines: int) -> tuple[str, ...]:
@@ -119,7 +125,7 @@ def _notes(table: Table, sorting: Sorting, joined: Sequence[int], lines: int) ->
         f"Rows beneath the header: {rows}, of which {lines} are lines, {len(sorting.deleted)} deleted lines, "
         f"{len(sorting.unread)} no lines and {rows - lines - listed} blank."
     ]
-    if table.short:
+    if table.short and not table.common_width:
         notes.append(f"Rows shorter than the header, the rest taken as blank: {named_rows(table.short)}.")
     if joined:
         notes.append(
@@ -128,7 +134,21 @@ def _notes(table: Table, sorting: Sorting, joined: Sequence[int], lines: int) ->
     return tuple(notes)
 
 
-def _kept(table: Table, sorting: Sorting, line_column: int) -> Lines:
+def _trimmed(table: Table, layout: Layout, file: str) -> tuple[UnreadItem, ...]:
+    """Return the question that nearly all rows raise by being shorter than the header."""
+    if not table.common_width:
+        return ()
+    last = next(header for header in reversed(layout.headers) if header) if any(layout.headers) else ""
+    reason = (
+        f"nearly all rows have {table.common_width} cells where the header has {len(layout.headers)} (rows "
+        f"{named_rows(table.short)}): the last columns, to {shown(last)}, are taken as blank in them; if instead a "
+        "delimiter stands unquoted in the header, put that header in quotation marks, for the columns behind it are "
+        "read one place off."
+    )
+    return (UnreadItem("", last, reason, Address(file, layout.header_row, last)),)
+
+
+def _kept(table: Table, sorting: Sorting, line_column: int, trimmed: tuple[UnreadItem, ...]) -> Lines:
     keep, columns = sorting.keep, sorting.columns
     joined = _break_rows_with_two_tags(table, sorting, columns[line_column])
     every = bool(keep.all())
@@ -138,7 +158,7 @@ def _kept(table: Table, sorting: Sorting, line_column: int) -> Lines:
         np.asarray(table.row_numbers, dtype=np.int32)[keep],
         columns if every else tuple(column.kept(keep) for column in columns),
         {int(place_of[index]): reason for index, reason in table.broken.items() if keep[index]},
-        tuple(sorted(sorting.unread, key=lambda item: item.address.row)),
+        tuple(sorted((*trimmed, *sorting.unread, *sorting.questions), key=lambda item: item.address.row)),
         _notes(table, sorting, joined, int(keep.sum())),
         tuple(sorted(sorting.deleted, key=lambda item: item.address.row)),
     )

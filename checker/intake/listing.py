@@ -41,7 +41,7 @@ def unread_items(
     items.extend(lines.unread)
     for column in plan.columns:
         mine = converted[column.index]
-        if isinstance(mine, ConvertedNumbers) and mine.column_refusal:
+        if isinstance(mine, ConvertedNumbers) and mine.column_is_refused():
             address = Address(file, layout.header_row, column.header)
             items.append(UnreadItem("", column.header, mine.column_refusal, address))
         cells = lines.columns[column.index]

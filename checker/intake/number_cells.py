@@ -28,6 +28,7 @@ from checker.intake.not_numbers import known_words
 from checker.intake.number_shapes import NumberRefusedError
 from checker.intake.placeholders import open_behind_number, placeholder
 from checker.intake.ranges import LOWEST_DESIGN
+from checker.intake.stated_twice import agree, two_statements
 from checker.intake.texts import shown, tidy
 from checker.intake.unit_words import unit_in_cell
 from checker.intake.word_values import word_value
@@ -99,6 +100,27 @@ def _with_vacuum(text: str, plain: str, context: NumberContext) -> Cell | None:
     vacuum = float(from_si(0.0, unit, atmosphere=context.atmosphere)) if unit else 0.0
     record = CellRecord(text, (vacuum, *record.numbers), record.unit, (0.0, *record.values), "down to full vacuum")
     return Cell(cell.reading._replace(lowest=0.0), record)
+
+
+def _stated_twice(text: str, plain: str, context: NumberContext) -> Cell | None:
+    """Return the reading of one value stated in two units (``50 °C (122 °F)``), None for any other cell."""
+    texts = two_statements(plain) if len(plain) <= LONGEST_NUMBER else None
+    if texts is None:
+        return None
+    try:
+        first, second = (_parts(part, context) for part in texts)
+    except NumberRefusedError:
+        return None
+    units = first.units[0] or context.unit, second.units[0]
+    if units[0] is None or units[1] is None or any(len(part.numbers) > 1 or part.kind for part in (first, second)):
+        return None
+    cells = [_measured(text, part, context) for part in (first, second)]
+    if any(cell.reading.gap is not Gap.GIVEN or cell.reading.rests_on for cell in cells):
+        return None
+    if not agree(texts, (cells[0].reading.value, cells[1].reading.value), (units[0], units[1])):
+        names = " and ".join(shown(part) for part in texts)
+        return refused(text, f"{shown(text)} states {names}, which are not one value: write the one that holds.")
+    return Cell(cells[0].reading, cells[0].record._replace(remark="stated twice, in two units that agree"))
 
 
 def _not_used(parts: CellParts, record: CellRecord, context: NumberContext) -> Cell:
@@ -182,9 +204,9 @@ def _read(text: str, context: NumberContext) -> Cell:
         gap = Gap.HOLD
     if gap is not Gap.GIVEN:
         return Cell(CellReading(NAN, gap), CellRecord(text))
-    beside_vacuum = _with_vacuum(text, plain, context)
-    if beside_vacuum is not None:
-        return beside_vacuum
+    special = _with_vacuum(text, plain, context) or _stated_twice(text, plain, context)
+    if special is not None:
+        return special
     try:
         parts = _parts(plain, context)
     except NumberRefusedError as refusal:

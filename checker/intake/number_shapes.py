@@ -33,6 +33,7 @@ _COMMA_THOUSANDS = re.compile(r"(?:[1-9]\d{0,2}(?:,\d{3})+|[1-9]\d?(?:,\d{2})+,\
 _LONE_COMMA = re.compile(r"[1-9]\d{0,2},\d{3}", re.ASCII)
 _DECIMAL_COMMA = re.compile(r"(\d*|[1-9]\d{0,2}(?:\.\d{3})+),(\d+)", re.ASCII)
 _LONE_POINT = re.compile(r"[1-9]\d{0,2}\.\d{3}", re.ASCII)
+_LEADING_ZERO = re.compile(r"0\d+", re.ASCII)
 _POINT_THOUSANDS = re.compile(r"[1-9]\d{0,2}(?:\.\d{3}){2,}", re.ASCII)
 
 
@@ -82,13 +83,17 @@ def _point(body: str, marks: Marks) -> str:
         return body
     if marks.point == THOUSANDS:
         return body.replace(".", "")
-    raise NumberRefusedError(
-        f"reads as {body} or as {body.replace('.', '')} in a list with decimal commas: write which."
-    )
+    where = "in a list with decimal commas" if marks.comma == DECIMAL else "and no other cell shows which"
+    whole = body.replace(".", "")
+    raise NumberRefusedError(f"reads as {body} or as {whole} {where}: write {body}0 or {whole}.")
 
 
 def _digits(body: str, marks: Marks, delimiter: str) -> str:
     """Return a body as ``float`` takes it."""
+    if _LEADING_ZERO.fullmatch(body):
+        raise NumberRefusedError(
+            "begins with zeros, like a code or the cell of another column: write it without them if a number is meant."
+        )
     if " " in body or "'" in body:
         if not _GROUPS.fullmatch(body):
             raise NumberRefusedError("is more than one number: give one value per case.")

@@ -63,12 +63,15 @@ class PlainNumbers:
         True where the cell is a plain number of more figures or a higher power than can be read here.
     blank : bool array, shape (cells,)
         True where the cell is empty.
+    noughts : bool array, shape (cells,)
+        True where the cell is a whole number without a sign that begins with a nought and has more figures.
     """
 
     values: FloatArray
     marks: CodeArray
     long: BoolArray
     blank: BoolArray
+    noughts: BoolArray
 
 
 @dataclass(frozen=True, slots=True)
@@ -80,6 +83,7 @@ class _Runs:
     decimals: NDArray[np.int64]
     marks: CodeArray
     sound: BoolArray
+    noughts: BoolArray
 
 
 def read_plain(joined: str) -> PlainNumbers:
@@ -95,31 +99,32 @@ def read_plain(joined: str) -> PlainNumbers:
     filled = np.flatnonzero(~blank)
     numbers = blank[closes]
     values, marks = np.full(numbers.size, np.nan), np.zeros(numbers.size, dtype=np.int8)
-    long = np.zeros(numbers.size, dtype=np.bool_)
+    long, noughts = np.zeros(numbers.size, dtype=np.bool_), np.zeros(numbers.size, dtype=np.bool_)
     if filled.size:
         cells = np.flatnonzero(~numbers)
         lead = starts[filled[0]]
-        values[cells], marks[cells], long[cells] = _read_filled(
+        values[cells], marks[cells], long[cells], noughts[cells] = _read_filled(
             octets[lead:], kinds[lead:], starts[filled] - lead, ends[filled] - lead
         )
-    return PlainNumbers(values, marks, long, numbers)
+    return PlainNumbers(values, marks, long, numbers, noughts)
 
 
 def _read_filled(
     octets: NDArray[np.intp], kinds: NDArray[np.uint32], starts: NDArray[np.int64], ends: NDArray[np.int64]
-) -> tuple[FloatArray, CodeArray, BoolArray]:
-    """Return value and mark of each cell that is not blank, and whether it is too long to be read here.
+) -> tuple[FloatArray, CodeArray, BoolArray, BoolArray]:
+    """Return value and mark of each cell that is not blank, whether it is too long, and whether it begins with noughts.
 
     A cell is one run, or two where it has an exponent.
     """
     runs = _read_runs(octets, kinds, starts, ends)
     last = np.flatnonzero(octets.take(ends) == 0)
     power, marks, plain, values, figures = -runs.decimals, runs.marks, runs.sound, runs.whole, runs.figures
+    noughts = runs.noughts
     if last.size < ends.size:
         count = np.diff(last, prepend=-1)
         first = last - count + 1
         values, power, marks, figures = values[first], power[first], marks[first], figures[first]
-        plain = plain[first] & (count <= 2)
+        plain, noughts = plain[first] & (count <= 2), noughts[first] & (count == 1)
         raised = np.flatnonzero(plain & (count == 2))
         exponent = last[raised]
         plain[raised] = runs.sound[exponent] & (runs.marks[exponent] == Mark.NONE) & (runs.figures[exponent] <= 3)
@@ -131,7 +136,7 @@ def _read_filled(
     values = np.where(power < 0, values / scale, values * scale)
     values[~exact] = np.nan
     marks *= plain
-    return values, marks, plain & ~exact
+    return values, marks, plain & ~exact, noughts & plain
 
 
 def _read_runs(
@@ -156,7 +161,8 @@ def _read_runs(
     decimals[marked] = _figures_behind_mark(kinds, behind, starts, marked)
     doubtful = (decimals == 3) & (figures >= 4) & (figures <= 6) & (octets.take(starts + signed) != 48)
     marks = (points + 2 * commas + 2 * doubtful).astype(np.int8)
-    return _Runs(np.where(leading == 45, -whole, whole), figures, decimals, marks, sound)
+    noughts = (leading == 48) & (figures >= 2) & (marks == Mark.NONE)
+    return _Runs(np.where(leading == 45, -whole, whole), figures, decimals, marks, sound, noughts)
 
 
 def _figures_behind_mark(

@@ -116,6 +116,7 @@ def read_line_list(
             line_column=line_number_columns(layout.headers, fields)[0],
             number_columns=number_columns(layout, hints, file),
             said_columns=_columns_of(layout.headers, SAYS_DELETED, fields),
+            status_columns=_columns_of(layout.headers, {"status"}, fields),
             struck=opened.struck,
         )
         plan = plan_columns(layout, lines.columns, file=file, hints=hints, units=units or {}, comma=form.comma)

@@ -15,8 +15,11 @@ __all__ = [
     "HOLDS_NOTHING",
     "RepeatedRows",
     "deleted_word",
+    "doubts_line",
     "heading_test",
     "may_be_no_line",
+    "no_line_number",
+    "only_spare",
     "says_deleted",
     "two_tags",
     "why_no_line",
@@ -36,6 +39,24 @@ _DELETED = re.compile(
     r"|void|spare)[\W_]*",
     re.IGNORECASE,
 )
+_SPARE = re.compile(r"[\W_]*spare[\W_]*", re.IGNORECASE)
+_DOUBT = re.compile(
+    r"\b(?:deleted|deletion|delete|cancel+ed|withdrawn|voided|demolish(?:ed)?|decommissioned|abandoned|superseded)\b"
+    r"|\bdel\.(?!\w)",
+    re.IGNORECASE,
+)
+_DOUBT_STEMS = (
+    "DELET", "CANCEL", "WITHDRAWN", "VOIDED", "DEMOLISH", "DECOMMISSIONED", "ABANDONED", "SUPERSEDED", "DEL.",
+)  # fmt: skip
+_STATUS_DOUBT = re.compile(r"\W*(?:d|del|dem|demo)\W*", re.IGNORECASE)
+_NO_NUMBERS = {
+    **dict.fromkeys(("TRUE", "FALSE"), "a yes or no of the spreadsheet program"),
+    **dict.fromkeys(("0", "0.0"), "nothing"),
+    **dict.fromkeys(
+        ("#REF!", "#N/A", "#VALUE!", "#NAME?", "#DIV/0!", "#NUM!", "#NULL!", "#SPILL!", "#CALC!", "#GETTING_DATA"),
+        "an error of the spreadsheet program",
+    ),
+}
 _ANY = re.compile("|".join(f"(?:{part.pattern})" for part in (_TOTAL, _NOTE, HOLDS_NOTHING)), re.IGNORECASE)
 _DELETED_STEMS = (
     "DELETED",
@@ -124,6 +145,27 @@ def deleted_word(texts: Sequence[str]) -> list[bool]:
     if not any(stem in capitals for stem in _DELETED_STEMS):
         return [False] * len(texts)
     return [_DELETED.fullmatch(text) is not None for text in texts]
+
+
+def only_spare(text: str) -> bool:
+    """Return whether a text says *spare* only, which names a deleted line as well as a spare one."""
+    return _SPARE.fullmatch(text) is not None
+
+
+def doubts_line(texts: Sequence[str], *, status: bool) -> list[bool]:
+    """Return which texts say that something is deleted, beside other words; in a column of the status, ``D`` too."""
+    capitals = "\n".join(texts).upper()
+    if not status and not any(stem in capitals for stem in _DOUBT_STEMS):
+        return [False] * len(texts)
+    return [_DOUBT.search(text) is not None or (status and _STATUS_DOUBT.fullmatch(text) is not None) for text in texts]
+
+
+def no_line_number(number: str) -> str:
+    """Return why a text cannot be a line number, empty where it can."""
+    what = _NO_NUMBERS.get(number.upper())
+    if what is None:
+        return ""
+    return f"the line number {shown(number)} is {what}, so the values of the row belong to no line: write its number."
 
 
 def why_no_line(number: str, row: Sequence[str], line_column: int) -> str:

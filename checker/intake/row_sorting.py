@@ -7,19 +7,23 @@ from collections.abc import Collection, Sequence
 import numpy as np
 
 from checker.intake.cells import CodedCells, NumberCells
+from checker.intake.later_headers import LaterHeaders
 from checker.intake.plain_numbers import PARTING
 from checker.intake.row_kinds import (
     HOLDS_NOTHING,
     RepeatedRows,
     deleted_word,
+    doubts_line,
     heading_test,
     may_be_no_line,
+    no_line_number,
+    only_spare,
     says_deleted,
     why_no_line,
 )
 from checker.intake.table_rows import Cells, Table
 from checker.intake.texts import shown
-from checker.model import Address, UnreadItem
+from checker.model import Address, BoolArray, UnreadItem
 
 __all__ = ["Sorting"]
 
@@ -48,7 +52,9 @@ class Sorting:
         self.keep = np.ones(len(self.numbers), dtype=np.bool_)
         self.unread: list[UnreadItem] = []
         self.deleted: list[UnreadItem] = []
+        self.questions: list[UnreadItem] = []
         self._row_numbers = table.row_numbers
+        self._broken = table.broken
         self._line_column, self._file, self._header = line_column, file, header
 
     def _put(self, index: int, reason: str) -> None:
@@ -64,11 +70,21 @@ class Sorting:
         item = UnreadItem(number, number, f"Row {row}: {reason}", Address(self._file, row, self._header))
         self.deleted.append(item)
 
+    def other_tables(self, later: LaterHeaders) -> None:
+        """Take out the rows of headers or units that differ from the first ones, and refuse what is beneath them."""
+        found, spans = later.differences(self.numbers, self.columns, self._row_numbers)
+        for difference in found:
+            self._put(difference.index, f"{difference.reason}, so it begins another table.")
+        for first, end, reason in spans:
+            self._broken.update(dict.fromkeys(range(first + 1, end), reason))
+
     def by_number(self, repeated: RepeatedRows) -> None:
         """Take out blank rows, repeats of the header, totals, notes, and lines called deleted instead of numbered."""
         suspects = may_be_no_line(self.numbers, repeated)
         deleted = deleted_word([self.numbers[index] for index in suspects])
         for index, is_deleted in zip(suspects, deleted, strict=True):
+            if not self.keep[index]:
+                continue
             number, row = self.numbers[index], [column[index] for column in self.columns]
             if is_deleted:
                 self._delete(index, says_deleted("line number", number))
@@ -77,18 +93,53 @@ class Sorting:
             elif reason := repeated.why(number, row) or why_no_line(number, row, self._line_column):
                 self._put(index, reason)
 
-    def by_words(self, said_columns: Collection[int], headers: Sequence[str]) -> None:
-        """Take out the lines that are called deleted: in their remarks or status, or in the one cell they fill."""
+    def by_words(self, said_columns: Collection[int], status_columns: Collection[int], headers: Sequence[str]) -> None:
+        """Take out the lines that are called deleted: in their remarks or status, or in the one cell they fill.
+
+        Where a cell only lets suspect that its line is deleted, the line is kept and the cell is asked about.
+        """
         for position, column in enumerate(self.columns):
             if position == self._line_column:
                 continue
-            said = np.array(deleted_word(column.texts), dtype=np.bool_)
-            if not said.any():
-                continue
-            mine = np.flatnonzero(said[column.codes] & (column.codes >= 0) & self.keep)
-            for index in mine.tolist():
-                if position in said_columns or self._says_nothing_else(index):
-                    self._delete(index, says_deleted(f"column {shown(headers[position])}", column[index]))
+            self._delete_said(position, headers[position], said=position in said_columns)
+            if position in said_columns:
+                doubtful = np.array(doubts_line(column.texts, status=position in status_columns), dtype=np.bool_)
+                for index in self._with(column, doubtful):
+                    self._ask(index, headers[position], column[index])
+
+    def _with(self, column: Cells, chosen: BoolArray) -> list[int]:
+        """Return the rows kept whose cell is one of the chosen distinct texts of a column."""
+        if not chosen.any():
+            return []
+        mine: list[int] = np.flatnonzero(chosen[column.codes] & (column.codes >= 0) & self.keep).tolist()
+        return mine
+
+    def _delete_said(self, position: int, header: str, *, said: bool) -> None:
+        column = self.columns[position]
+        for index in self._with(column, np.array(deleted_word(column.texts), dtype=np.bool_)):
+            text = column[index]
+            if self._says_nothing_else(index) or (said and not only_spare(text)):
+                self._delete(index, says_deleted(f"column {shown(header)}", text))
+            else:
+                self._ask(index, header, text)
+
+    def _ask(self, index: int, header: str, text: str) -> None:
+        """Ask whether a line is deleted that is checked as it stands."""
+        row = self._row_numbers[index]
+        reason = (
+            f"row {row}: column {shown(header)} says {shown(text)}: is the line deleted? It is checked as it stands; "
+            "write DELETED alone in its remarks or status, or nothing of the kind."
+        )
+        self.questions.append(UnreadItem(self.numbers[index], text[:200], reason, Address(self._file, row, header)))
+
+    def without_number(self) -> None:
+        """Refuse the values of rows whose line number can be none: an error value, a yes or no, zero."""
+        reasons = {number: reason for number in set(self.numbers) if (reason := no_line_number(number))}
+        if not reasons:
+            return
+        for index, number in enumerate(self.numbers):
+            if self.keep[index] and number in reasons:
+                self._broken[index] = reasons[number]
 
     def _says_nothing_else(self, index: int) -> bool:
         """Return whether every cell of a row besides its line number is blank, a dash or the word itself."""

@@ -8,12 +8,16 @@ from collections.abc import Collection, Iterable, Iterator, Sequence
 from checker.errors import InputError, Problem
 from checker.intake.cells import CellCollector, CodedCells, NumberCells, NumberCollector, collect_numbers
 from checker.intake.layout import Layout
-from checker.intake.records import MOST_COLUMNS, Block, Form
+from checker.intake.records import DELIMITERS, MOST_COLUMNS, Block, Form
 from checker.intake.texts import place, shown
+from checker.intake.widths import Widths, unquoted_header
 
 __all__ = ["Cells", "Table", "read_table"]
 
 _BREAKS = re.compile("[\x0b\x0c\x1c-\x1e\x85\u2028\u2029]")
+
+_GROUP = re.compile(r"0\d\d", re.ASCII)
+_LEADING = re.compile(r"[-+]?[1-9]\d{0,2}", re.ASCII)
 
 Cells = CodedCells | NumberCells
 
@@ -28,6 +32,8 @@ class Table:
         self.row_numbers: list[int] = []
         self.broken: dict[int, str] = {}
         self.short: list[int] = []
+        self.widths = Widths()
+        self.common_width = 0
         self.blank = 0
 
     def add(self, block: Block, delimiter: str) -> None:
@@ -42,7 +48,17 @@ class Table:
         columns = list(zip(*rows, strict=True))
         for position, collector in self.texts.items():
             collector.add(columns[position])
-        collect_numbers(tuple(self.numbers.values()), [columns[position] for position in self.numbers])
+        zeros = collect_numbers(tuple(self.numbers.values()), [columns[position] for position in self.numbers])
+        if zeros and delimiter == ",":
+            self._break_moved(rows, zeros)
+
+    def _break_moved(self, rows: Sequence[Sequence[str]], zeros: Sequence[tuple[int, int]]) -> None:
+        """Refuse rows in which a comma has parted the thousands of a number that is not quoted (``1,000``)."""
+        positions, first = tuple(self.numbers), len(self.row_numbers) - len(rows)
+        for column, index in zeros:
+            position, row = positions[column], rows[index]
+            if position and _GROUP.fullmatch(row[position].strip()) and _LEADING.fullmatch(row[position - 1].strip()):
+                self.broken.setdefault(first + index, _moved_reason(row, position))
 
     def columns(self) -> tuple[Cells, ...]:
         """Return all cells collected, column by column."""
@@ -62,6 +78,7 @@ class Table:
                 continue
             elif len(row) < width:
                 self.short.append(number)
+                self.widths.add(row)
             elif any(cell.strip() for cell in row[width:]):
                 self.broken[line] = _long_reason(row, width)
             self.row_numbers.append(number)
@@ -74,6 +91,15 @@ def _long_reason(row: Sequence[str], width: int) -> str:
     return (
         f"the row has {len(row)} cells where the header has {width} columns (cell {width + 1} and on: {shown(extra)}): "
         f"an unquoted delimiter may have moved its values, none is used.{broken}"
+    )
+
+
+def _moved_reason(row: Sequence[str], position: int) -> str:
+    before, group = row[position - 1].strip(), row[position].strip()
+    return (
+        f"cells {position} and {position + 1} ({shown(before)} and {shown(group)}) may be one number with a comma "
+        f"between its thousands ({before},{group}), which moves the values behind it: none of the row is used; put the "
+        "number in quotation marks, or write it without the comma."
     )
 
 
@@ -101,7 +127,29 @@ def read_table(
             block = Block(block.first + above, block.rows[above:], damaged)
         if block.rows:
             table.add(block, form.delimiter)
+    if form.delimiter:
+        _refuse_unquoted_header(table, form, layout, file)
     return table
+
+
+def _refuse_unquoted_header(table: Table, form: Form, layout: Layout, file: str) -> None:
+    """Refuse a file whose header row has more cells than its rows, where they tell that its headers have moved."""
+    header = form.head[layout.header_row - 1]
+    header = header[: max(count for count, cell in enumerate(header, start=1) if cell.strip())]
+    table.common_width = table.widths.common(len(table.row_numbers))
+    evidence = (
+        unquoted_header(header, table.common_width, table.widths.sample, form.delimiter) if table.common_width else ""
+    )
+    if evidence:
+        sign = DELIMITERS.get(form.delimiter, "delimiter")
+        raise InputError(
+            Problem(
+                f"the header row has {len(header)} cells and the rows have {table.common_width}: {evidence}, so a "
+                f"{sign} stands unquoted in the header and every column behind it would be read under a wrong header.",
+                where=place(file, layout.header_row),
+                remedy=f"Put the header that holds a {sign} in quotation marks.",
+            )
+        )
 
 
 def _refuse_damaged_header(block: Block, above: int, layout: Layout, form: Form, file: str) -> None:

@@ -7,6 +7,7 @@ import re
 from collections.abc import Iterable
 from itertools import islice
 
+from checker.intake.header_splits import holds_several
 from checker.intake.headers import says_reid, units_in_header
 from checker.intake.texts import fold_words, shown
 from checker.intake.unit_words import is_unit_text
@@ -88,6 +89,8 @@ def unread_reason(header: str, *, row_unit: str, cells: Iterable[str]) -> str:
     """
     if says_reid(header):
         return f"{shown(header)}: {REID}"
+    if holds_several(header[:LONGEST_LOOKED_AT]):
+        return f"{shown(header)} holds several values in one column, so it is not read: give each one its own column."
     if _is_flow(header, row_unit, cells):
         return (
             f"{shown(header)} states a flow in words that are not understood, so it is not read: name its field and "

@@ -192,8 +192,8 @@ def steam_saturation(line: Line) -> Outcome:
     if line.phase == "gas":
         boils = boiling(line["pressure"])
         return said(line["temperature"] < boils - 3, line["temperature"], boils)
-    boils = boiling(line["design_pressure_gauge"] + line.atmosphere)
-    return said(line["temperature"] > boils, line["temperature"], boils)
+    flows, boils = boiling(line["pressure"]), boiling(line["design_pressure_gauge"] + line.atmosphere)
+    return said(line["temperature"] > flows + 3 or line["temperature"] > boils, line["temperature"], flows, boils)
 
 
 def words(text: str) -> set[str]:

@@ -353,3 +353,60 @@ def test_every_refused_value_has_its_sentence(tmp_path: Path) -> None:
             assert np.array_equal(np.isfinite(listed.numbers[name]), given)
         else:
             assert np.array_equal(listed.texts[name].codes >= 0, given)
+
+
+@pytest.mark.parametrize(
+    ("header", "row", "words"),
+    [
+        ("Line No,Size (NPS),Phase,Op press, barg,Flow (kg/h),Temp (C)", "P-1,6,L,5,1000,40", "'Op press' and ' barg'"),
+        ("Line No,Size (NPS),Phase,Op press,barg,Flow (kg/h),Temp (C)", "P-1,6,L,5,1000,40", "'Op press' and 'barg'"),
+        ("Line No,Op press (barg), normal,Temp (C),Design temp (C)", "P-1,5,40,80", "'Op press (barg)' and ' normal'"),
+        ("Line No,From, To,Flow (kg/h),Temp (C)", "P-1,V-1 to V-2,10,40", "'From' and ' To'"),
+        ("Line No,From,To,Flow (kg/h),Temp (C)", "P-1,V-1 to V-2,10,40", "'From' and 'To'"),
+    ],
+)
+def test_a_delimiter_that_stands_unquoted_in_the_header_refuses_the_file(
+    tmp_path: Path, header: str, row: str, words: str
+) -> None:
+    with pytest.raises(InputError) as refusal:
+        read(tmp_path, f"{header}\n{row}\n{row.replace('P-1', 'P-2')}\n")
+    cells = header.count(",") + 1
+    assert f"the header row has {cells} cells and the rows have {cells - 1}: the cells {words}" in str(refusal.value)
+
+
+def test_columns_trimmed_in_every_row_are_read_and_asked_about(tmp_path: Path) -> None:
+    listed = read(tmp_path, "Line No,Size (NPS),Flow (kg/h),Temp (C),Remarks\nP-1,6,1000,40\nP-2,8,2000,50\n")
+    assert listed.number("flow_mass").tolist() == pytest.approx([1000 / 3600, 2000 / 3600])
+    (item,) = listed.unread
+    assert "nearly all rows have 4 cells where the header has 5 (rows 2, 3)" in item.reason
+    assert "put that header in quotation marks" in item.reason
+
+
+def test_some_short_rows_are_only_noted(tmp_path: Path) -> None:
+    listed = read(tmp_path, "Line No,Flow (kg/h),Temp (C),Remarks\nP-1,1000,40\nP-2,2000,50,x\n")
+    assert not listed.unread
+    assert any("Rows shorter than the header" in note for note in listed.notes)
+
+
+@pytest.mark.parametrize("group", ["000", "050"])
+def test_a_comma_between_thousands_that_moves_a_full_row_refuses_it(tmp_path: Path, group: str) -> None:
+    header = "Line No,Size (NPS),Phase,Flow (kg/h),Press (barg),Temp (C)"
+    listed = read(tmp_path, f"{header}\nP-1,6,L,1,{group},5\nP-2,6,L,1000,5,40\n")
+    assert listed.gap("flow_mass").tolist() == [Gap.REFUSED, Gap.GIVEN]
+    assert f"may be one number with a comma between its thousands (1,{group})" in listed.refusals["temperature", 0]
+
+
+@pytest.mark.parametrize("cell", ["000", " 00 ", "0000"])
+def test_noughts_alone_are_no_zero(tmp_path: Path, cell: str) -> None:
+    listed = read(tmp_path, f"Line No;Flow (kg/h);Temp (C)\nP-1;10;{cell}\nP-2;10;0\n")
+    assert listed.gap("temperature").tolist() == [Gap.REFUSED, Gap.GIVEN]
+    assert "write 0, or the whole number" in listed.refusals["temperature", 0]
+
+
+@pytest.mark.parametrize(("cells", "asked"), [(("5 barg", "6 barg"), False), (("5 barg", "6"), True)])
+def test_a_header_without_a_unit_is_asked_about_only_for_a_bare_number(
+    tmp_path: Path, cells: tuple[str, ...], asked: bool
+) -> None:
+    rows = "".join(f"P-{index},10,{cell}\n" for index, cell in enumerate(cells))
+    listed = read(tmp_path, f"Line No,Flow (kg/h),Press\n{rows}")
+    assert any("no unit" in item.reason for item in listed.unread) is asked

@@ -35,6 +35,11 @@ def sentence(listed: LineList, header: str) -> str:
         ("Wall", ("40", "80"), ["schedule", "wall_thickness"]),
         ("Bore", ("100", "80"), ["size", "inside_diameter"]),
         ("Bore [mm]", ("100",), ["size", "inside_diameter"]),
+        ("Max velocity (m/s)", ("3",), ["velocity_allowed", "velocity_stated", "maximum case"]),
+        ("Max vel", ("3",), ["velocity_allowed", "velocity_stated"]),
+        ("Pmax (barg)", ("3",), ["(pressure)", "pressure_design"]),
+        ("Tmax (C)", ("3",), ["(temperature)", "temperature_design"]),
+        ("Tmin (C)", ("3",), ["(temperature)", "temperature_design_minimum"]),
     ],
 )
 def test_header_of_several_fields_is_a_question(
@@ -164,3 +169,24 @@ def test_two_columns_headed_alike_must_be_renamed(tmp_path: Path) -> None:
 def test_two_tables_side_by_side_are_a_question(tmp_path: Path) -> None:
     with pytest.raises(InputError, match=r"two tables stand side by side.*column 4.*which of the two"):
         read(tmp_path, "Line No,Size,Flow [kg/h],Line No,Size,Flow [kg/h]\nP-1,6,5,P-2,6,7\n")
+
+
+@pytest.mark.parametrize(
+    ("header", "units"), [("DP", {"pressure": "barg"}), ("Bore", {"diameter": "mm"}), ("Flow", {"volume flow": "m3/h"})]
+)
+def test_units_of_the_criteria_do_not_say_what_a_header_means(
+    tmp_path: Path, header: str, units: dict[str, str]
+) -> None:
+    listed = read(tmp_path, f"Line No,rho [kg/m3],{header}\nP-1,980,10\n", units=units)
+    assert "could be" in sentence(listed, header)
+    assert not any(np.isfinite(values).any() for name, values in listed.numbers.items() if name != "density")
+
+
+@pytest.mark.parametrize(
+    "header",
+    ["Design P & T (C)", "Design P & T", "Press/Temp (barg)", "Oper/Des/Test P (barg)", "Design P / Design T", "P/T"],
+)
+def test_header_of_several_values_is_an_open_item(tmp_path: Path, header: str) -> None:
+    listed = listed_with(tmp_path, header, "10")
+    assert "holds several values in one column" in sentence(listed, header)
+    assert [name for name, values in listed.numbers.items() if np.isfinite(values).any()] == ["flow_mass"]

@@ -322,7 +322,7 @@ def test_no_spelling_stands_twice_in_one_field() -> None:
 
 
 def test_spellings_of_several_fields_are_those_that_are_asked() -> None:
-    """Only flows, pressure drops, DP, PS, bore and wall may name several fields; all others name one."""
+    """Only flows, pressure drops, DP, PS, bore, wall and a largest velocity may name several fields; all others name one."""
     named: dict[str, set[str]] = {}
     for field in all_fields():
         for text in (field.name, *field.spellings):
@@ -337,4 +337,28 @@ def test_spellings_of_several_fields_are_those_that_are_asked() -> None:
         frozenset({"pressure_design", "painting"}),
         frozenset({"size", "inside_diameter"}),
         frozenset({"schedule", "wall_thickness"}),
+        frozenset({"velocity_stated", "velocity_allowed"}),
     }
+
+
+@pytest.mark.parametrize(
+    ("header", "field", "unit"),
+    [
+        ("Inlet P (barg)", "pressure", "barg"),
+        ("Inlet T (C)", "temperature", "C"),
+        ("Rel. density (SG)", "density", "SG"),
+        ("\u00b0API", "density", "degAPI"),
+        ("LDMT (C)", "temperature_design_minimum", "C"),
+        ("Vap. wt%", "vapour_fraction", "%"),
+        ("Op. temperature / Betriebstemperatur [\u00b0C]", "temperature", "\u00b0C"),
+        ("\u64cd\u4f5c\u538b\u529b Operating Pressure (barg)", "pressure", "barg"),
+        ("\u64cd\u4f5c\u538b\u529bOperating Pressure (barg)", "pressure", "barg"),
+        ("Operating Pressure\n\u64cd\u4f5c\u538b\u529b\n(barg)", "pressure", "barg"),
+        ("\u8bbe\u8ba1\u6e29\u5ea6 Design Temp (C)", "temperature_design", "C"),
+    ],
+)
+def test_spellings_of_two_scripts_and_short_forms(header: str, field: str, unit: str) -> None:
+    reading = read_header(header)
+    assert reading is not None
+    assert [one.name for one in reading.fields] == [field]
+    assert reading.unit == unit

@@ -21,11 +21,13 @@ COLUMNS = [
     (["10,5", "11,5"], ",", DECIMAL, ""), (["0,83"], ",", DECIMAL, ""), (["12,3456"], ",", DECIMAL, ""),
     ([",5"], ",", DECIMAL, ""), (["1 234,5"], ",", DECIMAL, ""), (["1.234,5"], ",", DECIMAL, THOUSANDS),
     (["10,5 barg", "12,5-14,5 barg"], ",", DECIMAL, ""), (["1,234,567"], ",", THOUSANDS, DECIMAL),
-    (["12,345.6"], ",", THOUSANDS, DECIMAL), (["1,87,000"], ",", THOUSANDS, DECIMAL), (["1,234"], ",", "", DECIMAL),
-    (["10,5"], ",", "", DECIMAL), (["10,5"], ";", DECIMAL, ""), (["1,234", "5,678"], ";", "", ""),
+    (["12,345.6"], ",", THOUSANDS, DECIMAL), (["1,87,000"], ",", THOUSANDS, DECIMAL), (["1,234"], ",", "", ""),
+    (["10,5"], ",", "", ""), (["10,5"], ";", DECIMAL, ""), (["1,234", "5,678"], ";", "", ""),
     (["1.234.567"], ";", DECIMAL, THOUSANDS), (["12,5", "12.5"], ";", "", ""), (["10,5", "1,234,567"], ";", "", ""),
     (["1.234,5", "12.5"], ";", "", ""), (["12.5", "1,234"], ";", "", DECIMAL), (["HOLD", "5-7", "-"], ";", "", ""),
-    (["1,5 2,5"], ",", "", DECIMAL), (["5, 7"], ",", "", DECIMAL),
+    (["1,5 2,5"], ",", "", ""), (["5, 7"], ",", "", ""), (["120.000", "95.500"], ";", "", ""),
+    (["120.000", "95.500"], ",", "", ""), (["120.000", "1250.000"], ";", "", DECIMAL), (["120.000", "0.85"], ",", "", DECIMAL),
+    (["120.000"], "", "", DECIMAL),
 ]  # fmt: skip
 
 
@@ -53,6 +55,7 @@ def test_the_decision_is_told_with_a_cell_that_shows_it() -> None:
     assert "as '1,234,567' shows" in decide(NOTHING, evidence_of(["1,234,567"]), comma=False, delimiter=",").note
     assert "two ways" in decide(evidence_of(["0,83", "1,234,567"]), NOTHING, comma=False, delimiter=",").note
     assert decide(NOTHING, NOTHING, comma=False, delimiter=",").note == ""
+    assert decide(evidence_of(["120.000"]), evidence_of(["4.5"]), comma=False, delimiter="\t").point == DECIMAL
     assert decide(evidence_of(["0,83"]), NOTHING, comma=True, delimiter=";").note == ""
 
 

@@ -33,7 +33,63 @@ def test_a_header_of_two_rows_and_its_units_row_repeat_on_every_page(tmp_path: P
 
 def test_a_line_that_differs_from_the_units_row_is_no_repeat(tmp_path: Path) -> None:
     listed = read(tmp_path, f"{TWO_ROWS}P-1,1,20,998\n,barg,degC,kg\n")
-    assert "it has no line number" in reasons(listed)[5]
+    assert "the units in row 5 differ from those of the header (column 4: 'kg' against 'kg/m3')" in reasons(listed)[5]
+
+
+SIX = "Line No,Size (NPS),Phase,Flow (kg/h),Press (barg),Temp (C)"
+SIX_ROW = "P-1,6,L,1000,5,40"
+
+
+@pytest.mark.parametrize(
+    ("again", "words"),
+    [
+        ("Line No,Size (NPS),Phase,Flow (kg/h),Temp (C),Press (barg)", "column 5: 'Temp (C)' against 'Press (barg)'"),
+        ("Line No,Size (NPS),Phase,Flow (t/h),Press (barg),Temp (C)", "column 4: 'Flow (t/h)' against 'Flow (kg/h)'"),
+        ("Line No,Size (DN),Phase,Flow (kg/h),Press (barg),Temp (C)", "column 2: 'Size (DN)' against 'Size (NPS)'"),
+        ("Line number,Size (NPS),Phase,Flow (kg/h),Press (barg),Temp (C)", "column 1: 'Line number' against 'Line No'"),
+        (",,,kg/h,psig,", "row 4 holds units in the middle of the list ('kg/h' in column 'Flow (kg/h)')"),
+        ("Tag,Kind,Duty,Head,Power,Rev", "column 1: 'Tag' against 'Line No'"),
+        ("Tag,Service,Phase,Flow (kg/h),,", "column 1: 'Tag' against 'Line No'"),
+    ],
+)
+def test_values_beneath_another_header_are_not_read(tmp_path: Path, again: str, words: str) -> None:
+    beneath = "P-2,6,L,1,50,100\nArea 2,,,,,\nP-3,6,L,1,50,100\n"
+    listed = read(tmp_path, f"{SIX}\n{SIX_ROW}\n,,,,,\n{again}\n{beneath}{SIX}\nP-4,6,L,2000,5,40\n")
+    assert listed.line_number == ("P-1", "P-2", "P-3", "P-4")
+    for name in ("size", "flow_mass", "pressure", "temperature", "phase"):
+        assert listed.gap(name).tolist() == [Gap.GIVEN, Gap.REFUSED, Gap.REFUSED, Gap.GIVEN], name
+        assert words in listed.refusals[name, 1]
+    assert "give each table a sheet or file of its own, with one header." in listed.refusals["flow_mass", 2]
+    assert words in reasons(listed)[4]
+    assert words in reasons(listed)[5]
+
+
+def test_a_repeat_in_other_capitals_and_blanks_is_one(tmp_path: Path) -> None:
+    listed = read(tmp_path, f"{SIX}\n{SIX_ROW}\n{SIX.upper().replace(' ', '  ')}\nP-2,6,L,2000,5,40\n")
+    assert listed.gap("flow_mass").tolist() == [Gap.GIVEN, Gap.GIVEN]
+    assert "it repeats the header." in reasons(listed)[3]
+
+
+def test_only_the_whole_header_ends_what_other_units_began(tmp_path: Path) -> None:
+    header, units = "Line No,Size,Phase,Flow,Press,Temp", ",NPS,,kg/h,barg,C"
+    pages = [header, ",NPS,,t/h,psig,F", "P-2,6,L,1,50,100", header, "P-3,6,L,1,50,100", header, units, SIX_ROW]
+    listed = read(tmp_path, "\n".join([header, units, SIX_ROW, *pages, ""]))
+    assert listed.gap("flow_mass").tolist() == [Gap.GIVEN, Gap.REFUSED, Gap.REFUSED, Gap.GIVEN]
+    assert "the units in row 5 differ" in listed.refusals["flow_mass", 2]
+
+
+@pytest.mark.parametrize("groups", [",Normal,,Max,", ",Max,,Normal,"])
+def test_groups_that_change_places_make_another_header(tmp_path: Path, groups: str) -> None:
+    header, row = "Line No,Flow (kg/h),Temp (C),Flow (kg/h),Temp (C)", "P-1,1000,40,2000,50"
+    listed = read(tmp_path, f",Normal,,Max,\n{header}\n{row}\n{groups}\n{header}\n{row.replace('1,', '2,')}\n")
+    moved = groups != ",Normal,,Max,"
+    assert listed.gap("flow_mass")[2:].tolist() == [Gap.REFUSED if moved else Gap.GIVEN] * 2
+
+
+@pytest.mark.parametrize("row", ["FLARE MAIN,6,G,by vendor,HOLD,TBC", "P-2,6,L,see note,by client,hot", "X,Y,Z,,,"])
+def test_words_for_values_begin_no_table(tmp_path: Path, row: str) -> None:
+    listed = read(tmp_path, f"{SIX}\n{SIX_ROW}\n{row}\nP-3,6,L,2000,5,40\n")
+    assert listed.gap("flow_mass")[-1] == Gap.GIVEN
 
 
 @pytest.mark.parametrize(
@@ -66,7 +122,7 @@ def test_one_text_without_a_line_number_is_a_heading_or_a_note(tmp_path: Path) -
     assert "1 value left unread; if it belongs to the line above" in reasons(listed)[4]
 
 
-@pytest.mark.parametrize("word", ["DELETED", "Not Used", "VOID", "Cancelled", "CANCELED", "spare", "*** deleted ***"])
+@pytest.mark.parametrize("word", ["DELETED", "Not Used", "VOID", "Cancelled", "CANCELED", "*** deleted ***"])
 def test_deleted_lines_are_listed_and_not_checked(tmp_path: Path, word: str) -> None:
     listed = read(tmp_path, f"{HEADER}\n{ROW}\n{word},6,1,1,60,983,\nP-9,6,1,1,60,983,{word}\nP-10,6,1,1,60,983,x\n")
     assert listed.line_number == ("P-1001", "P-10")
@@ -85,6 +141,39 @@ def test_a_word_in_any_cell_deletes_a_line_that_says_nothing_else(tmp_path: Path
     assert listed.line_number == ("P-1001", "P-4", "P-5")
     assert [item.line_number for item in listed.deleted] == ["P-2", "P-3"]
     assert "column 'Size (NPS)' says 'NOT USED'" in listed.deleted[0].reason
+
+
+@pytest.mark.parametrize(
+    ("service", "status", "remark"),
+    [
+        ("CW", "", "spare"), ("CW", "", "DELETED - see P-4"), ("CW", "", "Line deleted in rev B"), ("DELETED", "", ""),
+        ("CW", "Del.", ""), ("CW", "D", ""), ("CW", "Demolished", ""), ("CW", "", "Cancelled; replaced by P-10"),
+    ],
+)  # fmt: skip
+def test_a_line_with_values_that_may_be_deleted_is_asked_about(
+    tmp_path: Path, service: str, status: str, remark: str
+) -> None:
+    listed = read(tmp_path, f"Line No,Service,Flow (kg/h),Status,Remarks\nP-1,{service},1000,{status},{remark}\n")
+    assert listed.gap("flow_mass").tolist() == [Gap.GIVEN]
+    assert not listed.deleted
+    said = remark or status or service
+    assert f"says '{said}': is the line deleted? It is checked as it stands" in reasons(listed)[2]
+
+
+@pytest.mark.parametrize(
+    ("status", "remark"), [("IFC", "not used in summer"), ("", "spare connection"), ("DELETED", "")]
+)
+def test_a_plain_word_raises_no_question(tmp_path: Path, status: str, remark: str) -> None:
+    listed = read(tmp_path, f"Line No,Flow (kg/h),Status,Remarks\nP-1,1000,{status},{remark}\nP-2,1000,IFC,x\n")
+    assert not listed.unread
+    assert len(listed.deleted) == (status == "DELETED")
+
+
+@pytest.mark.parametrize("number", ["#REF!", "#N/A", "TRUE", "false", "0"])
+def test_what_can_be_no_line_number_refuses_its_row(tmp_path: Path, number: str) -> None:
+    listed = read(tmp_path, f"{HEADER}\n{ROW}\n{number},6,50000,4.5,60,983,\n")
+    assert listed.gap("flow_mass").tolist() == [Gap.GIVEN, Gap.REFUSED]
+    assert f"the line number '{number}' is " in reasons(listed)[3]
 
 
 def test_a_list_of_deleted_lines_only_has_no_lines(tmp_path: Path) -> None:

@@ -28,6 +28,17 @@ PRESSURES = [
     ("kPag", "450", 450_000.0 + SITE_ATMOSPHERE),
     ("MPa(g)", "0.45", 450_000.0 + SITE_ATMOSPHERE),
     ("mbarg", "25", 2_500.0 + SITE_ATMOSPHERE),
+    ("bar rel.", "4.5", 450_000.0 + SITE_ATMOSPHERE),
+    ("bar eff", "4.5", 450_000.0 + SITE_ATMOSPHERE),
+    ("bar ü", "4.5", 450_000.0 + SITE_ATMOSPHERE),
+    ("bar relatifs", "4.5", 450_000.0 + SITE_ATMOSPHERE),
+    ("bar manométrica", "4.5", 450_000.0 + SITE_ATMOSPHERE),
+    ("bar Überdruck", "4.5", 450_000.0 + SITE_ATMOSPHERE),
+    ("kg/cm² man.", "10", 980_665.0 + SITE_ATMOSPHERE),
+    ("kg/cm2 M", "10", 980_665.0 + SITE_ATMOSPHERE),
+    ("bar abs.", "4.5", 450_000.0),
+    ("bar absolu", "4.5", 450_000.0),
+    ("kgf/cm² absoluta", "10", 980_665.0),
 ]
 FLOWS = [
     ("kg/h", "flow_mass", "3600", 1.0, 1e-12),

@@ -23,7 +23,7 @@ from checker.intake.workbook.number_formats import Style, style_of
     [
         ("5", "5"), ("5.0", "5"), ("0", "0"), ("-0", "0"), ("0.10000000000000001", "0.1"), ("1E-3", "0.001"),
         ("1.5500000000000000E+9", "1550000000"), ("-45", "-45"), ("007", "7"), ("1E300", "1e+300"),
-        ("123456789012345678", "123456789012345678"),
+        ("123456789012345678", "123456789012345678"), ("1.2345678901234568E+17", "123456789012345680"),
         ("nan", "nan"), ("1e999", "1e999"), ("1_000", "1_000"), ("\u0665", "\u0665"), ("5,0", "5,0"),
     ],
 )  # fmt: skip
@@ -49,8 +49,18 @@ def test_any_stored_text_gives_a_text(stored: str) -> None:
         ("General", Style()),
         ("0.00", Style()),
         ("#,##0.00", Style()),
-        ("_-* #,##0.00_-;-* #,##0.00_-;_-* -_-", Style()),
+        ("_-* #,##0.00_-;-* #,##0.00_-;_-* 0_-", Style()),
         ("0;[Red](0)", Style()),
+        ("General;-General", Style()),
+        ("# ?/?", Style()),
+        ("0.00E+00", Style()),
+        ("#,##0.00 [$kg/h-409]", Style(after="kg/h")),
+        ('0" m3/h"', Style(after=" m3/h")),
+        ('0"%"', Style(after="%")),
+        ('0"0"', Style(kind="added", code='0"0"')),
+        ('"-"0', Style(kind="sign", code='"-"0')),
+        ("00-000", Style(kind="inlaid", code="00-000")),
+        (";;;", Style(kind="words", code=";;;")),
         ("[$-409]0", Style()),
         ("0000", Style(digits=4)),
         ('"P-"0000', Style(digits=4, before="P-")),
@@ -162,3 +172,65 @@ def test_a_unit_in_the_number_format_is_read(tmp_path: Path) -> None:
     pressures = values_of(read, "pressure")
     assert pressures[0] == pytest.approx(101_325.0 + 450_000.0)
     assert pressures[1] is None
+
+
+@pytest.mark.parametrize(
+    ("value", "code", "words"),
+    [
+        (1000, '0"0"', "shows further digits"),
+        (40, '0"/60"', "shows further digits"),
+        (40, '0"\u00bd"', "shows further digits"),
+        (40, '0"e3"', "shows further digits"),
+        (40, '"1"0', "shows further digits"),
+        (5, '0"."0', "shows signs among its digits"),
+        (0, '0;0;"-"', "shows '-' in its place"),
+        (0, '_-* #,##0_-;-* #,##0_-;_-* "-"??_-', "shows '-' in its place"),
+        (0, "#,###", "does not show it"),
+        (40, ";;;", "does not show it"),
+        (-40, '0;"AMB"', "shows 'AMB' in its place"),
+        (40, '[>4]"HOLD";0', "shows 'HOLD' in its place"),
+        (-40, "0;0", "with another sign"),
+        (40, '"-"0', "with another sign"),
+        (1e17, "0.0", "keeps 15 figures"),
+    ],
+)
+def test_a_format_that_shows_something_else(tmp_path: Path, value: float, code: str, words: str) -> None:
+    def change(sheet: Any) -> None:
+        sheet["E2"] = value
+        sheet["E2"].number_format = code
+
+    read = read_line_list(saved(tmp_path, line("P-1001"), line("P-1002"), change=change))
+    assert [given is None for given in values_of(read, "temperature")] == [True, False]
+    assert words in reason(read, 2, "Oper Temp [degC]")
+
+
+@pytest.mark.parametrize(
+    ("value", "code", "kelvin"),
+    [
+        (0, "0;-0;0", 273.15), (-40, "0;[Red]-0", 233.15), (-40, "0_);(0)", 233.15), (40, '[>99]"HOLD";0', 313.15),
+        (0, "0.0", 273.15), (40, '0;-0;"-"', 313.15), (40, '0" (Note 2)"', 313.15), (40, "0 [$degC-409]", 313.15),
+    ],
+)  # fmt: skip
+def test_a_format_that_shows_the_number(tmp_path: Path, value: float, code: str, kelvin: float) -> None:
+    def change(sheet: Any) -> None:
+        sheet["E2"] = value
+        sheet["E2"].number_format = code
+
+    read = read_line_list(saved(tmp_path, line("P-1001"), change=change))
+    assert values_of(read, "temperature") == [pytest.approx(kelvin)]
+
+
+def test_a_line_number_by_its_format(tmp_path: Path) -> None:
+    def change(sheet: Any) -> None:
+        sheet["A2"].number_format = '"P2-"0000"-1A"'
+
+    read = read_line_list(saved(tmp_path, line(7), line("P-1002"), change=change))  # type: ignore[arg-type]
+    assert read.line_number[0] == "P2-0007-1A"
+    assert not reason(read, 2, "Line No")
+
+
+def test_a_line_number_that_has_lost_figures(tmp_path: Path) -> None:
+    read = read_line_list(saved(tmp_path, line("P-1001"), line(123456789012345678)))  # type: ignore[arg-type]
+    assert read.line_number[1].isdigit()
+    assert values_of(read, "pressure")[1] is None
+    assert "keeps 15 figures" in reason(read, 3, "Line No")

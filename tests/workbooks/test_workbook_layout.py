@@ -6,6 +6,7 @@ from pathlib import Path
 from typing import Any
 
 import pytest
+import xlsxwriter
 from books import HEADERS, given, line, reason, saved, shared, sheet_of
 from openpyxl.cell.rich_text import CellRichText, TextBlock
 from openpyxl.cell.text import InlineFont
@@ -123,14 +124,109 @@ def test_a_line_number_merged_over_its_cases(tmp_path: Path) -> None:
     assert any("Merged cells" in note for note in read.notes)
 
 
-def test_a_number_merged_downwards_holds_for_each_row(tmp_path: Path) -> None:
+def test_a_number_merged_over_the_rows_of_one_line_holds_for_each(tmp_path: Path) -> None:
     def change(sheet: Any) -> None:
         sheet["D3"] = 7
         sheet.merge_cells("D3:D4")
+        sheet.merge_cells("A3:A4")
 
-    pressures = given(read_line_list(saved(tmp_path, *LINES, change=change)), "pressure")
+    read = read_line_list(saved(tmp_path, *LINES, change=change))
+    pressures = given(read, "pressure")
     assert pressures[1] == pressures[2] == pytest.approx(801_325.0)
     assert pressures[3] == pytest.approx(551_325.0)
+    filled = "(2 cells filled): 'Line No' rows 3 to 4, 'Oper Press [barg]' rows 3 to 4."
+    assert any(note.endswith(filled) for note in read.notes)
+
+
+def test_a_number_merged_over_different_lines_is_asked_about(tmp_path: Path) -> None:
+    def change(sheet: Any) -> None:
+        sheet["D3"], sheet["G3"] = 7, "drain at low point"
+        sheet.merge_cells("D3:D4")
+        sheet.merge_cells("G3:G4")
+
+    read = read_line_list(saved(tmp_path, *LINES, change=change))
+    assert [value is None for value in given(read, "pressure")] == [False, True, True, False, False]
+    assert read.texts["remarks"].text(2) == "drain at low point"
+    for row in (3, 4):
+        assert "'7' is merged over the lines 'P-1002', 'P-1003'" in reason(read, row, "Oper Press [barg]")
+
+
+def raised(*pieces: tuple[str, str]) -> CellRichText:
+    """Return a text in pieces, each with its height: empty, ``superscript`` or ``subscript``."""
+    return CellRichText(*(TextBlock(InlineFont(vertAlign=height or None), text) for text, height in pieces))
+
+
+UP, DOWN = "superscript", "subscript"
+
+
+@pytest.mark.parametrize(
+    ("pieces", "text"),
+    [
+        ([("5", ""), ("2", UP)], "5\u00b2"),
+        ([("5", ""), ("(1)", UP)], "5\u207d\u00b9\u207e"),
+        ([("2.5x10", ""), ("-3", UP)], "2.5x10\u207b\u00b3"),
+        ([("CO", ""), ("2", DOWN)], "CO\u2082"),
+        ([("60 ", ""), ("o", UP), ("C", "")], "60 \u00b0C"),
+        ([("5", ""), ("note 2", UP)], "5 (note 2)"),
+        ([("5", ""), ("2a", DOWN)], "5 (2a)"),
+        ([("P", ""), ("max", DOWN)], "Pmax"),
+        ([("5", ""), ("*", UP)], "5*"),
+        ([("1", ""), ("1", UP), ("/", ""), ("2", DOWN)], "1 1/2"),
+        ([("1", UP), ("/", ""), ("2", DOWN)], "1/2"),
+    ],
+)
+def test_raised_and_lowered_pieces(tmp_path: Path, pieces: list[tuple[str, str]], text: str) -> None:
+    path = saved(tmp_path, *LINES, change=lambda sheet: sheet.__setitem__("G3", raised(*pieces)))
+    assert sheet_of(path).rows[2][6] == text
+
+
+def test_raised_digits_are_never_part_of_a_number(tmp_path: Path) -> None:
+    def change(sheet: Any) -> None:
+        sheet["D3"] = raised(("5", ""), ("2", UP))
+        sheet["A4"] = raised(("P-1", ""), ("2", UP))
+        sheet["E3"] = raised(("6", ""), ("0", DOWN))
+        sheet["B3"] = raised(("1", ""), ("1", UP), ("/", ""), ("2", DOWN))
+
+    read = read_line_list(saved(tmp_path, *LINES, change=change))
+    assert given(read, "pressure")[1] == pytest.approx(601_325.0)
+    assert given(read, "temperature")[1] is None
+    assert given(read, "size")[1] == 1.5
+    assert read.line_number[2] == "P-1\u00b2"
+
+
+def test_a_shared_text_with_a_raised_digit(tmp_path: Path) -> None:
+    path = tmp_path / "list.xlsx"
+    with xlsxwriter.Workbook(str(path)) as book:
+        sheet = book.add_worksheet("Line List")
+        for number, row in enumerate((HEADERS, line("P-1001"))):
+            sheet.write_row(number, 0, row)
+        sheet.write_rich_string(1, 3, "5", book.add_format({"font_script": 1}), "2", " ")
+    assert sheet_of(path).rows[1][3].strip() == "5\u00b2"
+
+
+def test_headers_are_known_without_their_raised_marks(tmp_path: Path) -> None:
+    def change(sheet: Any) -> None:
+        sheet["A1"] = raised(("Line No", ""), ("1", UP))
+        sheet["D1"] = raised(("Oper Press", ""), ("2)", UP), (" [barg]", ""))
+        sheet["F1"] = raised(("Density [kg/m", ""), ("3", UP), ("]", ""))
+
+    read = read_line_list(saved(tmp_path, *LINES, change=change))
+    assert given(read, "pressure") == [pytest.approx(551_325.0)] * 5
+    assert given(read, "density") == [pytest.approx(983.0)] * 5
+    assert any(note.startswith("Headers read without their raised marks: 'Line No") for note in read.notes)
+
+
+def test_only_merged_headers_are_spread(tmp_path: Path) -> None:
+    def change(sheet: Any) -> None:
+        sheet.insert_rows(1)
+        sheet["A1"], sheet["D1"], sheet["F1"] = "General", "Operating", "Properties"
+        sheet.merge_cells("D1:E1")
+        sheet["F4"] = None
+        sheet.merge_cells("E4:F4")
+
+    sheet = sheet_of(saved(tmp_path, *LINES, change=change))
+    assert sheet.rows[0] == ["General", "", "", "Operating", "Operating", "Properties", ""]
+    assert sheet.rows[3][4:6] == ["60", ""]
 
 
 def test_a_merged_cell_fills_no_row_that_is_blank_otherwise(tmp_path: Path) -> None:
@@ -186,6 +282,22 @@ def test_a_group_name_holds_over_its_merged_columns(tmp_path: Path) -> None:
     read = read_line_list(path)
     assert given(read, "pressure") == [pytest.approx(551_325.0)] * 5
     assert given(read, "temperature") == [pytest.approx(333.15)] * 5
+
+
+def test_a_header_that_comes_again_is_spread_as_the_first(tmp_path: Path) -> None:
+    def change(sheet: Any) -> None:
+        for row in (1, 5):
+            sheet.insert_rows(row)
+            for column, text in enumerate(HEADERS, 1):
+                sheet.cell(row, column, text if column != 5 else None)
+            sheet.cell(row, 4, "Operating")
+            sheet.merge_cells(start_row=row, end_row=row, start_column=4, end_column=5)
+        for column in range(1, 8):
+            sheet.cell(2, column).value = {4: "Press [barg]", 5: "Temp [degC]"}.get(column)
+
+    sheet = sheet_of(saved(tmp_path, *LINES, change=change))
+    assert sheet.rows[4] == sheet.rows[0]
+    assert sheet.rows[0][3:5] == ["Operating", "Operating"]
 
 
 def test_a_title_merged_above_stays_a_title(tmp_path: Path) -> None:

@@ -10,10 +10,23 @@ from typing import Any
 from checker.intake.texts import shown
 from checker.intake.workbook.number_formats import Style
 
-__all__ = ["as_date", "date_sentence", "date_text", "number_text", "styled_text"]
+__all__ = [
+    "MOST_FIGURES",
+    "as_date",
+    "beyond_figures",
+    "date_sentence",
+    "date_text",
+    "figures_sentence",
+    "number_text",
+    "odd_sentence",
+    "styled_text",
+]
 
 _MONTHS = ("Jan", "Feb", "Mar", "Apr", "May", "Jun", "Jul", "Aug", "Sep", "Oct", "Nov", "Dec")
-_LARGEST_WHOLE = 1e15
+MOST_FIGURES = 15
+"""Figures of a number that a workbook keeps."""
+
+_LARGEST_WHOLE = 1e21
 _DENOMINATORS = {2002: 2, 2004: 4, 2008: 8}
 _RETYPE = "format the column as text and type it anew."
 
@@ -38,6 +51,19 @@ def number_text(stored: str) -> str:
     return str(int(number)) if number.is_integer() and abs(number) < _LARGEST_WHOLE else repr(number)
 
 
+def beyond_figures(text: str) -> bool:
+    """Return whether a stored number is whole and has more figures than a workbook keeps."""
+    return len(text.lstrip("-")) > MOST_FIGURES and (text.lstrip("-").isdigit() or "e+" in text)
+
+
+def figures_sentence(text: str) -> str:
+    """Return why a whole number of too many figures is not used."""
+    return (
+        f"the cell holds the number {shown(text)}: a workbook keeps {MOST_FIGURES} figures of a number, the others are "
+        f"lost; {_RETYPE}"
+    )
+
+
 def styled_text(stored: str, style: Style) -> str:
     """Return a stored number with what its format adds: leading zeros, per cent, a unit or another literal."""
     text = number_text(stored)
@@ -48,6 +74,20 @@ def styled_text(stored: str, style: Style) -> str:
     before, after = style.before.strip(), style.after.strip()
     gap = " " if after[:1].isalpha() else ""
     return f"{before}{text}{gap}{after}"
+
+
+def odd_sentence(stored: str, style: Style) -> str:
+    """Return why a number whose format shows something else is no number for certain."""
+    shows = {
+        "words": f"shows {shown(style.before.strip())} in its place" if style.before.strip() else "does not show it",
+        "added": "shows further digits beside it",
+        "inlaid": "shows signs among its digits",
+        "sign": "shows it with another sign",
+    }[style.kind]
+    return (
+        f"the cell holds {shown(number_text(stored))}, but its number format {shown(style.code)} {shows}: write the "
+        "value as it is meant, in a plain format."
+    )
 
 
 def _hundredfold(text: str) -> str:

@@ -8,8 +8,9 @@ from dataclasses import dataclass
 from checker.errors import InputError
 from checker.intake.layout import LINE_NUMBER_WEIGHT, find_layout, header_score
 from checker.intake.texts import shown
+from checker.intake.workbook.header_marks import take_out_marks
 from checker.intake.workbook.package import refuse
-from checker.intake.workbook.raw import Book
+from checker.intake.workbook.raw import HEAD, Book
 
 __all__ = ["choose_sheet"]
 
@@ -69,9 +70,17 @@ def _rows(book: Book, index: int) -> str:
     return f"{shown(book.sheets[index].name)} ({len(book.whole(index).rows)} rows)"
 
 
+def _head(book: Book, index: int, hints: Mapping[str, str]) -> list[list[str]]:
+    raw = book.head(index)
+    take_out_marks(raw, hints)
+    return raw.rows[:HEAD]
+
+
 def _looks_like_it(book: Book, hints: Mapping[str, str], visible: bool) -> tuple[list[int], dict[int, _Look]]:
     looks = {
-        index: _look(book.head(index), hints) for index, known in enumerate(book.sheets) if known.visible == visible
+        index: _look(_head(book, index, hints), hints)
+        for index, known in enumerate(book.sheets)
+        if known.visible == visible
     }
     sure = [index for index, look in looks.items() if look.score >= SURE]
     return sure or [index for index, look in looks.items() if look.score >= LINE_NUMBER_WEIGHT], looks

@@ -3,14 +3,16 @@
 from __future__ import annotations
 
 import io
-import zipfile
 from dataclasses import dataclass
 from pathlib import Path
-from typing import Literal
+from typing import TYPE_CHECKING, Literal
 
 from checker.intake.workbook import limits
 
-__all__ = ["Container", "container_of", "is_container", "name_says"]
+if TYPE_CHECKING:
+    import zipfile
+
+__all__ = ["Container", "container_of", "is_workbook", "name_says"]
 
 Kind = Literal["xlsx", "xlsm", "ods", "xls", "refused"]
 
@@ -73,6 +75,8 @@ def _zipped(content: bytes) -> Container:
             f"The file is a container of too many parts: its directory is longer than {limits.MOST_DIRECTORY} bytes.",
             "Copy the sheet with the line list into a workbook of its own.",
         )
+    import zipfile
+
     try:
         with zipfile.ZipFile(io.BytesIO(content)) as archive:
             names = frozenset(archive.namelist())
@@ -108,9 +112,10 @@ def _office(names: frozenset[str]) -> Container:
     return _refused("The file is a zip container, but no workbook.", "Unpack it and give the list that is in it.")
 
 
-def is_container(path: Path) -> bool:
-    """Return whether a file begins as a workbook or as a container that might be taken for one.
+def is_workbook(path: Path) -> bool:
+    """Return whether a file is a workbook, or a container that might be taken for one, by its first bytes alone.
 
+    Such a file goes to `read_sheet`, which reads it or says what it is; any other is a text.
     The lock file of an open workbook is none, and neither is a file that cannot be read: reading it as a text says so.
     """
     if path.name.startswith("~$"):

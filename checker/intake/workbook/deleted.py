@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 
 from checker.intake.texts import shown
+from checker.intake.workbook.cell_texts import beyond_figures
 from checker.intake.workbook.raw import RawSheet
 
 __all__ = ["settle_line_numbers", "struck_rows"]
@@ -51,7 +52,9 @@ def struck_rows(raw: RawSheet, first: int, width: int, line_column: int) -> froz
 
 
 def settle_line_numbers(raw: RawSheet, first: int, width: int, line_column: int) -> None:
-    """Ask for line numbers that are dates, and refuse every value of a row whose line number is not calculated.
+    """Ask for line numbers that are dates, and refuse every value of a row whose line number is not known.
+
+    It is not known where it is a formula that was never calculated, or a number that has lost figures.
 
     Parameters
     ----------
@@ -64,5 +67,7 @@ def settle_line_numbers(raw: RawSheet, first: int, width: int, line_column: int)
         if raw.rows[row][column].startswith("="):
             _refuse_row(raw, row, width, f"the line number of the row is not known: {raw.refused[row, column]}")
     for (row, column), reason in raw.no_numbers.items():
-        if row >= first and column == line_column:
+        if row >= first and column == line_column and (row, column) not in raw.as_shown:
             raw.refused.setdefault((row, column), reason)
+            if beyond_figures(raw.rows[row][column]):
+                _refuse_row(raw, row, width, f"the line number of the row is not known: {reason}")

@@ -3,14 +3,26 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
+from typing import NamedTuple
 
+from checker.intake.header_groups import names_group
 from checker.intake.texts import shown
 from checker.intake.workbook.raw import BLANK, Merged, RawSheet
 
-__all__ = ["fill_down", "spread_headers"]
+__all__ = ["Filled", "fill_down", "spread_headers"]
 
 MOST_FILLED = 2_000_000
 ROWS_ABOVE = 2
+NAMED_LINES = 4
+
+
+class Filled(NamedTuple):
+    """A merged range that was filled: its column, its rows, all counted from 0, and how many cells were filled."""
+
+    column: int
+    top: int
+    bottom: int
+    cells: int
 
 
 def _text(rows: Sequence[Sequence[str]], row: int, column: int) -> str:
@@ -36,18 +48,27 @@ def spread_headers(raw: RawSheet, header: int, first: int) -> None:
         The sheet, changed in place.
     header, first : int
         Row of the headers and first row of lines, counted from 0. A row above the headers that holds a single text
-        is a title and stays as it is.
+        is a title and stays as it is. A header row that comes again further down, the same in every cell, is spread as
+        the first one.
     """
     rows = raw.rows
+    heads = range(max(header - ROWS_ABOVE, 0), min(first, len(rows)))
+    written = {row: list(rows[row]) for row in heads}
     width = max((len(row) for row in rows[header : first + 1]), default=0)
     for merged in raw.merged:
         if not (header - ROWS_ABOVE <= merged.top < min(first, len(rows))) or merged.left >= merged.right:
             continue
         text = _text(rows, merged.top, merged.left)
         alone = sum(bool(cell.strip()) for cell in rows[merged.top]) == 1
-        if text.strip() and not (alone and merged.top < header):
+        title = alone and merged.top < header and not names_group(text)
+        if text.strip() and not title:
             for column in range(merged.left + 1, min(merged.right + 1, width)):
                 _put(rows, merged.top, column, text)
+    again = [(written[row], rows[row]) for row in heads if rows[row] != written[row]]
+    for row in range(first, len(rows)) if again else ():
+        for as_written, spread in again:
+            if rows[row] == as_written:
+                rows[row] = list(spread)
 
 
 def _value_beside(rows: Sequence[Sequence[str]], row: int, merged: Merged) -> bool:
@@ -77,6 +98,22 @@ def _fill(raw: RawSheet, merged: Merged, last: int) -> int:
     return filled
 
 
+def _refuse_shared(raw: RawSheet, merged: Merged, last: int, line_column: int) -> None:
+    """Refuse a number that is merged over lines of different numbers: each one's value, or one for all of them?"""
+    text = _text(raw.rows, merged.top, merged.left)
+    rows = [row for row in range(merged.top, last + 1) if _text(raw.rows, row, line_column).strip()]
+    numbers = {" ".join(raw.rows[row][line_column].split()).casefold() for row in rows}
+    if merged.left == line_column or len(numbers) < 2 or not any(map(str.isnumeric, text)):
+        return
+    named = ", ".join(dict.fromkeys(shown(raw.rows[row][line_column].strip()) for row in rows[:NAMED_LINES]))
+    sentence = (
+        f"{shown(text)} is merged over the lines {named}{' and more' if len(numbers) > NAMED_LINES else ''}: it may be "
+        "the value of each of them, or one value (a sum) for all; undo the merging and write each line's value."
+    )
+    for row in rows:
+        raw.no_numbers[row, merged.left] = sentence
+
+
 def _doubt(raw: RawSheet, merged: Merged, last: int, width: int) -> int:
     """Refuse the numbers of the columns over which a value of a line is merged: whose value is it?"""
     text = _text(raw.rows, merged.top, merged.left)
@@ -93,23 +130,26 @@ def _doubt(raw: RawSheet, merged: Merged, last: int, width: int) -> int:
     return doubted
 
 
-def fill_down(raw: RawSheet, first: int, width: int) -> int:
+def fill_down(raw: RawSheet, first: int, width: int, line_column: int) -> list[Filled]:
     """Fill a value that is merged over several rows of lines into each of them that holds anything else.
+
+    Line numbers come first, for a number that is merged over different lines is refused in all of them.
 
     Parameters
     ----------
     raw : RawSheet
         The sheet, changed in place.
-    first, width : int
-        First row of lines, counted from 0, and number of columns of the table.
+    first, width, line_column : int
+        First row of lines and column of the line number, counted from 0, and number of columns of the table.
 
     Returns
     -------
-    int
-        Number of cells filled. Beyond two million cells, filled or doubted, nothing more is done and a note says so.
+    list of Filled
+        Ranges filled. Beyond two million cells, filled or doubted, nothing more is done and a note says so.
     """
-    filled, work = 0, 0
-    for merged in raw.merged:
+    filled: list[Filled] = []
+    work = 0
+    for merged in sorted(raw.merged, key=lambda merged: merged.left != line_column):
         if merged.top < first or merged.top >= len(raw.rows) or merged.left >= width:
             continue
         last = min(merged.bottom, len(raw.rows) - 1)
@@ -117,7 +157,10 @@ def fill_down(raw: RawSheet, first: int, width: int) -> int:
         if work > MOST_FILLED:
             raw.notes.append(f"More than {MOST_FILLED} rows of merged ranges: the rest are left as they are.")
             break
-        filled += _fill(raw, merged, last)
+        cells = _fill(raw, merged, last)
+        if cells:
+            filled.append(Filled(merged.left, merged.top, last, cells))
+            _refuse_shared(raw, merged, last, line_column)
         if merged.right > merged.left:
             work += _doubt(raw, merged, last, width)
     return filled

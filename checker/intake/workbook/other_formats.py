@@ -6,16 +6,26 @@ import datetime as dt
 import json
 import subprocess
 import sys
+import zipfile
 from pathlib import Path
 from typing import Any
+from xml.etree.ElementTree import ParseError
 
 from checker.intake.records import LONGEST_CELL, MOST_COLUMNS, MOST_ROWS
 from checker.intake.texts import shown
 from checker.intake.workbook import limits
-from checker.intake.workbook.cell_texts import When, date_sentence, date_text, number_text
+from checker.intake.workbook.cell_texts import (
+    MOST_FIGURES,
+    When,
+    beyond_figures,
+    date_sentence,
+    date_text,
+    figures_sentence,
+    number_text,
+)
+from checker.intake.workbook.open_document import odd_cells
 from checker.intake.workbook.package import checked_archive, refuse
-from checker.intake.workbook.raw import BLANK, Merged, RawSheet, SheetName
-from checker.intake.workbook.xlsx import HEAD
+from checker.intake.workbook.raw import BLANK, HEAD, Merged, RawSheet, SheetName
 
 __all__ = ["OtherBook"]
 
@@ -24,6 +34,14 @@ _CHILD = Path(__file__).with_name("calamine_child.py")
 _AS_XLSX = "Open it in the program that made it and save it as XLSX, or save the sheet as CSV."
 _ENCRYPTED = b"encryption-data"
 _PER_CENT = b'value-type="percentage"'
+
+
+_UNSEEN = {
+    "xls": "In XLS cells struck through, hidden rows and columns, errors, comments, number formats (a unit, per "
+    "cent, thousands left out, leading zeros) and raised digits cannot be seen: save as XLSX if the list has any.",
+    "ods": "In ODS cells struck through, merged cells, hidden rows and columns, comments and leading zeros cannot be "
+    "seen: save as XLSX if the list has any.",
+}
 
 
 def _run(content: bytes, file: str) -> dict[str, Any]:
@@ -64,19 +82,17 @@ class OtherBook:
 
     def __init__(self, content: bytes, file: str, kind: str) -> None:
         self._file = file
+        self._archive: zipfile.ZipFile | None = None
         if kind == "ods":
-            self._check_open_document(content)
+            self._archive = self._check_open_document(content)
         elif len(content) > limits.MOST_BYTES:
             raise refuse(file, f"the workbook is larger than {limits.MOST_BYTES} bytes.", _AS_XLSX)
         self._found: list[dict[str, Any]] = _run(content, file)["sheets"]
         self.sheets = tuple(SheetName(str(sheet["name"]), bool(sheet["visible"])) for sheet in self._found)
-        merged = "merged cells, " if kind == "ods" else ""
-        self.notes: tuple[str, ...] = (
-            f"In {kind.upper()} cells struck through, {merged}hidden rows and columns, errors, comments and number "
-            "formats (a unit, per cent, leading zeros) cannot be seen: save as XLSX if the list has any.",
-        )
+        self._per_cent = kind == "xls"
+        self.notes: tuple[str, ...] = (_UNSEEN[kind],)
 
-    def _check_open_document(self, content: bytes) -> None:
+    def _check_open_document(self, content: bytes) -> zipfile.ZipFile:
         archive = checked_archive(content, self._file)
         manifest = "META-INF/manifest.xml"
         if manifest in archive.namelist() and _ENCRYPTED in archive.read(manifest):
@@ -84,14 +100,34 @@ class OtherBook:
         if "content.xml" in archive.namelist() and _PER_CENT in archive.read("content.xml"):
             what = "cells of the workbook are shown in per cent, which in ODS cannot be told from other numbers."
             raise refuse(self._file, what, "Save it as XLSX.")
+        return archive
 
-    def head(self, index: int) -> list[list[str]]:
+    def head(self, index: int) -> RawSheet:
         """Return the first rows of a sheet."""
-        return self._read(index, HEAD).rows
+        return self._read(index, HEAD)
 
     def whole(self, index: int) -> RawSheet:
         """Return a sheet, read whole."""
-        return self._read(index, 0)
+        raw = self._read(index, 0)
+        raw.per_cent_unseen = self._per_cent
+        if self._archive is not None:
+            self._mark_odd(raw, self._archive, str(self._found[index]["name"]))
+        return raw
+
+    def _mark_odd(self, raw: RawSheet, archive: zipfile.ZipFile, name: str) -> None:
+        """Let cells that show something else than their number show it, and be no number."""
+        try:
+            with archive.open("content.xml") as stream:
+                for odd in odd_cells(stream, name):
+                    for row in range(odd.row, min(odd.row + odd.rows, len(raw.rows))):
+                        cells = raw.rows[row]
+                        for column in range(odd.column, min(odd.column + odd.columns, len(cells))):
+                            cells[column] = odd.text or cells[column]
+                            if odd.sentence:
+                                raw.no_numbers[row, column] = odd.sentence
+                                raw.as_shown.add((row, column))
+        except (ParseError, KeyError) as error:
+            raise refuse(self._file, "the content of the workbook is damaged.", _AS_XLSX) from error
 
     def _read(self, index: int, most_rows: int) -> RawSheet:
         found = self._found[index]
@@ -116,6 +152,8 @@ def _texts(raw: RawSheet, row: int, values: list[Any]) -> list[str]:
             text = "TRUE" if value else "FALSE"
         else:
             text = value if isinstance(value, str) else number_text(repr(value))
+            if not isinstance(value, str) and len(text) > MOST_FIGURES and beyond_figures(text):
+                raw.no_numbers[row, column] = figures_sentence(text)
         texts.append(text)
     return texts
 

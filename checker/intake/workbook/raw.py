@@ -5,10 +5,14 @@ from __future__ import annotations
 from dataclasses import dataclass, field
 from typing import NamedTuple, Protocol
 
-__all__ = ["BLANK", "Book", "Merged", "RawSheet", "SheetName"]
+__all__ = ["BLANK", "HEAD", "Book", "Merged", "RawSheet", "SheetName"]
 
 BLANK: list[str] = []
 """The row that holds nothing, one object for all of them; never changed."""
+
+
+HEAD = 40
+"""First rows of a sheet, among which its headers stand."""
 
 
 class Merged(NamedTuple):
@@ -38,8 +42,14 @@ class RawSheet:
         First and last column of each hidden run.
     merged : list of Merged
         Merged ranges.
+    as_shown : set of (int, int)
+        Cells whose text is what is shown, though their number is stored otherwise: no number, but a line number.
+    unmarked : dict of (int, int) to str
+        Texts of the first rows without their raised marks, where they carry any.
     formulas, external, comments : int
         Cells with a formula, with a formula that takes from another file or program, with a comment.
+    per_cent_unseen : bool
+        Whether a number shown in per cent cannot be told from another one.
     filtered : bool
         Whether a filter is set.
     notes : list of str
@@ -53,9 +63,12 @@ class RawSheet:
     hidden_rows: set[int] = field(default_factory=set)
     hidden_columns: list[tuple[int, int]] = field(default_factory=list)
     merged: list[Merged] = field(default_factory=list)
+    as_shown: set[tuple[int, int]] = field(default_factory=set)
+    unmarked: dict[tuple[int, int], str] = field(default_factory=dict)
     formulas: int = 0
     external: int = 0
     comments: int = 0
+    per_cent_unseen: bool = False
     filtered: bool = False
     notes: list[str] = field(default_factory=list)
 
@@ -73,7 +86,7 @@ class Book(Protocol):
     sheets: tuple[SheetName, ...]
     notes: tuple[str, ...]
 
-    def head(self, index: int) -> list[list[str]]:
+    def head(self, index: int) -> RawSheet:
         """Return the first rows of a sheet."""
 
     def whole(self, index: int) -> RawSheet:

@@ -10,22 +10,14 @@ from checker.intake.sheet import Sheet
 from checker.intake.texts import shown
 from checker.intake.workbook import limits
 from checker.intake.workbook.choice import choose_sheet
-from checker.intake.workbook.container import container_of, is_container, name_says
+from checker.intake.workbook.container import container_of, name_says
 from checker.intake.workbook.other_formats import OtherBook
 from checker.intake.workbook.package import refuse
 from checker.intake.workbook.raw import Book
 from checker.intake.workbook.table import sheet_of
 from checker.intake.workbook.xlsx import XlsxBook
 
-__all__ = ["is_workbook", "read_sheet"]
-
-
-def is_workbook(path: Path) -> bool:
-    """Return whether a file is a workbook, or a container that might be taken for one, by its content alone.
-
-    Such a file goes to `read_sheet`, which reads it or says what it is; any other is a text.
-    """
-    return is_container(path)
+__all__ = ["read_sheet"]
 
 
 def _content(path: Path) -> bytes:

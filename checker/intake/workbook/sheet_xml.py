@@ -16,10 +16,20 @@ from xml.etree.ElementTree import Element, XMLPullParser
 from checker.intake.records import LONGEST_CELL, MOST_COLUMNS, MOST_ROWS
 from checker.intake.texts import shown
 from checker.intake.workbook import limits
-from checker.intake.workbook.cell_texts import as_date, date_sentence, date_text, number_text, styled_text
-from checker.intake.workbook.number_formats import PLAIN, Style
+from checker.intake.workbook.cell_texts import (
+    MOST_FIGURES,
+    as_date,
+    beyond_figures,
+    date_sentence,
+    date_text,
+    figures_sentence,
+    number_text,
+    odd_sentence,
+    styled_text,
+)
+from checker.intake.workbook.number_formats import ODD_KINDS, PLAIN, Style
 from checker.intake.workbook.package import refuse
-from checker.intake.workbook.raw import BLANK, Merged, RawSheet
+from checker.intake.workbook.raw import BLANK, HEAD, Merged, RawSheet
 from checker.intake.workbook.rich_texts import NAMESPACE, Rich, inline_text
 
 __all__ = ["SheetReader"]
@@ -28,6 +38,7 @@ _ROW, _VALUE, _FORMULA, _INLINE = (NAMESPACE + tag for tag in ("row", "v", "f", 
 _COLUMN, _MERGED, _FILTER = (NAMESPACE + tag for tag in ("col", "mergeCell", "autoFilter"))
 _DIGITS = "0123456789"
 _CHUNK = 1 << 16
+_NUMERIC = (None, "n")
 _TRUE = ("1", "true")
 _ELSEWHERE = re.compile(r"\[\d+\]|\[[^\]]+\.xl\w*\]|\|.*!|file://|\\\\", re.IGNORECASE)
 _ANEW = "Open it in a spreadsheet program and save it anew as XLSX."
@@ -149,7 +160,7 @@ class SheetReader:
             elif kind == "s":
                 shared = texts[int(stored)]
                 text = shared if type(shared) is str else self._odd(cell, kind, stored, style, (number, column))
-            elif kind is None or kind == "n":
+            elif kind in _NUMERIC and len(stored) <= MOST_FIGURES and "+" not in stored:
                 text = number_text(stored)
             else:
                 text = self._odd(cell, kind, stored, style, (number, column))
@@ -196,11 +207,13 @@ class SheetReader:
             return "TRUE" if stored in _TRUE else "FALSE"
         if kind == "d":
             return self._iso_date(stored, at)
-        if kind in (None, "n") and stored:
+        if kind in _NUMERIC and stored:
             return self._number(stored, style, at)
         return stored
 
     def _number(self, stored: str, style: Style, at: tuple[int, int]) -> str:
+        if style.sections:
+            style = self._section(stored, style)
         if style.kind in ("date", "duration"):
             when = as_date(stored, style, self._epoch)
             text = number_text(stored) if when is None else date_text(when)
@@ -212,7 +225,24 @@ class SheetReader:
                 "more: write the number as it is meant, in a plain format."
             )
             return number_text(stored)
+        if style.kind in ODD_KINDS:
+            self._sheet.no_numbers[at] = odd_sentence(stored, style)
+            if style.kind == "added":
+                self._sheet.as_shown.add(at)
+            return style.before if style.kind == "words" and style.before.strip() else styled_text(stored, style)
+        self._check_figures(number_text(stored), at)
         return styled_text(stored, style)
+
+    def _check_figures(self, text: str, at: tuple[int, int]) -> None:
+        if beyond_figures(text):
+            self._sheet.no_numbers[at] = figures_sentence(text)
+
+    @staticmethod
+    def _section(stored: str, style: Style) -> Style:
+        try:
+            return style.of(float(stored))
+        except ValueError:
+            return style
 
     def _iso_date(self, stored: str, at: tuple[int, int]) -> str:
         try:
@@ -236,7 +266,9 @@ class SheetReader:
         if not gone.strip() or not left.strip():
             if gone.strip():
                 self._sheet.struck.setdefault(at[0], []).append(at[1])
-            return "".join(text for text, _ in rich.pieces)
+            if at[0] < HEAD and rich.unmarked != rich.text:
+                self._sheet.unmarked[at] = rich.unmarked
+            return rich.text
         self._sheet.refused[at] = (
             f"a part of the cell is struck through: {shown(gone.strip())} is struck, {shown(left.strip())} stands. "
             f"Is {shown(left.strip())} the value? Write it alone, not struck."

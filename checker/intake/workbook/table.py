@@ -11,9 +11,10 @@ from checker.intake.records import MOST_COLUMNS
 from checker.intake.sheet import Sheet
 from checker.intake.texts import shown
 from checker.intake.workbook.deleted import settle_line_numbers, struck_rows
-from checker.intake.workbook.merged import fill_down, spread_headers
-from checker.intake.workbook.raw import BLANK, RawSheet
-from checker.intake.workbook.xlsx import HEAD
+from checker.intake.workbook.header_marks import take_out_marks
+from checker.intake.workbook.merged import Filled, fill_down, spread_headers
+from checker.intake.workbook.per_cent import refuse_per_cent
+from checker.intake.workbook.raw import BLANK, HEAD, RawSheet
 
 __all__ = ["sheet_of"]
 
@@ -99,6 +100,16 @@ def _struck_headers(raw: RawSheet, table: _Table) -> list[str]:
     return [f"Headers struck through, their columns are read all the same: {_named(struck)}."] if struck else []
 
 
+def _filled(filled: Sequence[Filled], headers: Sequence[str]) -> list[str]:
+    names = [
+        f"{shown(headers[column]) if column < len(headers) else _letters(column)} rows {top + 1} to {bottom + 1}"
+        for column, top, bottom, _ in sorted(filled)
+    ]
+    cells = sum(each.cells for each in filled)
+    said = "Merged cells: their value is taken for each of their rows"
+    return [f"{said} ({cells} cells filled): {_named(names)}."] if cells else []
+
+
 def _stored(raw: RawSheet) -> list[str]:
     notes = []
     if raw.formulas:
@@ -129,6 +140,9 @@ def sheet_of(
     notes : collection of str
         What was found before.
     """
+    taken_out = take_out_marks(raw, hints)
+    if taken_out:
+        raw.notes.append(f"Headers read without their raised marks: {_named(taken_out)}.")
     table = _table(raw, file, hints)
     headers: tuple[str, ...] = ()
     struck: frozenset[int] = frozenset()
@@ -137,9 +151,9 @@ def sheet_of(
         table = _table(raw, file, hints) or table
         width = _width(raw, table)
         raw.notes.extend(_struck_headers(raw, table))
-        filled = fill_down(raw, table.first, width)
-        if filled:
-            raw.notes.append(f"Merged cells: their value is taken for each of their rows ({filled} cells filled).")
+        raw.notes.extend(_filled(fill_down(raw, table.first, width, table.line_column), table.headers))
+        if raw.per_cent_unseen:
+            refuse_per_cent(raw, table.header, table.first, width)
         settle_line_numbers(raw, table.first, width, table.line_column)
         struck = struck_rows(raw, table.first, width, table.line_column)
         _even(raw, table.first, width)

@@ -15,14 +15,13 @@ from xml.etree.ElementTree import ParseError
 
 from checker.intake.texts import shown
 from checker.intake.workbook.package import checked_archive, refuse
-from checker.intake.workbook.raw import RawSheet, SheetName
+from checker.intake.workbook.raw import HEAD, RawSheet, SheetName
 from checker.intake.workbook.rich_texts import shared_texts
 from checker.intake.workbook.sheet_xml import SheetReader
 from checker.intake.workbook.styles import Styles
 
-__all__ = ["HEAD", "XlsxBook"]
+__all__ = ["XlsxBook"]
 
-HEAD = 40
 _DAMAGED = (
     ArithmeticError, AssertionError, AttributeError, EOFError, LookupError, NotImplementedError, OSError, ParseError,
     RecursionError, TypeError, ValueError, zipfile.BadZipFile, zlib.error,
@@ -123,9 +122,9 @@ class XlsxBook:
         macros = any(name.casefold().endswith("vbaproject.bin") for name in self._archive.namelist())
         return ("The workbook carries macros: none is run.",) if macros else ()
 
-    def head(self, index: int) -> list[list[str]]:
+    def head(self, index: int) -> RawSheet:
         """Return the first rows of a sheet."""
-        return self._read(index, HEAD).rows[:HEAD]
+        return self._read(index, HEAD)
 
     def whole(self, index: int) -> RawSheet:
         """Return a sheet, read whole."""
