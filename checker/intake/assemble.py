@@ -128,11 +128,19 @@ def _with_density(name: str, rests_on: CodeArray, columns: Sequence[PlannedColum
     mine = (rests_on == KINEMATIC) & (into.gaps[name] == Gap.GIVEN)
     if not mine.any():
         return
-    density = into.numbers.get(DENSITY_OF[name], np.full(mine.shape, np.nan))
+    of = DENSITY_OF[name]
+    varying = np.array([index for index in np.flatnonzero(mine).tolist() if (of, index) in into.highs], dtype=np.int32)
+    both_ends = (
+        f"a kinematic viscosity beside a {of.replace('_', ' ')} with two values has another dynamic viscosity at each: "
+        "write the dynamic viscosity (cP), or give one value per case."
+    )
+    _refuse(name, varying, both_ends, columns, into)
+    mine[varying] = False
+    density = into.numbers.get(of, np.full(mine.shape, np.nan))
     into.numbers[name][mine] *= density[mine]
     for field_name, index in [key for key in into.highs if key[0] == name and mine[key[1]]]:
         into.highs[field_name, index] *= float(density[index])
-    reason = f"a kinematic viscosity needs the {DENSITY_OF[name].replace('_', ' ')} of the same row."
+    reason = f"a kinematic viscosity needs the {of.replace('_', ' ')} of the same row."
     _refuse(name, np.flatnonzero(mine & ~np.isfinite(density)).astype(np.int32), reason, columns, into)
 
 

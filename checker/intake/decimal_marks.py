@@ -1,8 +1,9 @@
 """What a comma and a point mean in the numbers of a list: decided from the cells that leave no choice.
 
 ``10,5`` can only be a decimal comma, ``1,234,567`` only thousands; ``1,234`` and ``12.345`` are either. The cells of
-the same column decide, then those of the whole list; without evidence, or against contradictory evidence, such a cell
-is refused with both readings. Plain numbers such as ``4.5`` are evidence too.
+the same column decide, then those of the whole list unless it shows both marks as decimals; without evidence, or
+against contradictory evidence, such a cell is refused with both readings. Plain numbers such as ``4.5`` are evidence
+too.
 """
 
 from __future__ import annotations
@@ -130,9 +131,10 @@ def decide(column: Evidence, file: Evidence, *, comma: bool, delimiter: str) -> 
     """
     of_comma, comma_clash = _meaning("comma", column, delimiter)
     of_point, point_clash = _meaning("point", column, delimiter)
-    if comma_clash or point_clash or (of_comma and of_comma == of_point):
+    if comma_clash or point_clash or (of_comma and of_comma == of_point) or _both_decimal(column):
         return Marks("", "", "commas and points are used in two ways: each doubtful cell is asked about.")
-    of_comma, of_point = _completed(of_comma, of_point, file, delimiter)
+    maybe_comma = bool(column.cells.get(("comma", DECIMAL)))
+    of_comma, of_point = _completed(of_comma, of_point, file, delimiter, maybe_comma=maybe_comma)
     if of_comma == THOUSANDS:
         return Marks(THOUSANDS, DECIMAL, _note("comma", THOUSANDS, column, file))
     if of_comma == DECIMAL and of_point == THOUSANDS:
@@ -142,9 +144,25 @@ def decide(column: Evidence, file: Evidence, *, comma: bool, delimiter: str) -> 
     return Marks("", of_point or ("" if comma or delimiter else DECIMAL))
 
 
-def _completed(of_comma: str, of_point: str, file: Evidence, delimiter: str) -> tuple[str, str]:
-    """Return the meanings of a column, those its own cells leave open taken from the list unless that contradicts."""
+def _both_decimal(evidence: Evidence) -> bool:
+    """Return whether cells show both marks as decimals, be it only in one cell that could also be two numbers."""
+    return ("comma", DECIMAL) in evidence.cells and ("point", DECIMAL) in evidence.cells
+
+
+def _completed(
+    of_comma: str, of_point: str, file: Evidence, delimiter: str, *, maybe_comma: bool
+) -> tuple[str, str]:
+    """Return the meanings of a column, those its own cells leave open taken from the list unless that contradicts.
+
+    A list that shows both marks in one meaning says nothing of a column without evidence, and a lone ``10,5`` in the
+    column (`maybe_comma`) keeps the point from being taken as decimal.
+    """
     file_comma, file_point = (_meaning(mark, file, delimiter)[0] for mark in ("comma", "point"))
+    both = _both_decimal(file) or (file_comma and file_comma == file_point)
+    if both and not (of_comma or of_point):
+        return "", ""
+    if maybe_comma and file_point == DECIMAL:
+        file_point = ""
     if of_point == THOUSANDS and not of_comma:
         of_comma = DECIMAL
     if not of_comma and file_comma != of_point:

@@ -20,6 +20,8 @@ _STATE = frozenset(
         "pressure", "temperature", "density", "viscosity", "molar_mass", "liquid_density", "liquid_viscosity",
         "vapour_density", "vapour_viscosity", "vapour_pressure", "source_pressure", "pressure_design",
         "pressure_design_minimum", "temperature_design", "temperature_design_minimum", "pressure_test",
+        "pressure_drop_allowed", "pressure_drop_stated", "pressure_gradient_stated", "velocity_allowed",
+        "velocity_stated", "npsh_required", "static_head",
     }
 )  # fmt: skip
 _UNKNOWN = re.compile(r"[-+]?(?:0(?:[.,]0*)?|9{3,12}(?:[.,]9{1,6})?)", re.ASCII)
@@ -30,8 +32,8 @@ _ADVICE = "leave the cell blank or write HOLD if the value is not known."
 def stand_ins(numbers: FloatArray, field: Field) -> BoolArray:
     """Return where numbers as written are four or more nines, a common stand-in for *unknown*.
 
-    They are refused in the state of the fluid and the design values even where they lie within the bounds, and below
-    zero in every field.
+    They are refused in the state of the fluid, the design values, differences and gradients of pressure, velocities
+    and heads even where they lie within the bounds, and below zero in every field.
 
     Parameters
     ----------

@@ -8,7 +8,7 @@ from dataclasses import dataclass, field
 
 from checker.errors import InputError, Problem
 from checker.intake.header_beneath import cases_beneath, with_units_beneath_groups, words_beneath
-from checker.intake.header_groups import with_groups
+from checker.intake.header_groups import names_group, with_groups
 from checker.intake.header_rows import (
     bare,
     count_numbers,
@@ -203,7 +203,11 @@ def _with_rows_above(
     found = with_groups(above, headers, lines, hints)
     if tuple(found.headers) == headers and not found.doubts:
         return plain
-    return _Above(tuple(found.headers), 1, found.doubts)
+    higher = [cell if names_group(cell) else "" for cell in (rows[index - 2] if index > 1 else ())]
+    if not any(higher):
+        return _Above(tuple(found.headers), 1, found.doubts)
+    twice = with_groups(higher, found.headers, lines, hints)
+    return _Above(tuple(twice.headers), 2, found.doubts | twice.doubts)
 
 
 def _no_number(row: Sequence[str], headers: Sequence[str], line_column: int) -> bool:
@@ -325,7 +329,7 @@ def find_layout(rows: Sequence[Sequence[str]], *, file: str, hints: Mapping[str,
     headers = tuple(cell.strip() for cell in rows[index])
     above = _with_rows_above(rows, index, headers, hints)
     found = _read_beneath(rows, index, above.headers, hints)
-    numbers = [*([index] if above.used else []), index + 1, *(number + 1 for number in found.joined)]
+    numbers = [*range(index + 1 - above.used, index + 1), index + 1, *(number + 1 for number in found.joined)]
     if len(numbers) > 1:
         notes = [f"Headers in rows {', '.join(map(str, numbers[:-1]))} and {numbers[-1]}, read together."]
     else:

@@ -49,6 +49,12 @@ __all__ = [
 ]
 
 NAN = float("nan")
+#: Above 20 degC, in K, the lower of two design temperatures is not taken for the lowest design temperature.
+MOST_LOWEST_TEMPERATURE = 293.15
+_TWO_DESIGN_VALUES = (
+    "{text} states two values for the {meaning}: is it {ends}? Write the {meaning} alone, and the lowest in a column of "
+    "its own."
+)
 LONGEST_NUMBER = 60
 _LOWEST_FIELDS = frozenset(LOWEST_DESIGN.values())
 _BARE = re.compile(r"[-+]?\d+(?:[.,]\d+)?(?:[eE][-+]?\d+)?", re.ASCII)
@@ -183,10 +189,27 @@ def _two_values(record: CellRecord, rests_on: set[int], note: str, parts: CellPa
         return refused(
             text, f"{shown(text)} states two values for the {field.meaning}: write the lowest alone.", record
         )
+    if field.name in LOWEST_DESIGN and low != high and not _lowest_by_itself(low, context):
+        reason = _TWO_DESIGN_VALUES.format(text=shown(text), meaning=field.meaning, ends=_ends(record))
+        return refused(text, reason, record)
     reading = of_two(low, high, field, rests_on.pop(), note)
     if not math.isnan(reading.lowest) and not _possible_lowest(reading.lowest, field):
         return refused(text, f"{shown(text)} has an impossible lower value: write the {field.meaning} alone.", record)
     return Cell(reading, record._replace(remark=note or "two values: both ends are kept"))
+
+
+def _ends(record: CellRecord) -> str:
+    low, high = (f"{number:g}" for number in record.numbers)
+    return f"{high} with a lowest of {low}, or {low} in one case and {high} in another"
+
+
+def _lowest_by_itself(low: float, context: NumberContext) -> bool:
+    """Return whether the lower of two design values can be nothing but a lowest one: up to atmospheric, up to 20 degC.
+
+    Two ordinary design values may as well be those of two cases, or two choices of which one is open.
+    """
+    most = context.atmosphere if context.field.dimension == "pressure" else MOST_LOWEST_TEMPERATURE
+    return low <= most * (1.0 + 1e-9)
 
 
 def _possible_lowest(value: float, field: Field) -> bool:

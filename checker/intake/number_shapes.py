@@ -13,6 +13,10 @@ from checker.intake.decimal_marks import DECIMAL, THOUSANDS, Marks
 
 __all__ = ["Head", "NumberRefusedError", "plain_powers", "read_head"]
 
+#: Magnitude below which a number that is not zero could become zero on its way to SI.
+SMALLEST_POWER = 200
+SMALLEST = 10.0**-SMALLEST_POWER
+_TOO_SMALL = "is too small for any value of a line: write the value, or 0."
 _SUPERSCRIPTS = str.maketrans(
     "\u2070\u00b9\u00b2\u00b3\u2074\u2075\u2076\u2077\u2078\u2079\u207a\u207b", "0123456789+-"
 )
@@ -83,7 +87,7 @@ def _point(body: str, marks: Marks) -> str:
         return body
     if marks.point == THOUSANDS:
         return body.replace(".", "")
-    where = "in a list with decimal commas" if marks.comma == DECIMAL else "and no other cell shows which"
+    where = "in a list with decimal commas" if marks.comma == DECIMAL else "and the other cells do not show which"
     whole = body.replace(".", "")
     raise NumberRefusedError(f"reads as {body} or as {whole} {where}: write {body}0 or {whole}.")
 
@@ -135,6 +139,8 @@ def read_head(text: str, marks: Marks, delimiter: str) -> Head | None:
     lone = _LONE_POWER.match(text)
     if lone is not None:
         exponent = lone[3] or lone[2].translate(_SUPERSCRIPTS)
+        if int(exponent) < -SMALLEST_POWER:
+            raise NumberRefusedError(_TOO_SMALL)
         return Head(float(f"{lone[1]}1e{exponent}"), text[lone.end() :].strip())
     match = _HEAD.fullmatch(text)
     if match is None:
@@ -143,4 +149,7 @@ def read_head(text: str, marks: Marks, delimiter: str) -> Head | None:
     if not exponent:
         exponent, rest = _power(rest)
     digits = _digits(body, marks, delimiter)
-    return Head(float(f"{sign}{digits}e{exponent or 0}"), rest.strip())
+    number = float(f"{sign}{digits}e{exponent or 0}")
+    if abs(number) < SMALLEST and digits.strip("0."):
+        raise NumberRefusedError(_TOO_SMALL)
+    return Head(number, rest.strip())

@@ -2,7 +2,8 @@
 
 A number of at most 15 figures is a whole number below 2^53 times or divided by a power of ten of at most 22, both of
 which a float64 holds exactly, so the one multiplication or division rounds as ``float`` does (Clinger 1990, "How to
-read floating point numbers accurately", fast path). Longer numbers are left to ``float``, all others to the caller.
+read floating point numbers accurately", fast path). Longer numbers are left to ``float``, all others to the caller;
+so are those with a power of ten below -200, which ``float`` might take for zero.
 """
 
 from __future__ import annotations
@@ -22,6 +23,7 @@ PARTING = "\0"
 _MOST_FIGURES = 15
 _MOST_BYTES = 60
 _LARGEST_POWER = 22
+_SMALLEST_POWER = 200
 _POWERS = np.zeros(64)
 _POWERS[: _LARGEST_POWER + 1] = 10.0 ** np.arange(_LARGEST_POWER + 1)
 _FIGURE = np.zeros(256)
@@ -131,6 +133,7 @@ def _read_filled(
         raised, exponent = raised[plain[raised]], exponent[plain[raised]]
         power[raised] += runs.whole[exponent].astype(np.int64)
         marks[raised[marks[raised] > Mark.COMMA]] -= np.int8(Mark.COMMA)
+    plain &= power >= -_SMALLEST_POWER
     exact = plain & (figures <= _MOST_FIGURES) & (np.abs(power) <= _LARGEST_POWER)
     scale = _POWERS.take(np.minimum(np.abs(power), _LARGEST_POWER))
     values = np.where(power < 0, values / scale, values * scale)

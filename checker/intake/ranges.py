@@ -2,7 +2,8 @@
 
 `expand` takes the list as assembled, in which a ranged field holds the lower end, and the upper ends beside it. The
 design fields do not multiply: their higher value is the design value, and the lower one goes to the field of the
-lowest design value.
+lowest design value. Ranges of several flows of one row (mass, volume, standard) are one range said in several ways:
+their low ends go together, and their high ends.
 """
 
 from __future__ import annotations
@@ -12,6 +13,7 @@ from dataclasses import dataclass, replace
 
 import numpy as np
 
+from checker.intake.planned import FLOWS
 from checker.intake.texts import place, shown
 from checker.model import (
     RANGE_WORDS,
@@ -28,10 +30,12 @@ from checker.model import (
 
 __all__ = ["LOWEST_DESIGN", "MOST_RANGES", "expand"]
 
-#: Most ranged fields in one line case: 8 combinations.
+#: Most ranged fields in one line case, all flows counted as one: 8 combinations.
 MOST_RANGES = 3
 #: Field that takes the lower of two design values.
 LOWEST_DESIGN = {"pressure_design": "pressure_design_minimum", "temperature_design": "temperature_design_minimum"}
+#: Ranged fields of one line case, those that vary together in one group.
+Groups = tuple[tuple[str, ...], ...]
 _TOO_MANY = f"states two values, as more than {MOST_RANGES} cells of its row do: give one value per case."
 
 
@@ -61,14 +65,22 @@ def expand(
     listed = _with_lowest(line_list, lowest) if lowest else line_list
     if not highs:
         return listed
-    ranged: dict[int, list[str]] = {}
+    names_of: dict[int, list[str]] = {}
     for name, index in highs:
-        ranged.setdefault(index, []).append(name)
-    crowded = {index: names for index, names in ranged.items() if len(names) > MOST_RANGES}
+        names_of.setdefault(index, []).append(name)
+    ranged = {index: _groups(names) for index, names in sorted(names_of.items())}
+    crowded = {index: names_of[index] for index, groups in ranged.items() if len(groups) > MOST_RANGES}
     if crowded:
         listed = _refuse_crowded(listed, crowded)
-    kept = {index: names for index, names in sorted(ranged.items()) if index not in crowded}
+    kept = {index: groups for index, groups in ranged.items() if index not in crowded}
     return _expanded(listed, kept, highs) if kept else listed
+
+
+def _groups(names: Sequence[str]) -> Groups:
+    """Return the ranged fields of a line case by what they vary together: all flows as one."""
+    flows = tuple(name for name in names if name in FLOWS)
+    groups = (flows if name in FLOWS else (name,) for name in names)
+    return tuple(dict.fromkeys(groups))
 
 
 def _with_lowest(line_list: LineList, lowest: Mapping[tuple[str, int], float]) -> LineList:
@@ -123,50 +135,51 @@ class _Places:
     first: IntArray
 
 
-def _places(count: int, ranged: Mapping[int, Sequence[str]]) -> _Places:
+def _places(count: int, ranged: Mapping[int, Groups]) -> _Places:
     copies = np.ones(count, dtype=np.int32)
-    for index, names in ranged.items():
-        copies[index] = 2 ** len(names)
+    for index, groups in ranged.items():
+        copies[index] = 2 ** len(groups)
     first = np.zeros(count, dtype=np.int32)
     np.cumsum(copies[:-1], out=first[1:])
     return _Places(np.repeat(np.arange(count, dtype=np.int32), copies), first)
 
 
-def _words(names: Sequence[str], ends: int) -> str:
+def _words(groups: Groups, ends: int) -> str:
     """Return the ends that one combination takes: ``low pressure and high temperature``."""
-    parts = [f"{'high' if ends >> bit & 1 else 'low'} {name.replace('_', ' ')}" for bit, name in enumerate(names)]
+    names = ["flow" if len(group) > 1 else group[0].replace("_", " ") for group in groups]
+    parts = [f"{'high' if ends >> bit & 1 else 'low'} {name}" for bit, name in enumerate(names)]
     return f"{', '.join(parts[:-1])} and {parts[-1]}" if len(parts) > 1 else parts[0]
 
 
-def _cases(line_list: LineList, ranged: Mapping[int, Sequence[str]], places: _Places) -> Coded:
+def _cases(line_list: LineList, ranged: Mapping[int, Groups], places: _Places) -> Coded:
     codes = line_list.case.codes[places.take].copy()
     texts = {text: code for code, text in enumerate(line_list.case.texts)}
-    for index, names in ranged.items():
-        for ends in range(2 ** len(names)):
-            text = f"{line_list.case.text(index)}{RANGE_WORDS}{_words(names, ends)}"
+    for index, groups in ranged.items():
+        for ends in range(2 ** len(groups)):
+            text = f"{line_list.case.text(index)}{RANGE_WORDS}{_words(groups, ends)}"
             codes[places.first[index] + ends] = texts.setdefault(text, len(texts))
     return Coded(codes, tuple(texts))
 
 
 def _numbers(
-    line_list: LineList, ranged: Mapping[int, Sequence[str]], highs: Mapping[tuple[str, int], float], places: _Places
+    line_list: LineList, ranged: Mapping[int, Groups], highs: Mapping[tuple[str, int], float], places: _Places
 ) -> dict[str, FloatArray]:
     numbers = {name: values[places.take] for name, values in line_list.numbers.items()}
-    for index, names in ranged.items():
-        for bit, name in enumerate(names):
-            for ends in range(2 ** len(names)):
-                if ends >> bit & 1:
-                    numbers[name][places.first[index] + ends] = highs[name, index]
+    for index, groups in ranged.items():
+        for bit, group in enumerate(groups):
+            mine = [places.first[index] + ends for ends in range(2 ** len(groups)) if ends >> bit & 1]
+            for name in group:
+                numbers[name][mine] = highs[name, index]
     return numbers
 
 
 def _items(
-    line_list: LineList, ranged: Mapping[int, Sequence[str]], highs: Mapping[tuple[str, int], float]
+    line_list: LineList, ranged: Mapping[int, Groups], highs: Mapping[tuple[str, int], float]
 ) -> tuple[RangeItem, ...]:
     """Return one item a cell, also where several cases of a line share it."""
     items: dict[tuple[Address, str], RangeItem] = {}
-    for index, names in ranged.items():
-        for name in names:
+    for index, groups in ranged.items():
+        for name in (name for group in groups for name in group):
             line_number, text, address = _cell(line_list, name, index)
             low, high = float(line_list.numbers[name][index]), highs[name, index]
             items.setdefault((address, name), RangeItem(line_number, name, text, low, high, address))
@@ -174,7 +187,7 @@ def _items(
 
 
 def _expanded(
-    line_list: LineList, ranged: Mapping[int, Sequence[str]], highs: Mapping[tuple[str, int], float]
+    line_list: LineList, ranged: Mapping[int, Groups], highs: Mapping[tuple[str, int], float]
 ) -> LineList:
     places = _places(line_list.line_cases, ranged)
     refusals = {

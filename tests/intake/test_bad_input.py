@@ -410,3 +410,17 @@ def test_a_header_without_a_unit_is_asked_about_only_for_a_bare_number(
     rows = "".join(f"P-{index},10,{cell}\n" for index, cell in enumerate(cells))
     listed = read(tmp_path, f"Line No,Flow (kg/h),Press\n{rows}")
     assert any("no unit" in item.reason for item in listed.unread) is asked
+
+
+def test_refused_cells_leave_nothing_behind_that_only_the_collector_could_free(tmp_path: Path) -> None:
+    rows = "".join(f"P-{index},10,{index} to x{index}\n" for index in range(300))
+    path = write(tmp_path, f"Line No,Flow (kg/h),Press (barg)\n{rows}")
+    gc.collect()
+    gc.disable()
+    try:
+        listed = read_line_list(path)
+        freed = gc.collect()
+    finally:
+        gc.enable()
+    assert (listed.gap("pressure") == Gap.REFUSED).all()
+    assert freed < 300

@@ -242,3 +242,10 @@ def test_single_merged_group_of_a_workbook_holds_for_its_range_only(tmp_path: Pa
     listed = read_line_list(tmp_path / "list.xlsx", units={}, columns={}, atmosphere=100_000.0)
     assert given(listed) == {"size", "pressure_design", "temperature_design", "flow_mass", "density"}
     assert listed.unread == ()
+
+
+def test_two_rows_of_groups_above_the_headers(tmp_path: Path) -> None:
+    header, row = "Line No,Size (NPS),P (barg),T (C),P (barg),T (C)", "P-1,6,5,40,10,80"
+    listed = read(tmp_path, f",,Operating,,Jacket,\n,,Normal,,Design,\n{header}\n{row}\n")
+    assert given(listed) == {"size", "pressure", "temperature"}
+    assert "'Jacket' stands above" in reason(listed, "Jacket Design P (barg)")

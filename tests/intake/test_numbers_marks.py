@@ -2,7 +2,10 @@
 
 from __future__ import annotations
 
+from pathlib import Path
+
 import pytest
+from lists import read
 from number_columns import assert_refused, assert_values, reading
 
 from checker.intake.decimal_marks import (
@@ -15,6 +18,7 @@ from checker.intake.decimal_marks import (
     marks_without_evidence,
     together,
 )
+from checker.model import Gap
 
 NOTHING = evidence_of([])
 COLUMNS = [
@@ -106,3 +110,37 @@ def test_without_evidence_only_clear_cells_are_read() -> None:
     assert_values(reading("elevation", "1.5", delimiter=";", comma=True), 1.5)
     for cell in ("1,234", "1.234"):
         assert_refused(reading("elevation", cell, delimiter=";", comma=True), cell, "reads as")
+
+
+MIXED_LISTS = [
+    (
+        'Line No,Flow [kg/h],P [barg],Density [kg/m3],Viscosity [cP]\nP-1,"12,500",5.5,998,0.997\n'
+        'P-2,"1,200",5.5,"0,995",0.5\n',
+        "flow_mass",
+        2,
+    ),
+    ('Line No,Flow [kg/h],P [barg],Visc [cP]\nP-1,"12,500",5.5,"1,2345"\nP-2,"1,200",5.5,0.5\n', "flow_mass", 2),
+    (
+        "Line No;Flow [kg/h];P [barg];Density [kg/m3];Visc [cP]\nP-1;12,500;10,5;995;1.5\nP-2;121,200;7.25;995;1\n",
+        "flow_mass",
+        2,
+    ),
+    ('Line No,Flow [kg/h],P [barg]\nP-1,1.234,5\nP-2,2.345,5\nP-3,"10,5",5\n', "flow_mass", 3),
+    ('Line No,Flow [kg/h],P [barg]\nP-1,12.345,5.5\nP-2,"10,55",5.5\n', "flow_mass", 2),
+]
+
+
+@pytest.mark.parametrize(("text", "field", "refused"), MIXED_LISTS)
+def test_a_list_that_shows_both_marks_as_decimals_is_asked(tmp_path: Path, text: str, field: str, refused: int) -> None:
+    found = read(tmp_path, text)
+    assert [int(gap) for gap in found.gap(field)] == [Gap.REFUSED] * refused
+    assert "reads as" in next(sentence for (name, _), sentence in found.refusals.items() if name == field)
+
+
+def test_unanimous_columns_keep_their_mark_beside_others() -> None:
+    both = together([evidence_of(["0,995"]), evidence_of(["5.5"])])
+    assert decide(evidence_of(["0,995"]), both, comma=False, delimiter=",")[:2] == (DECIMAL, "")
+    assert decide(evidence_of(["5.5"]), both, comma=False, delimiter=",")[:2] == ("", DECIMAL)
+    assert decide(evidence_of(["1,234,567"]), both, comma=False, delimiter=",")[:2] == (THOUSANDS, DECIMAL)
+    assert decide(NOTHING, both, comma=False, delimiter=",")[:2] == ("", "")
+    assert decide(NOTHING, both, comma=False, delimiter="")[:2] == ("", DECIMAL)

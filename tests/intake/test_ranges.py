@@ -239,3 +239,39 @@ def test_record_of_a_cell(tmp_path: Path) -> None:
     assert limit is not None
     assert limit.values == pytest.approx((311.15,))
     assert "limit" in limit.remark
+
+
+def test_ranges_of_several_flows_are_one_range_said_twice(tmp_path: Path) -> None:
+    text = (
+        "Line No,Flow [kg/h],Flow [m3/h],Oper Press [barg],Oper Temp [degC],Density [kg/m3],Viscosity [cP]\n"
+        "P-1,1000-2000,1-2,4-5,30,1000,1\nP-2,1000-2000,5,4,30,1000,1\nP-3,1000-2000,1-2,4-5,30-40,1000-1001,1\n"
+    )
+    found = read(tmp_path, text)
+    of_first = np.flatnonzero(found.line == 0)
+    mass, volume = (found.number(name)[of_first] * scale for name, scale in (("flow_mass", 3.6), ("flow_volume", 3600)))
+    assert mass.tolist() == pytest.approx(volume.tolist())
+    assert sorted(found.case.text(int(index)) for index in of_first) == [
+        "normal, with high flow and high pressure",
+        "normal, with high flow and low pressure",
+        "normal, with low flow and high pressure",
+        "normal, with low flow and low pressure",
+    ]
+    assert found.case.text(int(np.flatnonzero(found.line == 1)[0])) == "normal, with low flow mass"
+    assert len(found.ranges) == 4
+    assert np.flatnonzero(found.line == 2).size == 1
+
+
+@pytest.mark.parametrize(("viscosity", "value"), [("2", None), ("2-3", None), ("2 cP", 0.002)])
+def test_a_kinematic_viscosity_beside_a_density_range_is_refused(
+    tmp_path: Path, viscosity: str, value: float | None
+) -> None:
+    text = f"Line No,Flow [kg/h],Density [kg/m3],Viscosity [cSt]\nP-1,1000,800-900,{viscosity}\nP-2,1000,800,2-3\n"
+    found = read(tmp_path, text)
+    first, second = (np.flatnonzero(found.line == line) for line in (0, 1))
+    assert found.number("viscosity")[second] == pytest.approx([0.0016, 0.0024])
+    if value is None:
+        assert set(found.gap("viscosity")[first].tolist()) == {Gap.REFUSED}
+        assert "density with two values" in found.refusals["viscosity", 0]
+        assert first.size == 2
+    else:
+        assert found.number("viscosity")[first] == pytest.approx([value] * 2)
