@@ -2,22 +2,18 @@
 
 from __future__ import annotations
 
-import re
-
 import numpy as np
 from numpy.typing import NDArray
 
 from checker.evaluation.contradictions import NORMAL, case_is
+from checker.intake.hold_marks import marks_hold
 from checker.intake.placeholders import holds
 from checker.model import RANGE_WORDS, CaseKind, Coded, Gap, LineList
 
-__all__ = ["STATE_FIELDS", "case_columns", "case_group", "first_of_row", "hold_fields", "marks_hold", "state_told"]
+__all__ = ["STATE_FIELDS", "case_columns", "case_group", "first_of_row", "hold_fields", "state_told"]
 
 _REMARKS = "remarks"
 _MARK = "hold"
-#: In the originator's own column of open items these say that there is none; every other mark says that there is one.
-_NO_MARK = frozenset({"n", "no", "0", "none", "nil", "na", "not applicable", "false", "f", "no hold", "not on hold"})
-_SIGNS_ALONE = re.compile(r"[\s.,;:_/\-\u2010-\u2015\u2212]+")
 MOST_NAMED = 62
 STATE_FIELDS = (
     "pressure", "temperature", "density", "viscosity", "vapour_fraction", "molar_mass", "compressibility",
@@ -75,12 +71,6 @@ def state_told(line_list: LineList) -> NDArray[np.int8]:
             repeats &= same & (gaps == gaps[at])
     told: NDArray[np.bool_] = ~repeats | np.equal(at, np.arange(line_list.line_cases))
     return told.astype(np.int8)
-
-
-def marks_hold(text: str) -> bool:
-    """Return whether a cell of the column of open items marks one: any mark (Y, 3, H1, X, a tick) but a plain no."""
-    word = _SIGNS_ALONE.sub(" ", text.casefold()).strip()
-    return bool(word) and word.replace("n a", "na") not in _NO_MARK
 
 
 def _held(line_list: LineList, name: str) -> NDArray[np.bool_]:

@@ -19,7 +19,9 @@ __all__ = ["CellCollector", "CodedCells", "NumberCells", "NumberCollector", "col
 
 NAN = float("nan")
 _DAMAGED = "\ufffd"
-_PADDED_NUMBER = re.compile(r" *[-+]?(\d+([.,]\d*)?|[.,]\d+)([eE][-+]?\d{1,4})? *", re.ASCII)
+_PADDED_NUMBER = re.compile(
+    r" *(?![-+]?0\d+(?:[eE ]|$))[-+]?(\d+([.,]\d*)?|[.,]\d+)([eE](?:\+?\d{1,4}|-\d{1,2}))? *", re.ASCII
+)
 _THOUSANDS = re.compile(r"[-+]?[1-9]\d{0,2}[.,]\d{3}", re.ASCII)
 LONGEST_NUMBER = 60
 Scalar = TypeVar("Scalar", np.float64, np.int32, np.int8)

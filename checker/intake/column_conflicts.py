@@ -6,10 +6,10 @@ from collections.abc import Sequence
 
 from checker.errors import InputError, Problem
 from checker.intake.planned import PlannedColumn
-from checker.intake.texts import key_of, place, shown
+from checker.intake.texts import fold_words, key_of, place, shown
 from checker.intake.unit_words import unit_or_refusal
 
-__all__ = ["DESCRIPTIVE", "refuse_duplicates", "without_overruled", "without_repeated"]
+__all__ = ["DESCRIPTIVE", "refuse_duplicates", "second_service", "without_overruled", "without_repeated"]
 
 DESCRIPTIVE = frozenset(
     {
@@ -19,6 +19,9 @@ DESCRIPTIVE = frozenset(
 )  # fmt: skip
 
 
+SERVICE = "service"
+
+
 def without_overruled(columns: list[PlannedColumn]) -> list[PlannedColumn]:
     """Leave out a column whose field and case the criteria give to another one."""
     taken = {(column.field.name, column.case) for column in columns if column.hinted}
@@ -26,15 +29,36 @@ def without_overruled(columns: list[PlannedColumn]) -> list[PlannedColumn]:
 
 
 def without_repeated(columns: list[PlannedColumn]) -> tuple[list[PlannedColumn], list[PlannedColumn]]:
-    """Return the columns with the first one only of each descriptive field that no check reads, and the others."""
+    """Return the columns with one only of each descriptive field and of the service, and the others.
+
+    The first one counts; of a service and a fluid code, which many lists state side by side, the service does.
+    """
     seen: set[str] = set()
     kept: list[PlannedColumn] = []
     repeated: list[PlannedColumn] = []
-    for column in columns:
+    for column in sorted(columns, key=_is_code):
         name = column.field.name
-        (repeated if name in seen and name in DESCRIPTIVE else kept).append(column)
+        (repeated if name in seen and name in (*DESCRIPTIVE, SERVICE) else kept).append(column)
         seen.add(name)
-    return kept, repeated
+    return sorted(kept, key=lambda column: column.index), repeated
+
+
+def _is_code(column: PlannedColumn) -> bool:
+    return column.field.name == SERVICE and not column.hinted and "code" in fold_words(column.header).split()
+
+
+def second_service(repeated: Sequence[PlannedColumn], kept: Sequence[PlannedColumn]) -> list[tuple[int, str]]:
+    """Return the question on each further column of the service: the limits rest on which one is read."""
+    read = next((column.header for column in kept if column.field.name == SERVICE), "")
+    return [
+        (
+            column.index,
+            f"{shown(column.header)} names the service too; it is read from {shown(read)}. If the limits of the "
+            "criteria are matched by this one, say so in [columns].",
+        )
+        for column in repeated
+        if column.field.name == SERVICE
+    ]
 
 
 def _refuse_second_table(columns: Sequence[PlannedColumn], file: str, row: int) -> None:

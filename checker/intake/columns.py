@@ -10,7 +10,13 @@ from itertools import islice
 from checker.criteria.hints import ColumnHint
 from checker.fields import Field
 from checker.intake.column_cases import named_cases, one_case, with_cases
-from checker.intake.column_conflicts import DESCRIPTIVE, refuse_duplicates, without_overruled, without_repeated
+from checker.intake.column_conflicts import (
+    DESCRIPTIVE,
+    refuse_duplicates,
+    second_service,
+    without_overruled,
+    without_repeated,
+)
 from checker.intake.column_fields import CELLS_LOOKED_AT, UNSETTLED, Draft, one_field
 from checker.intake.column_hints import absent_headers, hinted_column, same_unit
 from checker.intake.fraction_basis import with_fraction_basis
@@ -304,8 +310,9 @@ def plan_columns(
     needless = {column.field.name for column in kept} | DESCRIPTIVE
     needed = {index: found for index, found in near.items() if found[0] not in needless}
     unread = _unread_headers(layout, cells, unmatched, left_out, settled, hints, needed)
+    unread += second_service(repeated, kept)
     remarks = {index: sentence for index, (_, sentence) in near.items() if sentence}
-    why = remarks | dict(unread) | {c.index: _ASIDE.format(c.field.name) for c in (*overruled, *repeated)}
+    why = remarks | {c.index: _ASIDE.format(c.field.name) for c in (*overruled, *repeated)} | dict(unread)
     return Plan(
         tuple(kept),
         tuple(layout.headers[index] for index in unmatched),

@@ -9,15 +9,17 @@ import numpy as np
 from checker.fields import Field
 from checker.intake.cells import CodedCells
 from checker.intake.converted import ConvertedNumbers, ConvertedTexts, spread_sparse
+from checker.intake.hold_marks import marks_hold
 from checker.intake.phase_words import PHASES, phase_word
 from checker.intake.placeholders import DITTO_REASON, OPEN_WORDS, ditto, holds, placeholder
 from checker.intake.planned import PlannedColumn
 from checker.intake.size_columns import read_sizes
 from checker.intake.texts import shown, tidy
-from checker.model import BoolArray, Coded, Gap
+from checker.model import BoolArray, CodeArray, Coded, Gap
 
 __all__ = ["convert_line_numbers", "convert_sizes", "convert_texts"]
 
+HOLD_COLUMN = "hold"
 _ENDS = {"inlet": "inlet in upstream start from beginning source", "outlet": "outlet out downstream end to"}
 _VOCABULARY = {
     "phase": PHASES,
@@ -67,8 +69,15 @@ def convert_texts(cells: CodedCells, field_: Field) -> ConvertedTexts:
         Coded(np.array(codes, dtype=np.int32)[cells.codes], tuple(texts)),
         gaps[cells.codes],
         spread_sparse(reasons, cells.codes, len(readings)),
-        find_open_items(cells, certain=gaps == Gap.HOLD),
+        find_open_items(cells, certain=_marked(cells, gaps, field_)),
     )
+
+
+def _marked(cells: CodedCells, gaps: CodeArray, field_: Field) -> BoolArray:
+    """Return which distinct texts are open items for certain: HOLD and the like, any mark in the column for them."""
+    if field_.name != HOLD_COLUMN:
+        return np.equal(gaps, Gap.HOLD)
+    return np.array([marks_hold(text) for text in cells.texts], dtype=np.bool_)
 
 
 def find_open_items(cells: CodedCells, *, certain: BoolArray | None = None) -> list[int]:

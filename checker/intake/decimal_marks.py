@@ -149,9 +149,7 @@ def _both_decimal(evidence: Evidence) -> bool:
     return ("comma", DECIMAL) in evidence.cells and ("point", DECIMAL) in evidence.cells
 
 
-def _completed(
-    of_comma: str, of_point: str, file: Evidence, delimiter: str, *, maybe_comma: bool
-) -> tuple[str, str]:
+def _completed(of_comma: str, of_point: str, file: Evidence, delimiter: str, *, maybe_comma: bool) -> tuple[str, str]:
     """Return the meanings of a column, those its own cells leave open taken from the list unless that contradicts.
 
     A list that shows both marks in one meaning says nothing of a column without evidence, and a lone ``10,5`` in the

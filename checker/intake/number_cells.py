@@ -52,8 +52,8 @@ NAN = float("nan")
 #: Above 20 degC, in K, the lower of two design temperatures is not taken for the lowest design temperature.
 MOST_LOWEST_TEMPERATURE = 293.15
 _TWO_DESIGN_VALUES = (
-    "{text} states two values for the {meaning}: is it {ends}? Write the {meaning} alone, and the lowest in a column of "
-    "its own."
+    "{text} states two values for the {meaning}: is it {ends}? Write the {meaning} alone, and the lowest one in a "
+    "column of its own."
 )
 LONGEST_NUMBER = 60
 _LOWEST_FIELDS = frozenset(LOWEST_DESIGN.values())
@@ -108,6 +108,11 @@ def _with_vacuum(text: str, plain: str, context: NumberContext) -> Cell | None:
     return Cell(cell.reading._replace(lowest=0.0), record)
 
 
+def _same(one: Unit, other: Unit) -> bool:
+    """Return whether two units are one in two spellings."""
+    return (one.scale, one.offset, one.reference) == (other.scale, other.offset, other.reference)
+
+
 def _stated_twice(text: str, plain: str, context: NumberContext) -> Cell | None:
     """Return the reading of one value stated in two units (``50 °C (122 °F)``), None for any other cell."""
     texts = two_statements(plain) if len(plain) <= LONGEST_NUMBER else None
@@ -119,6 +124,9 @@ def _stated_twice(text: str, plain: str, context: NumberContext) -> Cell | None:
         return None
     units = first.units[0] or context.unit, second.units[0]
     if units[0] is None or units[1] is None or any(len(part.numbers) > 1 or part.kind for part in (first, second)):
+        return None
+    bracketed = plain.endswith((")", "]"))
+    if not bracketed and (first.units[0] is None or _same(units[0], units[1])):
         return None
     cells = [_measured(text, part, context) for part in (first, second)]
     if any(cell.reading.gap is not Gap.GIVEN or cell.reading.rests_on for cell in cells):

@@ -58,7 +58,7 @@ class PlainNumbers:
     Attributes
     ----------
     values : float array, shape (cells,)
-        The number with its mark taken as decimal; NaN where the cell is not plain.
+        The number with its mark taken as decimal; NaN where the cell is not plain, as one that begins with noughts.
     marks : int8 array, shape (cells,)
         `Mark` of each plain number.
     long : bool array, shape (cells,)
@@ -86,6 +86,7 @@ class _Runs:
     marks: CodeArray
     sound: BoolArray
     noughts: BoolArray
+    leading: BoolArray
 
 
 def read_plain(joined: str) -> PlainNumbers:
@@ -121,25 +122,26 @@ def _read_filled(
     runs = _read_runs(octets, kinds, starts, ends)
     last = np.flatnonzero(octets.take(ends) == 0)
     power, marks, plain, values, figures = -runs.decimals, runs.marks, runs.sound, runs.whole, runs.figures
-    noughts = runs.noughts
+    leading, noughts = runs.leading, runs.noughts & runs.sound
     if last.size < ends.size:
         count = np.diff(last, prepend=-1)
         first = last - count + 1
         values, power, marks, figures = values[first], power[first], marks[first], figures[first]
         plain, noughts = plain[first] & (count <= 2), noughts[first] & (count == 1)
+        leading = leading[first]
         raised = np.flatnonzero(plain & (count == 2))
         exponent = last[raised]
         plain[raised] = runs.sound[exponent] & (runs.marks[exponent] == Mark.NONE) & (runs.figures[exponent] <= 3)
         raised, exponent = raised[plain[raised]], exponent[plain[raised]]
         power[raised] += runs.whole[exponent].astype(np.int64)
         marks[raised[marks[raised] > Mark.COMMA]] -= np.int8(Mark.COMMA)
-    plain &= power >= -_SMALLEST_POWER
+    plain &= (power >= -_SMALLEST_POWER) & ~leading
     exact = plain & (figures <= _MOST_FIGURES) & (np.abs(power) <= _LARGEST_POWER)
     scale = _POWERS.take(np.minimum(np.abs(power), _LARGEST_POWER))
     values = np.where(power < 0, values / scale, values * scale)
     values[~exact] = np.nan
     marks *= plain
-    return values, marks, plain & ~exact, noughts & plain
+    return values, marks, plain & ~exact, noughts
 
 
 def _read_runs(
@@ -164,8 +166,11 @@ def _read_runs(
     decimals[marked] = _figures_behind_mark(kinds, behind, starts, marked)
     doubtful = (decimals == 3) & (figures >= 4) & (figures <= 6) & (octets.take(starts + signed) != 48)
     marks = (points + 2 * commas + 2 * doubtful).astype(np.int8)
-    noughts = (leading == 48) & (figures >= 2) & (marks == Mark.NONE)
-    return _Runs(np.where(leading == 45, -whole, whole), figures, decimals, marks, sound, noughts)
+    several = (figures >= 2) & (marks == Mark.NONE)
+    zeros = several & (octets.take(starts + signed) == 48)
+    return _Runs(
+        np.where(leading == 45, -whole, whole), figures, decimals, marks, sound, several & (leading == 48), zeros
+    )
 
 
 def _figures_behind_mark(

@@ -186,9 +186,7 @@ def _items(
     return tuple(sorted(items.values(), key=lambda item: item.address.row))
 
 
-def _expanded(
-    line_list: LineList, ranged: Mapping[int, Groups], highs: Mapping[tuple[str, int], float]
-) -> LineList:
+def _expanded(line_list: LineList, ranged: Mapping[int, Groups], highs: Mapping[tuple[str, int], float]) -> LineList:
     places = _places(line_list.line_cases, ranged)
     refusals = {
         (name, int(places.first[index]) + ends): sentence

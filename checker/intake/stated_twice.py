@@ -1,4 +1,4 @@
-"""One value that a cell states twice, in two units: ``50 °C (122 °F)``."""
+"""One value that a cell states twice, in two units: ``50 °C (122 °F)``, ``5 barg/72.5 psig``."""
 
 from __future__ import annotations
 
@@ -12,13 +12,20 @@ _TWICE = re.compile(
     r"(?P<first>[-+]?\s?[.\d][^()\[\]]*?)\s*[(\[]\s*(?P<second>[-+]?\s?[.\d][^()\[\]]*?[^()\[\]\s\d.,])\s*[)\]]",
     re.ASCII,
 )
+_PARTED = re.compile(
+    r"(?P<first>[-+]?\s?[.\d][^()\[\]]*?[^()\[\]\s\d.,])\s*[/=|]\s*(?P<second>[-+]?\s?[.\d][^()\[\]]*?[^()\[\]\s\d.,])",
+    re.ASCII,
+)
 _DECIMALS = re.compile(r"[-+]?\s?[\d' ]*(?:[.,](\d+))?(?![\d.,eE])", re.ASCII)
 _ROUNDING = 1e-9
 
 
 def two_statements(plain: str) -> tuple[str, str] | None:
-    """Return the two texts of a cell that states a number, and behind it in brackets a number with a unit."""
-    match = _TWICE.fullmatch(plain)
+    """Return the two texts of a cell that states a number, and behind it in brackets a number with a unit.
+
+    With a stroke or an equals sign between them in place of the brackets both must have a unit.
+    """
+    match = _TWICE.fullmatch(plain) or _PARTED.fullmatch(plain)
     return (match["first"], match["second"]) if match else None
 
 

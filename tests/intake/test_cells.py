@@ -317,3 +317,10 @@ def test_any_cells_make_a_list_never_a_fault(tmp_path: Path, cells: list[str]) -
     gaps = listed.gap("temperature")
     assert np.array_equal(np.isfinite(listed.number("temperature")), gaps == Gap.GIVEN)
     assert {index for _, index in listed.refusals} == set(np.flatnonzero(gaps == Gap.REFUSED).tolist())
+
+
+def test_every_mark_of_the_hold_column_is_an_open_item(tmp_path: Path) -> None:
+    marks = ("Y", "3", "H1", "\u2713", "N", "no", "-", "", "0", "HOLD")
+    rows = "\n".join(f"P-{index},6,500,{mark}" for index, mark in enumerate(marks))
+    listed = read(tmp_path, f"Line No,Size (NPS),Flow (kg/h),Hold\n{rows}\n")
+    assert [item.text for item in listed.holds] == ["Y", "3", "H1", "\u2713", "HOLD"]

@@ -146,3 +146,9 @@ def test_header_of_two_quantities_is_asked(tmp_path: Path) -> None:
     sentence = next(item.reason for item in listed.unread if item.text == "Flow")
     for words in ("no unit", "mass flow", "volume flow", "name its field in [columns]"):
         assert words in sentence
+
+
+def test_service_and_fluid_code_side_by_side(tmp_path: Path) -> None:
+    listed = read(tmp_path, "Line No,Fluid code,Service,Size (NPS),Flow (kg/h)\nP-1,CW,Cooling water,6,500\n")
+    assert listed.text("service").text(0) == "Cooling water"
+    assert ["names the service too" in item.reason for item in listed.unread] == [True]

@@ -11,10 +11,13 @@ AGREE = [
     ("temperature", "50 °C (122 °F)", 323.15), ("temperature", "50 (122 °F)", 323.15),
     ("temperature", "50°C [122°F]", 323.15), ("temperature", "-29 °C (-20 °F)", 244.15),
     ("pressure", "10 barg (145 psig)", 1_100_000.0), ("pressure", "10 barg (11 bara)", 1_100_000.0),
+    ("temperature", "50°C/122°F", 323.15), ("temperature", "50 °C = 122 °F", 323.15), ("temperature", "-29 °C / -20 °F", 244.15),
+    ("pressure", "5 barg/72.5 psig", 600_000.0), ("flow", "3600 kg/h / 7936.6 lb/h", 1.0), ("pressure", "5 barg/6 bara", 6e5),
     ("pressure", "1 barg (14.5 psig)", 200_000.0), ("flow", "3600 kg/h (7937 lb/h)", 1.0),
 ]  # fmt: skip
 DIFFER = [
     ("temperature", "50 °C (132 °F)"), ("temperature", "50.0 °C (122.9 °F)"), ("temperature", "50 (-122 °F)"),
+    ("pressure", "5 barg/80 psig"), ("temperature", "50°C/140°F"), ("flow", "5 kg/h / 12 lb/h"),
     ("pressure", "10 barg (10 bara)"), ("pressure", "10 barg (1450 psig)"), ("flow", "10 kg/h (10 lb/h)"),
 ]  # fmt: skip
 
@@ -46,3 +49,8 @@ def test_a_number_that_begins_with_zeros_is_asked(cell: str) -> None:
 @pytest.mark.parametrize(("cell", "value"), [("0", 0.0), ("0.5", 0.5), ("0.050", 0.05), ("1E05", 1e5), ("100", 100.0)])
 def test_a_zero_before_the_mark_is_no_leading_zero(cell: str, value: float) -> None:
     assert_values(reading("elevation", cell), value)
+
+
+@pytest.mark.parametrize("cell", ["5 barg/7 bar(g)", "5/7 barg", "5 barg / 7"])
+def test_two_values_in_one_unit_stay_a_range(cell: str) -> None:
+    assert_values(reading("pressure", cell), 6e5, 8e5)

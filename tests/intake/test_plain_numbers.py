@@ -4,15 +4,21 @@ from __future__ import annotations
 
 import math
 import re
+from pathlib import Path
 
 import numpy as np
+import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
+from lists import read
 
 from checker.intake.cells import NumberCollector, collect_numbers
 from checker.intake.plain_numbers import Mark, read_plain
+from checker.model import Gap
 
-SHAPE = re.compile(r"[-+]?(\d+([.,]\d*)?|[.,]\d+)([eE][-+]?\d{1,4})?", re.ASCII)
+#: A power of ten far below any value of a line, which `float` may take for zero.
+TINY = re.compile(r"[eE]-\d{3,}", re.ASCII)
+SHAPE = re.compile(r"(?![-+]?0\d+(?:[eE]|$))[-+]?(\d+([.,]\d*)?|[.,]\d+)([eE][-+]?\d{1,4})?", re.ASCII)
 SIGNS = "0123456789.,+-eE_ x\u0663\u00bd"
 NUMBERS = st.one_of(
     st.floats(allow_nan=False, allow_infinity=False).map(repr),
@@ -21,7 +27,26 @@ NUMBERS = st.one_of(
     st.decimals(allow_nan=False, allow_infinity=False, places=6).map(str),
     st.integers(-(10**17), 10**17).map(str),
     st.text(SIGNS, max_size=12),
-    st.sampled_from(["", " ", "nan", "inf", "HOLD", "1_000", "5.", ".5", "1e400", "-0", "1,234", "12.345", "0,234"]),
+    st.sampled_from(
+        [
+            "",
+            " ",
+            "nan",
+            "inf",
+            "HOLD",
+            "1_000",
+            "5.",
+            ".5",
+            "1e400",
+            "1e-400",
+            "007",
+            "-05",
+            "-0",
+            "1,234",
+            "12.345",
+            "0,234",
+        ]
+    ),
 )
 
 
@@ -41,6 +66,8 @@ def test_many_at_once_are_what_float_makes_of_each(texts: list[str]) -> None:
     for text, value, code, mark in zip(texts, cells.numbers, cells.codes, cells.marks, strict=True):
         bare = text.strip(" ")
         expected = float(bare.replace(",", ".")) if SHAPE.fullmatch(bare) else math.nan
+        if TINY.search(bare) and math.isnan(value):
+            expected = math.nan
         if math.isfinite(expected) and len(text) <= 60:
             assert value == expected
             assert code == -1
@@ -82,3 +109,16 @@ def test_a_nul_in_a_cell_moves_no_other() -> None:
     cells = collected(["1", "2\x003", "4"]).cells()
     assert cells.numbers.tolist()[::2] == [1.0, 4.0]
     assert len(cells) == 3
+
+
+def test_numbers_that_could_become_zero_and_those_with_noughts_before_them_are_left_to_the_slow_path() -> None:
+    odd = ["1e-400", " 1e-400", "2.5E-330", "007", "05", " 05 ", "-05", "+007", "007e2", "00"]
+    cells = collected([*odd, "0", "0.5", "0.0", "00.5", "1e-100", "0e-5"]).cells()
+    assert [cells.texts[code] for code in cells.codes[: len(odd)]] == odd
+    assert cells.numbers[len(odd) :].tolist() == [0.0, 0.5, 0.0, 0.5, 1e-100, 0.0]
+
+
+@pytest.mark.parametrize("cell", ["1e-400", "1E-330", "10^-400", "007", "05", "-05"])
+def test_they_are_refused_in_a_list(tmp_path: Path, cell: str) -> None:
+    listed = read(tmp_path, f"Line No,Flow [kg/h],dz [m]\nP-1,5,{cell}\nP-2,5,0\nP-3,5,0.5\n")
+    assert listed.gap("elevation_change").tolist() == [Gap.REFUSED, Gap.GIVEN, Gap.GIVEN]
