@@ -12,7 +12,7 @@ from checker.intake.number_shapes import Head, NumberRefusedError, plain_powers,
 from checker.intake.unit_words import is_unit_text, unit_in_cell
 from checker.units import Unit
 
-__all__ = ["APPROXIMATION", "LIMIT", "CellParts", "read_parts"]
+__all__ = ["APPROXIMATION", "LIMIT", "CellParts", "read_parts", "without_marks", "without_sure_marks"]
 
 LIMIT, APPROXIMATION = "a limit", "an approximation"
 _RAISED = "\u2070\u00b9\u00b2\u00b3\u2074-\u2079"
@@ -100,7 +100,7 @@ class _End(NamedTuple):
     unit: Unit | None
 
 
-def _without_marks(text: str) -> tuple[str, str]:
+def without_marks(text: str) -> tuple[str, str]:
     """Return a cell without its footnote marks, and those marks."""
     marks = []
     for shape in (_NOTE, _SYMBOL_NOTE, _RAISED_NOTE):
@@ -113,6 +113,12 @@ def _without_marks(text: str) -> tuple[str, str]:
         marks.append(bare[0].strip())
         text = text[: bare.start()].strip()
     return text, " ".join(marks)
+
+
+def without_sure_marks(text: str) -> tuple[str, str]:
+    """Return a cell without its footnote marks, and those; as it is where one could be a number in brackets."""
+    plain, mark = without_marks(text)
+    return (text, "") if _BARE_NOTE.search(mark) else (plain, mark)
 
 
 def _readings(text: str) -> Iterator[tuple[str, str]]:
@@ -213,8 +219,9 @@ def _two(between: str, first: _End, second: _End, written: str, column: _Column)
     elif between not in _ORDERED and between not in _EITHER:
         raise NumberRefusedError(_WHY_NOT.get(between, "holds two numbers: give one value per case."))
     if between == "-" and low < 0.0 and written[:1].isdigit():
+        least, most = sorted((low, -high))
         raise NumberRefusedError(
-            f"has lost its range mark: it reads as {low:g} to {high:g} or as {low:g} to {-high:g}. Write it with 'to'."
+            f"has lost its range mark: it reads as {low:g} to {high:g} or as {least:g} to {most:g}. Write it with 'to'."
         )
     units = _common_units(between, first, second, column)
     spellings = dict.fromkeys(end.spelling for end in (first, second) if end.spelling)
@@ -273,7 +280,7 @@ def read_parts(text: str, *, dimension: str, unit: Unit | None, marks: Marks, de
     plain = plain_powers(text)
     if _POWER_OR_NOTE.search(plain):
         raise NumberRefusedError("reads as a power of ten or as 10 with a footnote mark: write which.")
-    plain, mark = _without_marks(plain)
+    plain, mark = without_marks(plain)
     refusal = ""  # the sentence alone: an error kept here would keep its frames, this one among them, for ever
     for reading, kind in _readings(_FROM.sub("", plain, count=1)):
         try:

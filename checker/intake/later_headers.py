@@ -13,7 +13,7 @@ from checker.intake.cells import CodedCells, NumberCells
 from checker.intake.header_rows import bare, is_numbering, is_units_row
 from checker.intake.headers import read_header
 from checker.intake.layout import Layout
-from checker.intake.placeholders import ditto, placeholder
+from checker.intake.placeholders import AMBIENT, ATMOSPHERE, FULL_VACUUM, NO_FLOW, ditto, placeholder, word_of
 from checker.intake.texts import key_of, shown, tidy
 from checker.intake.unit_words import is_unit_text
 from checker.model import Gap, IntArray
@@ -26,6 +26,7 @@ _WORDED = re.compile(r"\s*[\[(]?[^\W\d_\s]")
 _DIGIT = re.compile(r"\d")
 _A_NUMBER = re.compile(r"\s*[-+<>~]?\s*[\d.,]*\d")
 _NOTHING = re.compile(r"[-_\u2013\u2014\s]*$")
+_STAND_INS = AMBIENT | ATMOSPHERE | FULL_VACUUM | NO_FLOW
 _REMEDY = "so the values beneath it are not read: give each table a sheet or file of its own, with one header."
 
 
@@ -145,14 +146,14 @@ class LaterHeaders:
         worded = np.zeros(len(numbers), dtype=np.int32)
         for position in self._number_columns:
             column = columns[position]
-            words = np.array([_WORDED.match(text) is not None for text in column.texts], dtype=np.bool_)
+            words = np.array([_is_word(text) for text in column.texts], dtype=np.bool_)
             if words.any():
                 worded += words[column.codes] & (column.codes >= 0)
         enough = min(2, max(1, len(self._number_columns)))
         some: IntArray = np.flatnonzero(worded).astype(np.int32)
         mine = {index for index in some.tolist() if worded[index] >= enough or not _DIGIT.search(numbers[index])}
         mine.update(index for index, number in enumerate(numbers) if number.casefold() in self._names)
-        group = self._folded[0]
+        group = self._folded[0] if self._folded else ()
         if self._line_column >= len(group) or not group[self._line_column]:
             mine.update(self._same_rows(numbers, columns))
         return sorted(mine)
@@ -216,12 +217,15 @@ class LaterHeaders:
     def _words_for_numbers(self, row: Sequence[str]) -> bool:
         """Return whether most number columns hold words of their own, none of them a known stand-in for a value."""
         cells = [row[position].strip() for position in self._number_columns]
-        words = {
-            cell.casefold()
-            for cell in cells
-            if _WORDED.match(cell) and placeholder(cell, "") is Gap.GIVEN and not ditto(tidy(cell))
-        }
+        words = {cell.casefold() for cell in cells if _is_word(cell)}
         return len(words) >= 2 and 2 * len(words) > len(cells)
+
+
+def _is_word(cell: str) -> bool:
+    """Return whether a cell of a number column holds a word that is no known stand-in for a value."""
+    if _WORDED.match(cell) is None or placeholder(cell.strip(), "") is not Gap.GIVEN or ditto(tidy(cell)):
+        return False
+    return word_of(cell.strip()) not in _STAND_INS
 
 
 def _tells(row: Sequence[str]) -> bool:

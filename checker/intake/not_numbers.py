@@ -15,6 +15,7 @@ _LOST_MINUS = re.compile(r"!\s?(\d[\d.,]*)", re.ASCII)
 _BRACKETED = re.compile(r"\(\s?(\d[\d.,]*)\s?\)", re.ASCII)
 _LIST = re.compile(r"[\[({]\s?[-+]?\d[\d.,eE+-]*\s?[,;|]\s?.*", re.ASCII | re.DOTALL)
 _MARKS = re.compile(r"[?*.xX!\u2020\u2021\u2022\u2026\s]{1,20}")
+_SEVERAL = re.compile(r"(\d{1,4})/(\d{1,4})/(\d{1,4})", re.ASCII)
 _STATES = {
     "saturated": "saturated",
     "sat": "saturated",
@@ -37,6 +38,9 @@ def known_words(text: str) -> str:
         return ""
     if ditto(text):
         return DITTO_REASON
+    values = _SEVERAL.fullmatch(text)
+    if values and not _may_be_date(*map(int, values.groups())):
+        return "holds three values: give one value per case."
     trace = spreadsheet_trace(text)
     if trace:
         return trace
@@ -47,6 +51,12 @@ def known_words(text: str) -> str:
     if text[0] in "=@" and text[:2] not in ("=<", "=>"):
         return "begins like a formula: nothing is computed here, write the value itself."
     return _puzzling(text) or _of_letters(text)
+
+
+def _may_be_date(first: int, second: int, third: int) -> bool:
+    """Return whether three numbers are a day, a month and a year, in any order in which dates are written."""
+    orders = (first, second), (second, first), (third, second)
+    return any(1 <= day <= 31 and 1 <= month <= 12 for day, month in orders)
 
 
 def _puzzling(text: str) -> str:

@@ -11,7 +11,7 @@ import re
 import numpy as np
 
 from checker.fields import Field
-from checker.intake.cell_parts import APPROXIMATION, CellParts, read_parts
+from checker.intake.cell_parts import APPROXIMATION, CellParts, read_parts, without_sure_marks
 from checker.intake.cell_reading import (
     AT_60_DEGF,
     KINEMATIC,
@@ -60,7 +60,8 @@ _LOWEST_FIELDS = frozenset(LOWEST_DESIGN.values())
 _BARE = re.compile(r"[-+]?\d+(?:[.,]\d+)?(?:[eE][-+]?\d+)?", re.ASCII)
 _VACUUM = r"(?:F[./]?V\.?|full\s?vac(?:uum)?\.?|vacuum)"
 _WITH_VACUUM = re.compile(
-    rf"(?:{_VACUUM}\s?(?:[/&+,-]|to|and)\s?(?P<behind>.+)|(?P<before>.+?)\s?(?:[/&+,-]|to|and)\s?{_VACUUM})",
+    rf"(?:{_VACUUM}\s?(?:[/&+,-]|to|and)\s?(?P<behind>.+)|(?P<before>.+?)\s?(?:[/&+,-]|to|and)\s?{_VACUUM}"
+    rf"|(?P<beside>.+?)\s?[(\[]\s?{_VACUUM}\s?[)\]])",
     re.IGNORECASE | re.ASCII,
 )
 
@@ -93,19 +94,21 @@ def _parts(plain: str, context: NumberContext) -> CellParts:
 
 def _with_vacuum(text: str, plain: str, context: NumberContext) -> Cell | None:
     """Return the reading of a pressure written beside full vacuum (``3.5/FV``), None for any other cell."""
-    match = _WITH_VACUUM.fullmatch(plain) if len(plain) <= LONGEST_NUMBER else None
+    plain, mark = without_sure_marks(plain) if len(plain) <= LONGEST_NUMBER else ("", "")
+    match = _WITH_VACUUM.fullmatch(plain)
     if match is None or context.field.dimension != "pressure":
         return None
     if context.field.name not in LOWEST_DESIGN:
         return refused(text, f"{shown(text)} says full vacuum, a design condition: give the pressure alone.")
-    cell = _read((match["behind"] or match["before"]).strip(), context)
+    cell = _read((match["behind"] or match["before"] or match["beside"]).strip(), context)
     if cell.reading.gap is not Gap.GIVEN or not math.isnan(cell.reading.lowest):
         return refused(text, f"{shown(text)} is not a design pressure beside full vacuum: write it as '3.5/FV'.")
     record, own = cell.record, unit_in_cell(cell.record.unit, "pressure")
     unit = context.unit if isinstance(own, str) else own
     vacuum = float(from_si(0.0, unit, atmosphere=context.atmosphere)) if unit else 0.0
     record = CellRecord(text, (vacuum, *record.numbers), record.unit, (0.0, *record.values), "down to full vacuum")
-    return Cell(cell.reading._replace(lowest=0.0), record)
+    note = cell.reading.note or (f"footnote mark {shown(mark)}" if mark else "")
+    return Cell(cell.reading._replace(lowest=0.0, note=note), record)
 
 
 def _same(one: Unit, other: Unit) -> bool:
@@ -225,9 +228,21 @@ def _possible_lowest(value: float, field: Field) -> bool:
     return field.above < value < field.below or (field.dimension == "pressure" and value == 0.0)
 
 
+def _word(text: str, plain: str, context: NumberContext) -> Cell | None:
+    """Return the reading of a word that stands for a value, with or without a footnote mark; None for any other."""
+    cell = word_value(text, plain, context)
+    if cell is not None or not plain[:1].isalpha() or len(plain) > LONGEST_NUMBER:
+        return cell
+    word, mark = without_sure_marks(plain)
+    cell = word_value(text, word, context) if mark else None
+    if cell is None or cell.reading.gap is not Gap.GIVEN:
+        return cell
+    return cell._replace(reading=cell.reading._replace(note=f"footnote mark {shown(mark)}"))
+
+
 def _read(text: str, context: NumberContext) -> Cell:
     plain = tidy(text)
-    special = word_value(text, plain, context)
+    special = _word(text, plain, context)
     if special is not None:
         return special
     gap = placeholder(plain, context.field.name)

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 import unicodedata
 
 __all__ = ["PHASES", "phase_word"]
@@ -26,8 +27,18 @@ _GAS_SIDES = "g v gas gaz vap vapour vapor vapeur \u0433 газ пар".split()
 _JOINTS = ("plus", "and", "et", "und", "y", "e")
 
 
+_DOUBT = frozenset("?~\u00bf\u2248\u2245\u223c\u2243\uff5e\uff1f")
+_NOTE = re.compile(r"(?<=\w)\s*[(\[]\s?(?:see )?notes?\.? ?\d{1,2}(?: ?[,&] ?\d{1,2}){0,4}\s?[)\]]\s*$", re.IGNORECASE)
+
+
 def phase_word(text: str) -> str:
-    """Return the letters and figures of a text, small and without accents; ``plus`` for the sign in a long one."""
+    """Return the letters and figures of a text, small and without accents; ``plus`` for the sign in a long one.
+
+    A footnote (``V (Note 1)``) is left out; a text with a mark of doubt (``V?``, ``~V``) has no word.
+    """
+    if not _DOUBT.isdisjoint(text):
+        return ""
+    text = _NOTE.sub("", text)
     plus = "" if len(text.strip()) <= 3 else "plus"
     plain = unicodedata.normalize("NFKD", text.casefold()).replace("+", plus)
     return "".join(character for character in plain if character.isalnum())

@@ -9,7 +9,7 @@ import numpy as np
 
 from checker.criteria.nominal_size import nominal_sizes, size_of_dn, written_size
 from checker.intake.cells import CodedCells
-from checker.intake.sizes import SizeReading, read_size
+from checker.intake.sizes import SizeReading, read_size, without_note
 from checker.intake.texts import shown, tidy
 from checker.model import Gap
 
@@ -23,6 +23,7 @@ _MOST_NAMED = 2
 
 def _only_on_other(text: str, basis: str) -> bool:
     """Return whether an unmarked size is none on the basis of its column, but one on the other basis."""
+    text = without_note(text.strip())
     unmarked = _UNMARKED.fullmatch(text) and not _CODE.fullmatch(text)
     written = written_size(" ".join(tidy(text).split())) if unmarked else None
     if written is None:
@@ -37,9 +38,10 @@ def _in_use(cells: CodedCells) -> Iterator[str]:
 
 def _asked(text: str, reading: SizeReading, basis: str, witnesses: list[str]) -> SizeReading:
     """Return a reading, refused with both sizes where its bare number is a size on both bases."""
-    if reading.gap is not Gap.GIVEN or reading.basis or not _NUMBER.fullmatch(text):
+    bare = without_note(text.strip())
+    if reading.gap is not Gap.GIVEN or reading.basis or not _NUMBER.fullmatch(bare):
         return reading
-    number = float(text.replace(",", "."))
+    number = float(bare.replace(",", "."))
     if number not in nominal_sizes() or number not in size_of_dn():
         return reading
     other = "DN" if basis == "NPS" else "NPS"

@@ -16,7 +16,7 @@ from checker.intake.size_doubts import coded_readings, no_such_size, size_doubt
 from checker.intake.texts import shown, tidy
 from checker.model import Gap
 
-__all__ = ["CODED", "MIXED", "SizeReading", "column_basis", "read_size"]
+__all__ = ["CODED", "MIXED", "SizeReading", "column_basis", "read_size", "without_note"]
 
 NAN = float("nan")
 LONGEST_SIZE = 40
@@ -27,6 +27,9 @@ LEAST_PLAIN_DN, LEAST_ROUND_DN = 15, 50
 _ASK_BASIS = "write 6\" or DN 150, head the column 'Size (NPS)' or 'Size (DN)', or set [units] size in the criteria."
 _CODE = re.compile(r"0\d{2,4}|\d{4}", re.ASCII)
 _SHORT_CODE = re.compile(r"\d{2,4}", re.ASCII)
+_FOOTNOTE = re.compile(
+    r"\s*(?:[(\[]\s?(?:see )?notes?\.? ?\d{1,2}(?: ?[,&] ?\d{1,2}){0,4}\s?[)\]]|[*\u2020\u2021\u00a7]{1,4})$", re.IGNORECASE
+)
 _PAIR = re.compile(r"(?P<first>[^()\[\]]+?)\s*[(\[]\s*(?P<second>[^()\[\]]+?)\s*[)\]]")
 _STROKE = re.compile(
     r"(?P<first>.*[^\s\d/].*?)\s*[/|=]\s*(?P<second>.*)|(?P<bare>\d{1,4})\s*[/|=]\s*(?P<marked>.*\D.*)", re.ASCII
@@ -178,6 +181,7 @@ def _read(text: str, basis: str, comma: bool) -> SizeReading:
     gap = placeholder(plain, "size")
     if gap is not Gap.GIVEN:
         return SizeReading(NAN, gap, "", "")
+    plain = without_note(plain)
     code = _code(plain, text, basis)
     if code is not None:
         return code
@@ -203,6 +207,11 @@ def read_size(text: str, basis: str, comma: bool) -> SizeReading:
     if len(text) > LONGEST_SIZE and len(text.strip()) > LONGEST_SIZE:
         return _refused(text, 'is no size: write 6" or DN 150.')
     return _read(text.strip(), basis, comma)
+
+
+def without_note(text: str) -> str:
+    """Return a size as written without its footnote mark at the end (``6*``, ``6 (Note 2)``)."""
+    return _FOOTNOTE.sub("", text) if len(text) <= LONGEST_SIZE else text
 
 
 def _is_on(cell: str, basis: str, comma: bool) -> bool:

@@ -17,7 +17,7 @@ AGREE = [
 ]  # fmt: skip
 DIFFER = [
     ("temperature", "50 °C (132 °F)"), ("temperature", "50.0 °C (122.9 °F)"), ("temperature", "50 (-122 °F)"),
-    ("pressure", "5 barg/80 psig"), ("temperature", "50°C/140°F"), ("flow", "5 kg/h / 12 lb/h"),
+    ("pressure", "5 barg/80 psig"), ("temperature", "50°C/140°F"), ("flow", "5 kg/h / 13 lb/h"),
     ("pressure", "10 barg (10 bara)"), ("pressure", "10 barg (1450 psig)"), ("flow", "10 kg/h (10 lb/h)"),
 ]  # fmt: skip
 
