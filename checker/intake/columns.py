@@ -20,7 +20,7 @@ from checker.intake.column_conflicts import (
 from checker.intake.column_fields import CELLS_LOOKED_AT, UNSETTLED, Draft, one_field
 from checker.intake.column_hints import absent_headers, hinted_column, same_unit
 from checker.intake.fraction_basis import with_fraction_basis
-from checker.intake.headers import read_header, says_reid
+from checker.intake.headers import read_header, says_reid, unit_of_name
 from checker.intake.layout import Layout
 from checker.intake.matching import header_matches, near_header
 from checker.intake.planned import PlannedColumn
@@ -91,7 +91,8 @@ def _two_units(column: PlannedColumn, row_unit: str) -> str:
 def _with_unit(column: PlannedColumn, row_unit: str, units: Mapping[str, str]) -> PlannedColumn:
     """Return a number column with its unit read: of the hint or header, else the units row, else the criteria."""
     dimension = column.field.dimension
-    written = column.unit or row_unit or units.get(dimension, "")
+    implied = unit_of_name(column.header) if column.unit and column.unit in _NO_UNIT else ""
+    written = implied or column.unit or row_unit or units.get(dimension, "")
     if not written and dimension in UNITLESS:
         return replace(column, reading=read_unit("-", dimension))
     if not written:

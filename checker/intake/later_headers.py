@@ -152,7 +152,10 @@ class LaterHeaders:
         enough = min(2, max(1, len(self._number_columns)))
         some: IntArray = np.flatnonzero(worded).astype(np.int32)
         mine = {index for index in some.tolist() if worded[index] >= enough or not _DIGIT.search(numbers[index])}
-        mine.update(index for index, number in enumerate(numbers) if number.casefold() in self._names)
+        lengths = {len(name) for name in self._names}
+        mine.update(
+            index for index, number in enumerate(numbers) if len(number) in lengths and number.casefold() in self._names
+        )
         group = self._folded[0] if self._folded else ()
         if self._line_column >= len(group) or not group[self._line_column]:
             mine.update(self._same_rows(numbers, columns))

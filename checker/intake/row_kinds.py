@@ -13,6 +13,7 @@ from checker.model import Gap
 
 __all__ = [
     "HOLDS_NOTHING",
+    "LONGEST_NO_NUMBER",
     "RepeatedRows",
     "deleted_word",
     "doubts_line",
@@ -57,6 +58,7 @@ _NO_NUMBERS = {
         "an error of the spreadsheet program",
     ),
 }
+LONGEST_NO_NUMBER = max(map(len, _NO_NUMBERS))
 _ANY = re.compile("|".join(f"(?:{part.pattern})" for part in (_TOTAL, _NOTE, HOLDS_NOTHING)), re.IGNORECASE)
 _DELETED_STEMS = (
     "DELETED",

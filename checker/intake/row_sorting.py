@@ -11,6 +11,7 @@ from checker.intake.later_headers import LaterHeaders
 from checker.intake.plain_numbers import PARTING
 from checker.intake.row_kinds import (
     HOLDS_NOTHING,
+    LONGEST_NO_NUMBER,
     RepeatedRows,
     deleted_word,
     doubts_line,
@@ -134,7 +135,8 @@ class Sorting:
 
     def without_number(self) -> None:
         """Refuse the values of rows whose line number can be none: an error value, a yes or no, zero."""
-        reasons = {number: reason for number in set(self.numbers) if (reason := no_line_number(number))}
+        short = {number for number in self.numbers if len(number) <= LONGEST_NO_NUMBER}
+        reasons = {number: reason for number in short if (reason := no_line_number(number))}
         if not reasons:
             return
         for index, number in enumerate(self.numbers):

@@ -28,7 +28,8 @@ _ASK_BASIS = "write 6\" or DN 150, head the column 'Size (NPS)' or 'Size (DN)', 
 _CODE = re.compile(r"0\d{2,4}|\d{4}", re.ASCII)
 _SHORT_CODE = re.compile(r"\d{2,4}", re.ASCII)
 _FOOTNOTE = re.compile(
-    r"\s*(?:[(\[]\s?(?:see )?notes?\.? ?\d{1,2}(?: ?[,&] ?\d{1,2}){0,4}\s?[)\]]|[*\u2020\u2021\u00a7]{1,4})$", re.IGNORECASE
+    r"\s*(?:[(\[]\s?(?:see )?notes?\.? ?\d{1,2}(?: ?[,&] ?\d{1,2}){0,4}\s?[)\]]|[*\u2020\u2021\u00a7]{1,4})$",
+    re.IGNORECASE,
 )
 _PAIR = re.compile(r"(?P<first>[^()\[\]]+?)\s*[(\[]\s*(?P<second>[^()\[\]]+?)\s*[)\]]")
 _STROKE = re.compile(

@@ -3,8 +3,10 @@
 from __future__ import annotations
 
 import math
+from pathlib import Path
 
 import pytest
+from lists import one_column, read
 from number_columns import ATMOSPHERE, assert_refused, assert_values, context, reading
 
 from checker.intake.number_cells import record_of
@@ -171,6 +173,9 @@ DESIGN = [
     ("design pressure", "10/-0.5", 1.1e6, 0.5e5), ("design pressure", "-1 to 10", 1.1e6, 0.0),
     ("design temperature", "-29/60", 333.15, 244.15), ("design temperature", "-29 to 60", 333.15, 244.15),
     ("design temperature", "60/-29", 333.15, 244.15), ("design temperature", "AMB", 313.15, 263.15),
+    ("design pressure", "3.5 (FV)", 4.5e5, 0.0), ("design pressure", "10/FV*", 1.1e6, 0.0), ("design pressure", "0/10", 1.1e6, 1e5),
+    ("design pressure", "10/FV (Note 1)", 1.1e6, 0.0), ("design temperature", "AMB*", 313.15, 263.15),
+    ("design temperature", "20 to 80", 353.15, 293.15),
 ]  # fmt: skip
 
 
@@ -204,3 +209,87 @@ def test_plain_number_has_a_record() -> None:
     bare = record_of("4.5", context("pressure", unit=None))
     assert (bare.numbers, bare.values, bare.remark) == ((4.5,), (), "no unit")
     assert record_of("5 barg", context("pressure", unit=read_unit("bara", "pressure"))).unit == "barg"
+
+
+@pytest.mark.parametrize(
+    ("column", "cell"),
+    [
+        ("design pressure", "5-10"),
+        ("design pressure", "5 to 10"),
+        ("design pressure", "10/5"),
+        ("design temperature", "30 to 80"),
+        ("design temperature", "50\u00b15"),
+    ],
+)
+def test_two_ordinary_design_values_are_a_question(column: str, cell: str) -> None:
+    found = reading(column, cell)
+    assert_refused(found, cell, "states two values for the design", "with a lowest of", "in one case and")
+    assert math.isnan(found.lowest)
+    assert len(record_of(cell, context(column)).values) == 2
+
+
+@pytest.mark.parametrize("cell", ["AMB/60", "60/AMB", "Amb. to 60"])
+def test_ambient_beside_a_number_says_what_to_write(cell: str) -> None:
+    assert_refused(reading("design temperature", cell), cell, "'-10/60' may be meant")
+    assert_refused(reading("design temperature", cell, ambient=None), cell, "write both as numbers")
+
+
+@pytest.mark.parametrize(
+    ("cell", "words"),
+    [
+        ("40/50/60", "three values"),
+        ("10/11/12", "date"),
+        ("-0.5-2", "-0.5 to 2 or as -2 to -0.5"),
+        ("1e-400", "too small"),
+        ("10^-330", "too small"),
+        ("10/FV (1)", "cannot be read"),
+    ],
+)
+def test_sentences_of_odd_numbers(cell: str, words: str) -> None:
+    assert_refused(reading("design pressure", cell), cell, words)
+
+
+@pytest.mark.parametrize(
+    ("header", "cell"),
+    [
+        ("Allow. dP [bar]", "9999"),
+        ("Pressure drop [bar]", "9999"),
+        ("Pressure gradient [bar/100m]", "9999.9"),
+        ("Velocity [m/s]", "9999"),
+        ("Velocity limit [m/s]", "99999"),
+        ("Static head [mm]", "9999"),
+        ("NPSH required [mm]", "9999"),
+    ],
+)
+def test_nines_are_a_stand_in_in_differences_velocities_and_heads(tmp_path: Path, header: str, cell: str) -> None:
+    listed = read(tmp_path, one_column(header, cell, f"{cell} ", "1"))
+    sentences = list(listed.refusals.values())
+    assert len(sentences) == 2
+    assert all("stand-in" in sentence for sentence in sentences)
+
+
+def test_nines_are_a_flow_and_a_length(tmp_path: Path) -> None:
+    for header in ("Flow [kg/h]", "Length [m]"):
+        assert not read(tmp_path, one_column(header, "9999")).refusals
+
+
+@pytest.mark.parametrize("header", ["SG", "SG [-]", "SG (-)", "Specific Gravity [-]"])
+def test_a_dash_for_the_unit_of_a_specific_gravity(tmp_path: Path, header: str) -> None:
+    listed = read(tmp_path, f"Line No,Phase,{header},P [barg]\nP-1,L,0.85,5\n")
+    assert listed.number("density")[0] == pytest.approx(849.1636)
+    assert "density" in str(read(tmp_path, "Line No,Phase,Density [-],P [barg]\nP-1,L,0.85,5\n").refusals)
+
+
+@pytest.mark.parametrize(
+    ("unit", "dimension", "scale", "reference"),
+    [
+        ("mmwg", "pressure", 9.80665, "gauge"),
+        ("mmwc", "pressure difference", 9.80665, ""),
+        ("mmh2o", "pressure difference", 9.80665, ""),
+        ("mmh2og", "pressure", 9.80665, "gauge"),
+        ("mmwg/m", "pressure gradient", 9.80665, ""),
+    ],
+)
+def test_water_columns_in_small_letters(unit: str, dimension: str, scale: float, reference: str) -> None:
+    found = read_unit(unit, dimension)
+    assert (found.scale, found.reference) == (pytest.approx(scale), reference)

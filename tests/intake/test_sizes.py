@@ -33,6 +33,7 @@ READ = [
     )),
     *((text, 3.0) for text in ("DN 80", "DN80", "DN-80", "ND 80", "Ø80", "80NB", "NB 80", "80A", "Ду80", "DN=80", "80 mm", '80 (3")')),
     *((text, 1.5) for text in ('40 (1.5")', '1.5" (40)', 'DN 40 (1 1/2")', '40 (1½")', '1-1/2" (DN 40)', "40 (1.5)")),
+    *((text, 6.0) for text in ('6"*', '6" (Note 2)', "DN 150 *", "DN150 [see notes 1, 2]", '6"\u2020', "150 mm**")),
     ("24 in", 24.0), ('48"', 48.0), ("DN 1200", 48.0), ("14″", 14.0),
 ]  # fmt: skip
 REFUSED = [
@@ -179,3 +180,11 @@ def test_any_text_is_a_size_a_gap_or_a_refusal(text: str, basis: str, comma: boo
     written = written_size(text)
     assert written is None or written.number >= 0.0
     assert np.isnan(read_nominal_size(text)) or read_nominal_size(text) in nominal_sizes()
+
+
+def test_a_footnote_mark_is_no_part_of_a_bare_size(tmp_path: Path) -> None:
+    listed = read(tmp_path, one_column("Size (NPS)", "6*", "6 (Note 2)", "8", "*", "6*4"))
+    assert listed.number("size")[:3].tolist() == [6.0, 6.0, 8.0]
+    assert listed.gap("size")[3:].tolist() == [Gap.REFUSED] * 2
+    mixed = read(tmp_path, one_column("Size (NPS)", "20*", "150 (Note 1)", "6"))
+    assert "could be NPS 20 or DN 20" in mixed.refusals["size", 0]
