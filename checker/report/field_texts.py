@@ -137,5 +137,7 @@ def words_in(field: Field) -> str:
     if field.dimension == "temperature":
         said.append("AMB: the ambient range of the site, where the criteria state it.")
     if field.kind == "number":
-        said.append("45 to 60: both ends are judged. <5, max 50, ~50: listed, not used.")
+        asked = field.name in ("pressure_design", "temperature_design")
+        said.append("45 to 60: asked, which is it?" if asked else "45 to 60: both ends are judged.")
+        said.append("<5, max 50, ~50: listed, not used.")
     return " ".join(text for text in said if text)

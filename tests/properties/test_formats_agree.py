@@ -17,6 +17,8 @@ from checker.review_record import Review
 
 TODAY = date(2026, 1, 1)
 NUMBER = re.compile(r"-?\d+(\.\d+)?([eE][-+]?\d+)?")
+UNITLESS = ("Z", "Cp/Cv", "Vap. Fraction (mass)")
+POINT = re.compile(r"(?<=\d)\.(?=\d)")
 
 
 def _rows() -> list[list[str]]:
@@ -24,11 +26,17 @@ def _rows() -> list[list[str]]:
         return list(csv.reader(handle))
 
 
+def _number_columns(header: list[str]) -> set[int]:
+    return {index for index, title in enumerate(header) if "[" in title or title in UNITLESS}
+
+
 def _decimal_commas(path: Path) -> None:
-    """Write the example with semicolons and decimal commas."""
-    rows = [[cell.replace(".", ",") if NUMBER.fullmatch(cell) else cell for cell in row] for row in _rows()]
+    """Write the example with semicolons and decimal commas, those of ranges among them."""
+    header, *rows = _rows()
+    numbers = _number_columns(header)
+    commas = [[POINT.sub(",", cell) if index in numbers else cell for index, cell in enumerate(row)] for row in rows]
     with path.open("w", encoding="utf-8", newline="") as handle:
-        csv.writer(handle, delimiter=";").writerows(rows)
+        csv.writer(handle, delimiter=";").writerows([header, *commas])
 
 
 def _workbook(path: Path) -> None:
@@ -40,13 +48,13 @@ def _workbook(path: Path) -> None:
     book.active.append(["Marrowquay terminal", "line list"])
     sheet = book.create_sheet("Line list")
     header, *rows = _rows()
-    text_columns = {index for index, title in enumerate(header) if not ("[" in title or title in ("Z", "Cp/Cv"))}
+    numbers = _number_columns(header)
     sheet.append(["Marrowquay terminal"])
     sheet.append(header)
     for row in rows:
         sheet.append(
             [
-                float(cell) if index not in text_columns and NUMBER.fullmatch(cell) else cell or None
+                float(cell) if index in numbers and NUMBER.fullmatch(cell) else cell or None
                 for index, cell in enumerate(row)
             ]
         )
