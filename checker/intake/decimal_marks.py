@@ -141,7 +141,15 @@ def decide(column: Evidence, file: Evidence, *, comma: bool, delimiter: str) -> 
         return Marks(DECIMAL, THOUSANDS, _note("point", THOUSANDS, column, file))
     if of_comma == DECIMAL:
         return Marks(DECIMAL, of_point, "" if comma else _note("comma", DECIMAL, column, file))
+    if of_point == DECIMAL and delimiter and not comma and _points_alone(column, file):
+        return Marks(THOUSANDS, DECIMAL, _note("point", DECIMAL, column, file))
     return Marks("", of_point or ("" if comma or delimiter else DECIMAL))
+
+
+def _points_alone(column: Evidence, file: Evidence) -> bool:
+    """Return whether the list shows points as decimals and nowhere a comma that could be one, so that commas part."""
+    shows = any(("point", DECIMAL) in evidence.cells for evidence in (column, file))
+    return shows and not any(("comma", DECIMAL) in evidence.cells for evidence in (column, file))
 
 
 def _both_decimal(evidence: Evidence) -> bool:

@@ -6,6 +6,7 @@ import re
 from collections.abc import Mapping, Sequence
 from itertools import pairwise
 
+from checker.intake.case_names import split_case
 from checker.intake.headers import HeaderReading, read_header
 from checker.intake.texts import fold_words, key_of
 from checker.intake.unit_words import is_unit_text, size_basis, unit_or_refusal
@@ -82,13 +83,18 @@ def is_units_row(
     cells = [
         (index, bare(cell)) for index, cell in enumerate(row[: len(headers)]) if index != line_column and cell.strip()
     ]
-    known = sum(is_unit_text(cell) for _, cell in cells)
+    known = sum(is_unit_text(cell) and not _is_case(cell) for _, cell in cells)
     fits = [fit for index, cell in cells if (fit := _fits_header(headers[index], cell)) is not None]
     if not known or 2 * known < len(cells) or 2 * sum(fits) < len(fits):
         return False
     known_hints = hints or {}
     joined = () if any(fits) else join_rows(headers, row, known_hints)
     return count_understood(joined, known_hints) <= count_understood(headers, known_hints)
+
+
+def _is_case(cell: str) -> bool:
+    """Return whether a text names a case: ``Min`` beneath a group is no minute."""
+    return any(rest == "x" for _, rest in split_case(f"{fold_words(cell)} x"))
 
 
 def _fits_header(header: str, unit: str) -> bool | None:

@@ -14,7 +14,7 @@ from checker.intake.header_rows import bare, is_numbering, is_units_row
 from checker.intake.headers import read_header
 from checker.intake.layout import Layout
 from checker.intake.placeholders import AMBIENT, ATMOSPHERE, FULL_VACUUM, NO_FLOW, ditto, placeholder, word_of
-from checker.intake.texts import key_of, shown, tidy
+from checker.intake.texts import key_of, shown, spared, tidy
 from checker.intake.unit_words import is_unit_text
 from checker.model import Gap, IntArray
 
@@ -39,8 +39,8 @@ class Difference:
 
 
 def folded_row(row: Iterable[str], width: int) -> tuple[str, ...]:
-    """Return the cells of a row as two rows are compared: runs of blanks as one, no capitals, no blank cells behind."""
-    cells = [" ".join(cell.split()).casefold() for cell in islice(row, width)]
+    """Return the cells of a row as two rows are compared: no blanks, stops or capitals, no blank cells behind."""
+    cells = [spared(cell) for cell in islice(row, width)]
     while cells and not cells[-1]:
         cells.pop()
     return tuple(cells)
@@ -72,10 +72,10 @@ class LaterHeaders:
         self._first = first + 1
         self._folded = [folded_row(row, self._width) for row in self._rows]
         self._above = {folded_row(row, self._width) for row in head[:first]}
-        self._named = " ".join(layout.headers[line_column].split()).casefold()
+        self._named = spared(layout.headers[line_column])
         raw = head[layout.header_row - 1] if layout.header_row <= len(head) else ()
         written = raw[line_column] if line_column < len(raw) else ""
-        self._names = {self._named, " ".join(written.split()).casefold()} - {""}
+        self._names = {self._named, spared(written)} - {""}
 
     def differences(
         self, numbers: Sequence[str], columns: Sequence[CodedCells | NumberCells], row_numbers: Sequence[int]
@@ -152,9 +152,9 @@ class LaterHeaders:
         enough = min(2, max(1, len(self._number_columns)))
         some: IntArray = np.flatnonzero(worded).astype(np.int32)
         mine = {index for index in some.tolist() if worded[index] >= enough or not _DIGIT.search(numbers[index])}
-        lengths = {len(name) for name in self._names}
+        longest = 2 * max(map(len, self._names), default=0)
         mine.update(
-            index for index, number in enumerate(numbers) if len(number) in lengths and number.casefold() in self._names
+            index for index, number in enumerate(numbers) if len(number) <= longest and spared(number) in self._names
         )
         group = self._folded[0] if self._folded else ()
         if self._line_column >= len(group) or not group[self._line_column]:
@@ -169,7 +169,7 @@ class LaterHeaders:
 
     def _why(self, row: Sequence[str], row_number: int, *, after: bool) -> str:
         """Return why a row begins another table, empty where it does not; `after` tells that a header row is above."""
-        number = " ".join(row[self._line_column].split()).casefold()
+        number = spared(row[self._line_column])
         others = [cell for index, cell in enumerate(row) if index != self._line_column and not _NOTHING.match(cell)]
         if not others:
             return ""
@@ -203,7 +203,7 @@ class LaterHeaders:
         """Return the first column in which two rows differ, in brackets."""
         for position in range(self._width):
             here, there = (cells[position].strip() if position < len(cells) else "" for cells in (row, known))
-            if " ".join(here.split()).casefold() != " ".join(there.split()).casefold():
+            if spared(here) != spared(there):
                 return f" (column {position + 1}: {shown(here)} against {shown(there)})"
         return ""
 

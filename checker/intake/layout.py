@@ -9,6 +9,7 @@ from dataclasses import dataclass, field
 from checker.errors import InputError, Problem
 from checker.intake.header_beneath import cases_beneath, with_units_beneath_groups, words_beneath
 from checker.intake.header_groups import names_group, with_groups
+from checker.intake.header_reach import within_reach
 from checker.intake.header_rows import (
     bare,
     count_numbers,
@@ -262,7 +263,8 @@ def _join_beneath(
     better = count_understood(joined, hints) > count_understood(found.headers, hints)
     words = names_quantities(row, found.headers, hints) or words_beneath(row, joined, hints)
     if not found.units and (better or words):
-        found.headers, found.follows = joined, number + 1
+        found.headers, doubts = within_reach(found.headers, row, joined, hints)
+        found.follows, found.doubts = number + 1, found.doubts | doubts
         found.joined.append(number)
         return True
     deeper = None if found.units else _deeper(rows, number, found.headers, hints)

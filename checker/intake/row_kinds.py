@@ -8,7 +8,7 @@ from itertools import islice
 
 from checker.intake.layout import Layout
 from checker.intake.placeholders import ditto, placeholder
-from checker.intake.texts import shown, tidy
+from checker.intake.texts import shown, spared, tidy
 from checker.model import Gap
 
 __all__ = [
@@ -98,20 +98,20 @@ class RepeatedRows:
             what = "it repeats the header." if index >= layout.header_row - 1 else "it repeats a row above the header."
             if folded:
                 self._kinds.setdefault(folded, what)
-        named = layout.headers[line_column].casefold()
+        named = spared(layout.headers[line_column])
         self._kinds.setdefault((*("",) * line_column, named), "it repeats the header.")
         self.numbers = {row[line_column] for row in self._kinds if line_column < len(row)} | {named}
         self._named = named
 
     def _folded(self, row: Iterable[str]) -> tuple[str, ...]:
-        cells = [" ".join(cell.split()).casefold() for cell in islice(row, self._width)]
+        cells = [spared(cell) for cell in islice(row, self._width)]
         while cells and not cells[-1]:
             cells.pop()
         return tuple(cells)
 
     def why(self, number: str, row: Sequence[str]) -> str:
         """Return why a row is a repeat, empty where it is none."""
-        folded = number.casefold()
+        folded = spared(number)
         if folded == self._named:
             return "it repeats the header."
         return self._kinds.get(self._folded(row), "") if not folded or folded in self.numbers else ""
@@ -129,14 +129,18 @@ def _doubtful_start(prefix: str) -> bool:
 def may_be_no_line(numbers: Sequence[str], repeated: RepeatedRows) -> list[int]:
     """Return the indices of rows whose line number looks like none."""
     prefixes = {number[:PREFIX] for number in numbers}
-    named = {number[:PREFIX] for number in repeated.numbers}
-    doubtful = {prefix for prefix in prefixes if _doubtful_start(prefix) or prefix.casefold() in named}
+    named = tuple(repeated.numbers)
+    doubtful = {
+        prefix
+        for prefix in prefixes
+        if _doubtful_start(prefix) or any(name.startswith(spared(prefix)) for name in named)
+    }
     suspects = [index for index, number in enumerate(numbers) if number[:PREFIX] in doubtful]
     return [index for index in suspects if _doubtful(numbers[index], repeated)]
 
 
 def _doubtful(number: str, repeated: RepeatedRows) -> bool:
-    if _ANY.match(number) or number.casefold() in repeated.numbers:
+    if _ANY.match(number) or spared(number) in repeated.numbers:
         return True
     return _DELETED.fullmatch(number) is not None or ditto(tidy(number))
 

@@ -5,9 +5,10 @@ from __future__ import annotations
 import re
 import unicodedata
 
-__all__ = ["fold_words", "key_of", "place", "shown", "tidy"]
+__all__ = ["fold_words", "key_of", "place", "shown", "spared", "tidy"]
 
 LONGEST_SHOWN = 60
+_SPARED = re.compile(r"[\s.:_]+")
 _SIGNS = str.maketrans(
     {
         "\u0394": " delta ", "\u2206": " delta ", "\u03c1": " rho ", "\u00b5": " mu ", "\u03bc": " mu ",
@@ -65,6 +66,11 @@ def fold_words(text: str) -> str:
     folded = unicodedata.normalize("NFKC", folded)
     plain = "".join(c for c in unicodedata.normalize("NFKD", folded.casefold()) if not unicodedata.combining(c))
     return " ".join(re.sub(r"[\W_]+", " ", plain).split())
+
+
+def spared(text: str) -> str:
+    """Return a header as repeats of it are told: without blanks, stops, colons and capitals, its other signs kept."""
+    return _SPARED.sub("", text).casefold()
 
 
 def key_of(text: str) -> str:

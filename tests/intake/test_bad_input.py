@@ -253,10 +253,10 @@ def test_ragged_rows(tmp_path: Path) -> None:
         "the row has 9 cells where the header has 7 columns (cell 8 and on: 'extra')" in listed.refusals["density", 2]
     )
     assert listed.refusals["density", 2].startswith("list.csv, row 4, column 'Density [kg/m3]': ")
-    assert "reads as 50.000 or as 50000" in listed.refusals["flow_mass", 4]
+    assert listed.number("flow_mass")[4] == pytest.approx(50_000.0 / 3600.0)
     assert any(note.startswith("Rows shorter than the header, the rest taken as blank: 3, 9") for note in listed.notes)
     unread = {item.address.row: item.reason for item in listed.unread}
-    assert sorted(unread) == [4, 10, 11, 12, 13, 14, 15, 16]
+    assert sorted(unread) == [4, 10, 12, 13, 14, 15, 16]
     assert "is not checked: 6 values left unread; " in unread[13]
     for row, words in (
         (10, "note"),

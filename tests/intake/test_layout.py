@@ -152,3 +152,50 @@ def test_service_and_fluid_code_side_by_side(tmp_path: Path) -> None:
     listed = read(tmp_path, "Line No,Fluid code,Service,Size (NPS),Flow (kg/h)\nP-1,CW,Cooling water,6,500\n")
     assert listed.text("service").text(0) == "Cooling water"
     assert ["names the service too" in item.reason for item in listed.unread] == [True]
+
+
+# What an unmerged group reaches over is seen only where its headers repeat those of the group before it.
+REACH = [
+    (
+        ["Line No", "NPS", "Normal", "", "Minimum", "", "", ""],
+        [
+            "",
+            "",
+            "Flow (kg/h)",
+            "Op Press (barg)",
+            "Flow (kg/h)",
+            "Op Press (barg)",
+            "Design Press (barg)",
+            "Density (kg/m3)",
+        ],
+        {6, 7},
+    ),
+    (
+        ["Line No", "NPS", "Normal", "Max", "", ""],
+        ["", "", "Flow (kg/h)", "Flow (kg/h)", "Op Press (barg)", "From"],
+        {4},
+    ),
+    (
+        ["Line No", "NPS", "Operating", "", "Design", "", "", ""],
+        ["", "", "P (barg)", "T (C)", "P (barg)", "T (C)", "Flow (kg/h)", "Length (m)"],
+        {6},
+    ),
+]
+
+
+@pytest.mark.parametrize(("upper", "lower", "asked"), REACH)
+def test_a_group_does_not_reach_beyond_what_repeats(upper: list[str], lower: list[str], asked: set[int]) -> None:
+    layout = find_layout([upper, lower, ["P-1", "6", "1", "2", "3", "4", "5", "6"]], file="list.csv", hints={})
+    assert set(layout.doubts) == asked
+    assert list(layout.headers[6:]) == lower[6:]
+
+
+def test_min_beneath_a_group_is_no_minute() -> None:
+    rows = [
+        ["Line No", "NPS", "Operating", "", "", ""],
+        ["", "", "Normal", "", "Min", ""],
+        ["", "", "Press (barg)", "Temp (C)", "Press (barg)", "Temp (C)"],
+    ]
+    layout = find_layout([*rows, ["P-1", "6", "5", "25", "4", "20"]], file="list.csv", hints={})
+    assert layout.first_row == 4
+    assert "Min" in layout.headers[4]

@@ -256,3 +256,11 @@ def test_every_row_beneath_the_header_is_accounted_for(tmp_path: Path, rows: lis
     assert blank == sum(not row.strip(" ,") for row in rows)
     seen = {*listed.row.tolist(), *(item.address.row for item in (*listed.deleted, *listed.unread))}
     assert seen == {index for index, row in enumerate(["x", *rows], start=2) if row.strip(" ,")}
+
+
+def test_a_page_repeat_may_differ_in_stops_and_blanks(tmp_path: Path) -> None:
+    text = (
+        "Line No,NPS,Flow (kg/h),Op Press (barg)\nP-1,6,50,5\nLINE NO.,NPS,Flow  (kg/h),Op Press (barg)\nP-2,2,60,6\n"
+    )
+    listed = read(tmp_path, text)
+    assert listed.number("flow_mass").tolist() == pytest.approx([50.0 / 3600.0, 60.0 / 3600.0])
