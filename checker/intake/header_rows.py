@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Mapping, Sequence
+from collections.abc import Collection, Mapping, Sequence
 from itertools import pairwise
 
 from checker.intake.case_names import split_case
@@ -206,7 +206,9 @@ def joined_name(group: str, under: str, own: bool, hints: Mapping[str, str]) -> 
     return f"{group} {under}"
 
 
-def join_rows(upper: Sequence[str], lower: Sequence[str], hints: Mapping[str, str]) -> tuple[str, ...]:
+def join_rows(
+    upper: Sequence[str], lower: Sequence[str], hints: Mapping[str, str], *, ends: Collection[int] = ()
+) -> tuple[str, ...]:
     """Return two header rows as one: a group name holds for the blanks to its right.
 
     Parameters
@@ -215,13 +217,15 @@ def join_rows(upper: Sequence[str], lower: Sequence[str], hints: Mapping[str, st
         The two rows; they may differ in width.
     hints : mapping of str to str
         Field of each header key that the criteria explain.
+    ends : collection of int
+        Columns at which a group of the upper row ends, for a larger one above it begins there.
     """
     width = max(len(upper), len(lower))
     upper, lower = [*upper, *[""] * (width - len(upper))], [*lower, *[""] * (width - len(lower))]
     exact = exact_extents(upper)
     group, joined = "", []
-    for over, under in zip(map(str.strip, upper), map(str.strip, lower), strict=True):
-        group = over or (group if under and not exact else "")
+    for index, (over, under) in enumerate(zip(map(str.strip, upper), map(str.strip, lower), strict=True)):
+        group = over or (group if under and not exact and index not in ends else "")
         if not under or under in ("-", "\u2013") or group.casefold() == under.casefold():
             joined.append(over if over else "")
         elif not group:

@@ -243,7 +243,8 @@ def _deeper(
     beneath = rows[number + 1] if number + 1 < len(rows) else ()
     if not any(cell.strip() for cell in beneath) or not _no_number(beneath, headers, line_column):
         return None
-    joined = join_rows(headers, join_rows(rows[number], beneath, hints), hints)
+    ends = {index for index, header in enumerate(headers) if header}
+    joined = join_rows(headers, join_rows(rows[number], beneath, hints, ends=ends), hints)
     return joined if count_understood(joined, hints) > count_understood(headers, hints) + 1 else None
 
 

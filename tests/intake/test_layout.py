@@ -199,3 +199,14 @@ def test_min_beneath_a_group_is_no_minute() -> None:
     layout = find_layout([*rows, ["P-1", "6", "5", "25", "4", "20"]], file="list.csv", hints={})
     assert layout.first_row == 4
     assert "Min" in layout.headers[4]
+
+
+def test_a_case_row_ends_where_the_group_above_it_does(tmp_path: Path) -> None:
+    text = (
+        "Line No,NPS,Operating,,,,Design,\n,,Normal,,Min,,,\n"
+        ",,Press (barg),Temp (C),Press (barg),Temp (C),Press (barg),Temp (C)\nP-1,6,5,25,4,20,10,60\n"
+    )
+    listed = read(tmp_path, text)
+    assert listed.number("pressure_design")[0] == pytest.approx(1_100_000.0)
+    assert listed.number("temperature_design")[0] == pytest.approx(333.15)
+    assert not listed.has("pressure_design_minimum")
