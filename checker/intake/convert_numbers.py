@@ -19,7 +19,7 @@ from checker.intake.unit_words import unit_or_refusal
 from checker.model import BoolArray, FloatArray, Gap, IntArray
 from checker.units import from_si, to_si
 
-__all__ = ["column_evidence", "convert_numbers"]
+__all__ = ["column_evidence", "convert_numbers", "holds_commas"]
 
 NAN = float("nan")
 _WITNESSES = 200
@@ -38,6 +38,12 @@ def column_evidence(cells: CodedCells | NumberCells) -> Evidence:
         mine = np.flatnonzero(cells.marks == mark)[:_WITNESSES] if present[mark] else ()
         witnesses.update(dict.fromkeys(cells[int(index)] for index in mine))
     return evidence_of((*witnesses, *cells.texts))
+
+
+def holds_commas(cells: CodedCells | NumberCells) -> bool:
+    """Return whether any cell of a column holds a comma, so that what it means is worth a note."""
+    written = isinstance(cells, NumberCells) and bool(np.isin(cells.marks, (Mark.COMMA, Mark.COMMA_OR_THOUSANDS)).any())
+    return written or any("," in text for text in cells.texts)
 
 
 def convert_numbers(cells: CodedCells | NumberCells, context: NumberContext) -> ConvertedNumbers:

@@ -248,6 +248,12 @@ def _deeper(
     return joined if count_understood(joined, hints) > count_understood(headers, hints) + 1 else None
 
 
+def _each_beneath_its_own(row: Sequence[str], headers: Sequence[str]) -> bool:
+    """Return whether nearly every text of a row stands beneath a header of its own, as symbols do."""
+    above = [index < len(headers) and bool(headers[index]) for index, cell in enumerate(row) if cell.strip()]
+    return 5 * sum(above) >= 4 * len(above)
+
+
 def _join_beneath(
     found: _Beneath, rows: Sequence[Sequence[str]], number: int, line_column: int, hints: Mapping[str, str]
 ) -> bool:
@@ -263,7 +269,8 @@ def _join_beneath(
     joined = join_rows(found.headers, row, hints)
     better = count_understood(joined, hints) > count_understood(found.headers, hints)
     words = names_quantities(row, found.headers, hints) or words_beneath(row, joined, hints)
-    if not found.units and (better or words):
+    symbols = not better and is_symbols_row(row, line_column) and _each_beneath_its_own(row, found.headers)
+    if not found.units and (better or words) and not symbols:
         found.headers, doubts = within_reach(found.headers, row, joined, hints)
         found.follows, found.doubts = number + 1, found.doubts | doubts
         found.joined.append(number)

@@ -16,7 +16,7 @@ from checker.intake.cells import CodedCells
 from checker.intake.column_hints import hint_fields
 from checker.intake.columns import Plan, number_columns, plan_columns
 from checker.intake.convert import convert_line_numbers, convert_sizes, convert_texts
-from checker.intake.convert_numbers import column_evidence, convert_numbers
+from checker.intake.convert_numbers import column_evidence, convert_numbers, holds_commas
 from checker.intake.converted import Converted, ConvertedNumbers
 from checker.intake.decimal_marks import decide, together
 from checker.intake.headers import read_header
@@ -156,8 +156,12 @@ def _contexts(plan: Plan, lines: Lines, form: Form, site: Site) -> dict[int, Num
     numbers = [column for column in plan.columns if column.field.kind == "number"]
     evidence = {column.index: column_evidence(lines.columns[column.index]) for column in numbers}
     of_list = together(evidence.values())
-    return {
-        column.index: NumberContext(
+    contexts = {}
+    for column in numbers:
+        marks = decide(evidence[column.index], of_list, comma=form.comma, delimiter=form.delimiter)
+        if marks.note and not form.comma and not holds_commas(lines.columns[column.index]):
+            marks = marks._replace(note="")
+        contexts[column.index] = NumberContext(
             column.field,
             column.reading,
             column.refusal,
@@ -165,10 +169,9 @@ def _contexts(plan: Plan, lines: Lines, form: Form, site: Site) -> dict[int, Num
             form.delimiter,
             form.comma,
             site.ambient,
-            decide(evidence[column.index], of_list, comma=form.comma, delimiter=form.delimiter),
+            marks,
         )
-        for column in numbers
-    }
+    return contexts
 
 
 def _converted(column: PlannedColumn, lines: Lines, form: Form, context: NumberContext | None) -> Converted:

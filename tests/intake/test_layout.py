@@ -210,3 +210,14 @@ def test_a_case_row_ends_where_the_group_above_it_does(tmp_path: Path) -> None:
     assert listed.number("pressure_design")[0] == pytest.approx(1_100_000.0)
     assert listed.number("temperature_design")[0] == pytest.approx(333.15)
     assert not listed.has("pressure_design_minimum")
+
+
+def test_symbols_beneath_headers_of_their_own_are_left_out() -> None:
+    rows = [
+        ["Line number", "Density", "Pressure", "Outside diameter", "Wall thickness", "Length", ""],
+        ["", "", "P1", "Dext", "T", "L", "Tclose"],
+        ["", "kg/m3", "bara", "mm", "mm", "m", "s"],
+    ]
+    layout = find_layout([*rows, ["P-1", "850", "5", "762", "16", "2400", "7.5"]], file="list.csv", hints={})
+    assert list(layout.headers[:6]) == rows[0][:6]
+    assert layout.first_row == 4
