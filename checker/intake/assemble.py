@@ -13,7 +13,7 @@ from checker.intake.case_names import canonical_case
 from checker.intake.converted import Converted, ConvertedNumbers, ConvertedTexts
 from checker.intake.number_cells import AT_60_DEGF, KINEMATIC, SPECIFIC_GRAVITY
 from checker.intake.planned import FLOWS, PlannedColumn
-from checker.intake.texts import place, shown
+from checker.intake.texts import fold_words, place, shown
 from checker.model import BoolArray, CodeArray, Coded, FloatArray, Gap, IntArray
 
 __all__ = ["Assembly", "assemble"]
@@ -24,6 +24,7 @@ STATE_FIELDS = frozenset(
         "liquid_viscosity", "vapour_density", "vapour_viscosity",
     }
 )  # fmt: skip
+ONE_PHASE = frozenset({"gas", "vapour", "vapor", "vap", "liquid", "liq"})
 DENSITY_OF = {"viscosity": "density", "liquid_viscosity": "liquid_density", "vapour_viscosity": "vapour_density"}
 
 
@@ -156,6 +157,24 @@ def _water_or_air(name: str, rests_on: CodeArray, columns: Sequence[PlannedColum
     _refuse(name, np.flatnonzero(wrong).astype(np.int32), reason, columns, into)
 
 
+def _one_phase_flows(name: str, columns: Sequence[PlannedColumn], into: Assembly) -> None:
+    """Refuse a flow that its header calls the liquid's or the gas's where the line is two-phase: it is a part."""
+    phase = into.texts.get("phase")
+    if phase is None or not any(map(_of_one_phase, columns)):
+        return
+    cases = np.array([_of_one_phase(_column_for(columns, text)) for text in (*into.case.texts, "")], dtype=np.bool_)
+    wrong = phase.where([text == "two-phase" for text in phase.texts]) & cases[into.case.codes]
+    wrong &= into.gaps[name] == Gap.GIVEN
+    reason = "the flow of one phase is not that of a two-phase line: give the whole flow and the vapour mass fraction."
+    _refuse(name, np.flatnonzero(wrong).astype(np.int32), reason, columns, into)
+
+
+def _of_one_phase(column: PlannedColumn | None) -> bool:
+    if column is None or column.hinted:
+        return False
+    return not ONE_PHASE.isdisjoint(fold_words(column.header).split())
+
+
 def _at_60_degf(name: str, rests_on: CodeArray, columns: Sequence[PlannedColumn], into: Assembly) -> None:
     """Refuse a density in degrees API, which holds at 60 degF by definition and not at the flowing temperature."""
     mine = (rests_on == AT_60_DEGF) & (into.gaps[name] == Gap.GIVEN)
@@ -250,6 +269,8 @@ def assemble(
         _at_60_degf(name, rests_on[name], by_field[name], into)
     for name in (name for name in rests_on if name in DENSITY_OF):
         _with_density(name, rests_on[name], by_field[name], into)
+    for name in (name for name in FLOWS if name in by_field):
+        _one_phase_flows(name, by_field[name], into)
     own = _own_flows(by_field, grid.cases, grid.lines)
     into.case_kind = case_kinds(case, line, _flowing(into), into.gaps, own)
     return into

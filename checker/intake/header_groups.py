@@ -6,7 +6,15 @@ import re
 from collections.abc import Collection, Mapping, Sequence
 from dataclasses import dataclass, field
 
-from checker.intake.header_rows import exact_extents, is_neutral, joined_name, understood
+from checker.intake.header_rows import (
+    MECHANICAL,
+    exact_extents,
+    is_mechanical,
+    is_neutral,
+    joined_name,
+    understood,
+    whether_in_group,
+)
 from checker.intake.headers import HeaderReading
 from checker.intake.planned import FLOWS
 from checker.intake.texts import fold_words, key_of, shown
@@ -18,7 +26,6 @@ _TELLING = re.compile(
     r"\b(?:design|des|mechanical|mech|test|hydrotest|jacket\w*|trac(?:ing|ed|er)|insulat\w*|vacuum|normal|max\w*|min\w*|"
     r"case|oper\w*|upset|relief|stand ?by|alternat\w*)\b"
 )
-_MECHANICAL = re.compile(r"(?:(?:mechanical|mech|design|test|hydro ?test|jacket|tracing) ?)+")
 _TITLE = re.compile(
     r"\b(?:project|client|customer|owner|contract\w*|job|doc|document|drawing|rev|revision|date|sheet|page|title|plant|"
     r"location|prepared|checked|approved|issued?|line ?list|list|schedule of|company|vendor|site|facility|terminal)\b"
@@ -104,20 +111,13 @@ def _spread(group: str, under: str, hints: Mapping[str, str], *, exact: bool, en
     alone, joined = understood(under, hints), understood(name, hints)
     if name == under or alone is None or (_is_text(alone) and (exact or joined is None)):
         return (under if joined is None or exact else name), ""
-    mechanical = _MECHANICAL.search(fold_words(group)) is not None
+    mechanical = is_mechanical(group)
     flow = bool(set(_fields(joined)) & set(FLOWS)) and mechanical
     if joined is not None and not flow and not exact:
         return name, ""
     if joined is None and (exact or ends or _WIDE.fullmatch(fold_words(group))):
         return under, ""
-    return under, _asked(group, under)
-
-
-def _asked(group: str, under: str) -> str:
-    return (
-        f"{shown(under)} stands beneath or beside {shown(group)} in the row above: does it belong to it? Write the "
-        "whole name in the header, or name the column in [columns] of the criteria."
-    )
+    return under, whether_in_group(under, group)
 
 
 def _means(name: str, hints: Mapping[str, str]) -> tuple[tuple[str, ...], str] | None:
@@ -149,7 +149,7 @@ def with_groups(
     for index, under in enumerate(headers):
         over = cells[index] if index < len(cells) else ""
         if index in lines:
-            group, single = (over, True) if _MECHANICAL.fullmatch(fold_words(over)) else ("", False)
+            group, single = (over, True) if MECHANICAL.fullmatch(fold_words(over)) else ("", False)
             found.headers.append(under)
             continue
         if not under:
@@ -166,7 +166,7 @@ def with_groups(
             ends = bool(before) and inside[: len(before)] == before
             name, doubt = _spread(group, under, hints, exact=exact, ends=ends)
             if name != under and _means(name, hints) in meant:  # a group has no second pressure: is this one beyond it?
-                name, doubt = under, _asked(group, under)
+                name, doubt = under, whether_in_group(under, group)
         else:
             name, doubt = under, ""
         inside.append(key_of(under))

@@ -4,14 +4,12 @@ from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
 
-from checker.intake.header_rows import exact_extents, understood
+from checker.intake.header_rows import exact_extents, is_mechanical, understood, whether_in_group
 from checker.intake.headers import HeaderReading
 from checker.intake.planned import FLOWS
-from checker.intake.texts import fold_words, key_of, shown
+from checker.intake.texts import key_of
 
 __all__ = ["within_reach"]
-
-_MECHANICAL = frozenset({"design", "mechanical", "mech", "mechanical design", "test", "hydrotest", "design conditions"})
 
 
 def _spans(upper: Sequence[str], lower: Sequence[str]) -> list[tuple[str, list[int]]]:
@@ -68,14 +66,11 @@ def within_reach(
         for place, index in enumerate(columns[1:], start=1):
             alone, together = _meaning(lower[index], hints), _meaning(names[index], hints)
             beyond = 0 < reach <= place
-            flow = together is not None and bool(together[0] & set(FLOWS)) and fold_words(group) in _MECHANICAL
+            flow = together is not None and bool(together[0] & set(FLOWS)) and is_mechanical(group)
             if not (beyond or flow) or alone is None or alone == together:
                 continue
             names[index] = lower[index].strip()
             if together is not None:
-                doubts[index] = (
-                    f"{shown(names[index])} stands beneath or beside {shown(group)} in the row above: does it belong "
-                    "to it? Write the whole name in the header, or name the column in [columns] of the criteria."
-                )
+                doubts[index] = whether_in_group(names[index], group)
         before = columns
     return tuple(names), doubts

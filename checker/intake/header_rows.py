@@ -8,14 +8,16 @@ from itertools import pairwise
 
 from checker.intake.case_names import split_case
 from checker.intake.headers import HeaderReading, read_header
-from checker.intake.texts import fold_words, key_of
+from checker.intake.texts import fold_words, key_of, shown
 from checker.intake.unit_words import is_unit_text, size_basis, unit_or_refusal
 
 __all__ = [
+    "MECHANICAL",
     "bare",
     "count_numbers",
     "count_understood",
     "exact_extents",
+    "is_mechanical",
     "is_neutral",
     "is_numbering",
     "is_symbols_row",
@@ -24,11 +26,13 @@ __all__ = [
     "joined_name",
     "names_quantities",
     "understood",
+    "whether_in_group",
 ]
 
 LONGEST_SYMBOL = 6
 LONGEST_HEADER = 120
 _WITHOUT_NUMBER = ("", "-", "\u2013", "units", "unit", "uom", "[-]")
+MECHANICAL = re.compile(r"(?:(?:mechanical|mech|design|test|hydro ?test|jacket|tracing) ?)+")
 _FILLING = re.compile(r"\b(?:conditions?|data|values?|parameters?|details?|information)\b")
 _NEUTRAL = frozenset(
     {
@@ -180,6 +184,19 @@ def exact_extents(row: Sequence[str]) -> bool:
     """Return whether a row repeats a group name over neighbouring cells, as merged ones are: then no group spreads."""
     cells = [cell.strip() for cell in row]
     return any(one and one == other for one, other in pairwise(cells))
+
+
+def is_mechanical(group: str) -> bool:
+    """Return whether a group names design, test or the like, whose conditions no flow belongs to."""
+    return MECHANICAL.search(fold_words(group)) is not None
+
+
+def whether_in_group(under: str, group: str) -> str:
+    """Return the question whether a header belongs to the group above it or beside it."""
+    return (
+        f"{shown(under)} stands beneath or beside {shown(group)} in the row above: does it belong to it? Write the "
+        "whole name in the header, or name the column in [columns] of the criteria."
+    )
 
 
 def is_neutral(group: str) -> bool:

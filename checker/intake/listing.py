@@ -22,6 +22,7 @@ __all__ = ["decimal_sentence", "hold_register", "notes_on_cells", "notes_on_list
 
 
 def hold_register(plan: Plan, converted: Mapping[int, Converted], lines: Lines, file: str) -> tuple[HoldItem, ...]:
+    """Return the open items of the originator, in the order of the rows and columns."""
     found = []
     rows = lines.row.tolist()
     for column in plan.columns:
@@ -93,6 +94,7 @@ def notes_on_cells(
 
 
 def notes_on_list(layout: Layout, lines: Lines, plan: Plan, assembly: Assembly) -> tuple[str, ...]:
+    """Return the sentences on headers, columns, rows and composite cases."""
     notes = [*layout.notes, *plan.notes, *lines.notes]
     if bool(assembly.composite.any()):
         codes = np.unique(assembly.case.codes[assembly.composite])
