@@ -147,11 +147,22 @@ def _plain(held: Any) -> Any:
     return np.array([*held.texts, ""], dtype=object)[held.codes]
 
 
+def _counts_as_used(judgement: Judgement) -> NDArray[np.bool_]:
+    """Return which outcomes say how much of a limit a line uses: those on its duty, and whatever does not meet.
+
+    A test at just the pressure it must have uses none of the line's capacity.
+    """
+    on_duty = np.array([not rule.on_data for rule in judgement.rules], dtype=np.bool_)
+    counts: NDArray[np.bool_] = on_duty[:, np.newaxis] | np.equal(judgement.outcome, Outcome.DOES_NOT_MEET)
+    return counts
+
+
 def utilisation_points(judgement: Judgement) -> UtilisationPoints:
-    """Return the finite utilisation of every judged outcome."""
+    """Return the finite utilisation of every judged outcome on the lines' duty, and of all that do not meet."""
     judged = np.isfinite(judgement.utilisation) & np.isin(
         judgement.outcome, (Outcome.MEETS, Outcome.DOES_NOT_MEET, Outcome.APPROVED_DEVIATION)
     )
+    judged &= _counts_as_used(judgement)
     rule, _ = np.nonzero(judged)
     return UtilisationPoints(
         judgement.utilisation[judged], rule.astype(np.int32), tuple(rule.id for rule in judgement.rules)
@@ -188,7 +199,8 @@ def result_rows(values: Values, judgement: Judgement) -> ResultsTable:
     """Return one row a line: the case and rule with the highest utilisation, and the counts of its outcomes."""
     line_list = values.line_list
     used = np.where(np.isnan(judgement.utilisation), -1.0, judgement.utilisation)
-    used = np.where(np.isin(judgement.outcome, (Outcome.MEETS, Outcome.DOES_NOT_MEET)), used, -1.0)
+    judged = np.isin(judgement.outcome, (Outcome.MEETS, Outcome.DOES_NOT_MEET)) & _counts_as_used(judgement)
+    used = np.where(judged, used, -1.0)
     governing = used.argmax(axis=0) if used.size else np.zeros(line_list.line_cases, dtype=np.int64)
     worst = np.take_along_axis(used, governing[np.newaxis], axis=0)[0] if used.size else np.zeros(line_list.line_cases)
     order = np.lexsort((-worst, line_list.line))

@@ -82,3 +82,13 @@ def test_nine_tenths_of_the_applicable_outcomes_are_checked() -> None:
     outcomes = [str(outcome) for outcome in reviewed().outcomes["outcome"]]
     checked = sum(outcome in JUDGED for outcome in outcomes)
     assert checked / (checked + outcomes.count(NOT_CHECKED)) >= 0.9
+
+
+def test_a_rule_on_data_governs_a_line_only_where_it_is_not_met() -> None:
+    """A test at exactly 1.5 times the design pressure is no line near its limit."""
+    done = reviewed()
+    on_data = {rule.id for rule in done.judgement.rules if rule.on_data}
+    failed = {(row.line_number, row.rule) for row in done.exceptions}
+    governed = [(row.line_number, row.governing_rule) for row in done.results().rows if row.governing_rule in on_data]
+    assert governed
+    assert set(governed) <= failed
